@@ -1,0 +1,196 @@
+package matrix
+
+import "math"
+
+// system is c[i] x[i]' = Σ_{j≠i} g[i,j] x[j] + diag[i] x[i] + f[i]: what Balance
+// and a plain matrix have in common. The diagonal is held in doubled precision,
+// so that a sum over many exchanges is not rounded.
+type system struct {
+	n     int
+	c     []float64 // positive
+	g     []float64 // n×n row-major, diagonal ignored
+	low   []float64 // added to g where that was computed in doubled precision; nil otherwise
+	diag  []dd
+	noise []float64 // n×n, size of the numbers each entry of g and diag was made from; nil: that of the entries
+	leak  []float64 // of a Balance; nil for a plain matrix
+	scale []int     // x[i]·2^scale[i] are comparable states
+}
+
+func (b *Balance) system() *system {
+	s := &system{n: b.N, c: b.C, g: b.F, leak: b.Leak, diag: make([]dd, b.N), scale: make([]int, b.N)}
+	for i := range s.diag {
+		sum := toDD(b.Leak[i])
+		for j := 0; j < b.N; j++ {
+			if j != i {
+				sum = sum.addFloat(b.F[i*b.N+j])
+			}
+		}
+		s.diag[i] = sum.neg()
+		s.scale[i] = halfExponent(b.C[i])
+	}
+	return s
+}
+
+// halfExponent returns k with 2^k nearest to √c.
+func halfExponent(c float64) int {
+	return int(math.Round(math.Log2(c) / 2))
+}
+
+// plain is capacity[i] x[i]' = Σ g[i,j] x[j] as a system; capacity nil is 1.
+func plain(n int, capacity, g []float64) (*system, error) {
+	if n < 0 || n*n != len(g) || capacity != nil && len(capacity) != n {
+		return nil, ErrShape
+	}
+	if !allFinite(g) || !allFinite(capacity) {
+		return nil, ErrValue
+	}
+	s := &system{n: n, c: make([]float64, n), g: g, diag: make([]dd, n), scale: make([]int, n)}
+	for i := range s.c {
+		s.c[i] = 1
+		s.diag[i] = toDD(g[i*n+i])
+		if capacity != nil {
+			if !(capacity[i] > 0) {
+				return nil, ErrValue
+			}
+			s.c[i], s.scale[i] = capacity[i], halfExponent(capacity[i])
+		}
+	}
+	return s, nil
+}
+
+// entry is g[i,j] off the diagonal.
+func (s *system) entry(i, j int) dd {
+	v := toDD(s.g[i*s.n+j])
+	if s.low != nil {
+		v.lo = s.low[i*s.n+j]
+	}
+	return v
+}
+
+// feels is the exact pattern of g.
+func (s *system) feels(i, j int) bool { return s.g[i*s.n+j] != 0 }
+
+// over returns a/c in doubled precision.
+func over(a dd, c float64) dd { return a.div(dd{hi: c}) }
+
+// rate is the pole of state i alone.
+func (s *system) rate(i int) float64 { return over(s.diag[i], s.c[i]).float() }
+
+// scaledMatrix is the matrix A of m states in scaled form: hi + lo holds
+// A[i,j]·2^(scale[i]−scale[j]+time), where z = 2^scale·x are comparable states and
+// 2^time brings the largest entry near 1. Powers of two lose nothing.
+type scaledMatrix struct {
+	m      int
+	hi, lo []float64
+	noise  []float64 // ε·noise bounds what rounding of the given numbers makes uncertain
+	scale  []int
+	time   int
+}
+
+func (s *system) matrix(states []int) *scaledMatrix {
+	m := len(states)
+	a := &scaledMatrix{m: m, hi: make([]float64, m*m), lo: make([]float64, m*m), noise: make([]float64, m*m), scale: make([]int, m)}
+	for p, i := range states {
+		a.scale[p] = s.scale[i]
+		for q, j := range states {
+			v := s.diag[i]
+			if i != j {
+				v = s.entry(i, j)
+			}
+			if v.zero() && s.noise == nil {
+				continue
+			}
+			v = over(v, s.c[i])
+			k := math.Ldexp(1, s.scale[i]-s.scale[j])
+			a.hi[p*m+q], a.lo[p*m+q] = v.hi*k, v.lo*k
+			a.noise[p*m+q] = s.uncertain(i, j) / s.c[i] * k
+		}
+	}
+	a.balance()
+	a.normalise()
+	return a
+}
+
+// uncertain is the size of the numbers that entry i, j was made from.
+func (s *system) uncertain(i, j int) float64 {
+	switch {
+	case s.noise != nil:
+		return s.noise[i*s.n+j]
+	case i != j:
+		return math.Abs(s.g[i*s.n+j])
+	case s.leak == nil:
+		return math.Abs(s.diag[i].hi)
+	}
+	sum := math.Abs(s.leak[i])
+	for k := 0; k < s.n; k++ {
+		if k != i {
+			sum += math.Abs(s.g[i*s.n+k])
+		}
+	}
+	return sum
+}
+
+// normalise brings the largest entry near 1.
+func (a *scaledMatrix) normalise() {
+	var large float64
+	for _, v := range a.hi {
+		large = math.Max(large, math.Abs(v))
+	}
+	if large == 0 {
+		return
+	}
+	_, e := math.Frexp(large)
+	a.time = -e
+	f, g := math.Ldexp(1, -e/2), math.Ldexp(1, -e+e/2) // each within range where 2^−e may not be
+	for _, x := range [3][]float64{a.hi, a.lo, a.noise} {
+		for k, v := range x {
+			x[k] = v * f * g
+		}
+	}
+}
+
+// balance scales rows and columns by powers of two until their norms agree, and
+// adds the exponents to scale.
+//
+// Method: B. N. Parlett, C. Reinsch, Numer. Math. 13 (1969) 293.
+func (a *scaledMatrix) balance() {
+	m := a.m
+	for sweep := 0; sweep < 16; sweep++ {
+		done := true
+		for i := 0; i < m; i++ {
+			r, c := a.offDiagonal(i)
+			if r == 0 || c == 0 {
+				continue
+			}
+			k := int(math.Round(math.Log2(r/c) / 2))
+			f := math.Ldexp(1, k)
+			if k == 0 || c*f+r/f >= 0.95*(c+r) {
+				continue
+			}
+			done = false
+			a.scale[i] -= k // z = 2^scale x: the column grows by 2^k, the row shrinks
+			for j := 0; j < m; j++ {
+				if j != i {
+					for _, x := range [3][]float64{a.hi, a.lo, a.noise} {
+						x[j*m+i] *= f
+						x[i*m+j] /= f
+					}
+				}
+			}
+		}
+		if done {
+			return
+		}
+	}
+}
+
+// offDiagonal returns the sums of moduli of row and column i.
+func (a *scaledMatrix) offDiagonal(i int) (r, c float64) {
+	for j := 0; j < a.m; j++ {
+		if j != i {
+			r += math.Abs(a.hi[i*a.m+j])
+			c += math.Abs(a.hi[j*a.m+i])
+		}
+	}
+	return r, c
+}

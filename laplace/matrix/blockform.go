@@ -47,6 +47,7 @@ type BlockForm struct {
 	first []int       // of each part in the inner order of states
 	u     *decoupling // between parts; nil for one part alone
 	order []int       // inner index of each entry of z
+	from  *system
 }
 
 // BlockForm uncouples b. It returns ErrShape, ErrValue, ErrRange, or ErrNoConvergence
@@ -90,7 +91,7 @@ func StoreBlockForm(n int, capacity, g []float64) (*BlockForm, error) {
 }
 
 func (s *system) blockForm() (*BlockForm, error) {
-	f := &BlockForm{N: s.n}
+	f := &BlockForm{N: s.n, from: s}
 	var rc RCWork
 	at := 0
 	for _, states := range components(s.n, s.feels) {
@@ -279,6 +280,7 @@ func sortRoots(r []Root) { slices.SortStableFunc(r, slower) }
 // In returns X⁻¹ (b/C): what an input with the flow b[i] into each store feeds
 // into each entry of z. For a plain matrix it is X⁻¹ b.
 func (f *BlockForm) In(b []float64) []float64 {
+	b = f.from.forces(b)
 	y := make([]float64, f.N)
 	for k, p := range f.parts {
 		m := len(p.states)

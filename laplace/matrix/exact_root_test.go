@@ -8,7 +8,7 @@ import (
 // exactPolynomials are numerator and denominator of a transfer as functions of s in
 // units of 2^time, without error.
 func exactPolynomials(b *Balance, in, out []float64) (num, den []*big.Rat, time int) {
-	e := newIntegerBalance(b, in, out, 0)
+	e := newIntegers(&Stores{Balance: *b}, in, out, 0, 0)
 	var at, p, q []*big.Rat
 	for s := int64(1); len(at) <= b.N; s++ {
 		if u, v, ok := e.determinants(s); ok {

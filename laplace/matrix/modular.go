@@ -68,6 +68,9 @@ func modFloat(v float64) residue {
 
 // modular is the matrix A of the given states, row-major.
 func (s *system) modular(states []int) []residue {
+	if s.stores != nil {
+		return s.submodular(states)
+	}
 	m := len(states)
 	a := make([]residue, m*m)
 	for p, i := range states {

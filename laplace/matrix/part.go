@@ -33,6 +33,15 @@ func (s *system) analyse(states []int, rc *RCWork) (*part, error) {
 			return rcPart(b, states, rc)
 		}
 	}
+	if s.stores != nil {
+		if b, ok := s.stores.rcWithin(states); ok {
+			p, err := rcPart(b, states, rc)
+			if err == nil {
+				s.comparable(p)
+			}
+			return p, err
+		}
+	}
 	a := s.matrix(states)
 	if !allFinite(a.hi) || !allFinite(a.noise) {
 		return nil, ErrRange
@@ -43,7 +52,7 @@ func (s *system) analyse(states []int, rc *RCWork) (*part, error) {
 		}
 	}
 	p, err := s.general(states, a)
-	if err == nil && s.low == nil {
+	if err == nil && (s.low == nil || s.stores != nil) {
 		s.settleOrigin(p)
 		settleMultiple(p.all(), func() int {
 			return modRepeated(modCharacteristic(len(states), s.modular(states)))

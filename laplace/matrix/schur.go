@@ -3,36 +3,80 @@ package matrix
 import (
 	"errors"
 	"math"
-
-	"gonum.org/v1/gonum/lapack"
-	lapackgonum "gonum.org/v1/gonum/lapack/gonum"
 )
 
 // ErrNoConvergence reports an eigenvalue iteration that gave up.
 var ErrNoConvergence = errors.New("matrix: the eigenvalues did not converge")
 
-// schur returns T and orthogonal Q with a = Q T Qᵀ, T quasi upper triangular in
-// canonical form. a is overwritten by T. Every entry must be finite.
+// schurWork holds a matrix while it is brought to real Schur form, and what
+// that needs; the zero value is ready, and a second use allocates nothing where the
+// matrix is no larger.
+type schurWork struct {
+	n, ld   int
+	h, qt   []float64 // n+2 rows of ld entries, zeros beyond column n
+	vectors []float64 // n rows: Householder vectors
+	tau     []float64
+	chain   []float64 // reflectors of one sweep
+
+	x, y, sum, scratch, zero, padded, four []float64
+}
+
+// schur sets h and qt to T and Qᵀ with a = Q T Qᵀ, Q orthogonal, T quasi upper
+// triangular in canonical form. Every entry must be finite.
+func (s *schurWork) schur(n int, a []float64) error {
+	s.size(n)
+	for i := 0; i < n; i++ {
+		copy(s.h[i*s.ld:i*s.ld+n], a[i*n:i*n+n])
+	}
+	s.hessenberg()
+	return s.francis()
+}
+
+// size makes room for n states, all zero.
+func (s *schurWork) size(n int) {
+	s.n, s.ld = n, (n+3)&^3+4
+	if s.ld%64 == 0 { // rows a page apart share a few lines of the cache
+		s.ld += 8
+	}
+	ld := s.ld
+	s.h, s.qt = resized(s.h, (n+2)*ld), resized(s.qt, (n+2)*ld)
+	clear(s.h)
+	s.vectors, s.tau = resized(s.vectors, n*ld), resized(s.tau, n)
+	for _, v := range []*[]float64{&s.x, &s.y, &s.sum, &s.scratch, &s.zero} {
+		*v = resized(*v, ld)
+		clear(*v)
+	}
+	longest := max(chaseLength+2, chaseWhole) + 3
+	s.padded = resized(s.padded, longest*reflectorSize)
+	s.four = resized(s.four, 4*(longest+2))
+	if s.chain == nil || cap(s.chain) < n*reflectorSize {
+		s.chain = make([]float64, 0, n*reflectorSize)
+	}
+}
+
+// resized returns a slice of length n, v where it is long enough; what is in it
+// is of no use.
+func resized(v []float64, n int) []float64 {
+	if cap(v) < n {
+		return make([]float64, n)
+	}
+	return v[:n]
+}
+
+// schur returns T and orthogonal Q with a = Q T Qᵀ for a small matrix.
 func schur(n int, a []float64) (t, q []float64, err error) {
-	var impl lapackgonum.Implementation
-	q = make([]float64, n*n)
-	if n == 1 {
-		q[0] = 1
-		return a, q, nil
+	var s schurWork
+	if err := s.schur(n, a); err != nil {
+		return nil, nil, err
 	}
-	tau := make([]float64, n-1)
-	work := make([]float64, max(1, 11*n, n*32))
-	impl.Dgehrd(n, 0, n-1, a, n, tau, work, len(work))
-	copy(q, a)
-	impl.Dorghr(n, 0, n-1, q, n, tau, work, len(work))
-	for i := 2; i < n; i++ {
-		clear(a[i*n : i*n+i-1])
+	t, q = make([]float64, n*n), make([]float64, n*n)
+	for i := 0; i < n; i++ {
+		copy(t[i*n:i*n+n], s.h[i*s.ld:])
+		for j := 0; j < n; j++ {
+			q[i*n+j] = s.qt[j*s.ld+i]
+		}
 	}
-	wr, wi := make([]float64, n), make([]float64, n)
-	if impl.Dhseqr(lapack.EigenvaluesAndSchur, lapack.SchurOrig, n, 0, n-1, a, n, wr, wi, q, n, work, len(work)) != 0 {
-		return nil, nil, ErrNoConvergence
-	}
-	return a, q, nil
+	return t, q, nil
 }
 
 // atomsOf returns where the 1×1 and 2×2 diagonal blocks of a quasi triangular

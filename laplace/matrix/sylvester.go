@@ -35,53 +35,42 @@ func sylvester(p int, a []float64, q int, b []float64, r []float64) {
 	}
 }
 
-// sylvesterAtom solves the same for blocks of one or two rows and columns, as at
-// most four linear equations with pivoting.
+// sylvesterAtom solves the same for blocks of one or two rows and columns. With B
+// shifted to trace 0, its square is −δ, so that (A² + δ) X = A R + R B: one system
+// of two equations, A being shifted likewise.
 func sylvesterAtom(p int, a []float64, lda, q int, b []float64, ldb int, r []float64, ldr int) {
-	if p == 1 && q == 1 {
+	switch {
+	case p == 1 && q == 1:
 		r[0] /= a[0] - b[0]
-		return
+	case p == 1: // x (a − B) = r
+		d := a[0]
+		r[0], r[1] = solve2(d-b[0], -b[ldb], -b[1], d-b[ldb+1], r[0], r[1])
+	case q == 1: // (A − b) x = r
+		d := b[0]
+		r[0], r[ldr] = solve2(a[0]-d, a[1], a[lda], a[lda+1]-d, r[0], r[ldr])
+	default:
+		mean, half := (b[0]+b[ldb+1])/2, (b[0]-b[ldb+1])/2
+		b01, b10 := b[1], b[ldb]
+		a00, a01, a10, a11 := a[0]-mean, a[1], a[lda], a[lda+1]-mean
+		delta := -half*half - b01*b10
+		r00, r01, r10, r11 := r[0], r[1], r[ldr], r[ldr+1]
+		cross, trace := a01*a10, a00+a11
+		p00, p01, p10, p11 := a00*a00+cross+delta, a01*trace, a10*trace, a11*a11+cross+delta
+		r[0], r[ldr] = solve2(p00, p01, p10, p11,
+			a00*r00+a01*r10+(r00*half+r01*b10),
+			a10*r00+a11*r10+(r10*half+r11*b10))
+		r[1], r[ldr+1] = solve2(p00, p01, p10, p11,
+			a00*r01+a01*r11+(r00*b01-r01*half),
+			a10*r01+a11*r11+(r10*b01-r11*half))
 	}
-	var m [4][5]float64
-	n := p * q
-	for i := 0; i < p; i++ {
-		for j := 0; j < q; j++ {
-			row := &m[i*q+j]
-			for k := 0; k < p; k++ {
-				row[k*q+j] += a[i*lda+k]
-			}
-			for k := 0; k < q; k++ {
-				row[i*q+k] -= b[k*ldb+j]
-			}
-			row[4] = r[i*ldr+j]
-		}
+}
+
+// solve2 solves [a b; c d] x = f by elimination with row exchange.
+func solve2(a, b, c, d, f, g float64) (x, y float64) {
+	if math.Abs(c) > math.Abs(a) {
+		a, b, c, d, f, g = c, d, a, b, g, f
 	}
-	for k := 0; k < n; k++ {
-		best := k
-		for i := k + 1; i < n; i++ {
-			if math.Abs(m[i][k]) > math.Abs(m[best][k]) {
-				best = i
-			}
-		}
-		m[k], m[best] = m[best], m[k]
-		for i := k + 1; i < n; i++ {
-			f := m[i][k] / m[k][k]
-			for j := k + 1; j < n; j++ {
-				m[i][j] -= f * m[k][j]
-			}
-			m[i][4] -= f * m[k][4]
-		}
-	}
-	for k := n - 1; k >= 0; k-- {
-		s := m[k][4]
-		for j := k + 1; j < n; j++ {
-			s -= m[k][j] * m[j][4]
-		}
-		m[k][4] = s / m[k][k]
-	}
-	for i := 0; i < p; i++ {
-		for j := 0; j < q; j++ {
-			r[i*ldr+j] = m[i*q+j][4]
-		}
-	}
+	m := c / a
+	y = (g - m*f) / (d - m*b)
+	return (f - b*y) / a, y
 }

@@ -14,6 +14,10 @@ type system struct {
 	noise []float64 // n×n, size of the numbers each entry of g and diag was made from; nil: that of the entries
 	leak  []float64 // of a Balance; nil for a plain matrix
 	scale []int     // x[i]·2^scale[i] are comparable states
+
+	stores  *Stores   // what it was made from, where that has couplings of its own
+	heavy   []*heavy  // the groups tied by a mass matrix
+	exactly []residue // of submodular
 }
 
 func (b *Balance) system() *system {

@@ -166,13 +166,9 @@ func (s *system) zeros(b, c []float64, d float64, r int) ([]Root, error) {
 }
 
 func (s *system) modularNumerator(b, c []float64, d float64) []residue {
-	states := make([]int, s.n)
-	x, y := make([]residue, s.n), make([]residue, s.n)
+	states, x, y := make([]int, s.n), s.exactRates(b), make([]residue, s.n)
 	for i := range states {
 		states[i] = i
-		if b[i] != 0 {
-			x[i] = modMul(modFloat(b[i]), modInv(modFloat(s.c[i])))
-		}
 		y[i] = modFloat(c[i])
 	}
 	num, _ := modNumerator(s.n, s.modular(states), x, y, modFloat(d))
@@ -193,11 +189,11 @@ type nuller struct {
 // nulling returns the system whose poles are the zeros: what is left of x' = A x
 // + b u when u keeps y at 0.
 func (s *system) nulling(b, c []float64, d float64, r int) (*system, error) {
-	n := s.n
+	n, in := s.n, s.rates(b)
 	z := &nuller{n: n, a: make([]dd, n*n), b: make([]dd, n), c: make([]dd, n), d: toDD(d), scale: append([]int(nil), s.scale...), noise: make([]float64, n*n)}
 	for i := 0; i < n; i++ {
 		up := math.Ldexp(1, s.scale[i])
-		z.b[i], z.c[i] = over(toDD(b[i]), s.c[i]).scale(up), toDD(c[i]).scale(1/up)
+		z.b[i], z.c[i] = in[i].scale(up), toDD(c[i]).scale(1/up)
 		for j := 0; j < n; j++ {
 			v := s.diag[i]
 			if i != j {

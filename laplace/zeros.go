@@ -1,0 +1,79 @@
+package laplace
+
+import (
+	"errors"
+
+	"lagbook/laplace/matrix"
+)
+
+// MaxExactOrder is the largest order up to which the number of poles that cancel
+// is decided exactly, for the doubles of a balance taken as the rationals they are;
+// beyond it error bounds decide. The cost grows with the cube of the order.
+const MaxExactOrder = 64
+
+// facts are what is known exactly of a transfer.
+type facts struct {
+	ok       bool // common is known
+	common   int  // how many poles cancel
+	zerosAt0 int
+	polesAt0 int
+}
+
+// facts works them out for a system with one input and one output and its zeros. A
+// zero or a pole at 0 is exactly 0 in what package matrix returns.
+func (s *System) facts(zeros []seated) facts {
+	var f facts
+	if w := s.withCouplings(); w != nil && s.plant.n <= MaxExactOrder {
+		if e, err := w.Exact(s.b[0], s.c[0], s.d[0][0], s.rateOf(0, 0)); err == nil {
+			return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
+		}
+	}
+	if b := s.plant.balance; b != nil && s.plant.n <= MaxExactOrder {
+		e := b.Exact(s.b[0], s.c[0], s.d[0][0])
+		return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
+	}
+	for _, z := range zeros {
+		if z.p == 0 {
+			f.zerosAt0++
+		}
+	}
+	for _, p := range s.poles {
+		if p.P == 0 {
+			f.polesAt0 += p.Mult
+		}
+	}
+	return f
+}
+
+// zeros returns the finite zeros, those that cancel included. Their number is
+// counted, not judged by size. vanishes reports that the transfer is identically
+// zero although a path leads through it.
+func (s *System) zeros() (list []seated, vanishes bool, err error) {
+	var found []matrix.Root
+	if w := s.withCouplings(); w != nil {
+		found, err = w.Zeros(s.b[0], s.c[0], s.d[0][0], s.rateOf(0, 0))
+	} else if b := s.plant.balance; b != nil {
+		found, err = b.Zeros(s.b[0], s.c[0], s.d[0][0])
+	} else {
+		found, err = matrix.StoreZeros(s.plant.n, nil, s.plant.dense, s.b[0], s.c[0], s.d[0][0])
+	}
+	if errors.Is(err, matrix.ErrZeroTransfer) {
+		return nil, true, nil
+	}
+	for _, z := range found {
+		list = append(list, seated{p: complex(z.Re, z.Im), radius: z.Radius})
+	}
+	return list, false, err
+}
+
+// withCouplings returns the plant as stores where it has couplings or an improper
+// output, nil where it is a balance or a plain matrix with proper ones.
+func (s *System) withCouplings() *matrix.Stores {
+	switch {
+	case s.plant.stores != nil:
+		return s.plant.stores
+	case s.plant.balance != nil && s.rate != nil:
+		return &matrix.Stores{Balance: *s.plant.balance}
+	}
+	return nil
+}

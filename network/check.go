@@ -1,0 +1,192 @@
+package network
+
+import "strconv"
+
+// check returns every structural fault of the graph, in the order of nodes and
+// branches.
+func (g *graph) check(heldTwice []input) []Fault {
+	if len(g.nodes) == 0 {
+		return []Fault{{Code: Empty, Text: "no node is defined"}}
+	}
+	var faults []Fault
+	for _, in := range heldTwice {
+		faults = append(faults, Fault{HeldTwice, []NodeID{in.node}, []Ref{in.ref, g.nodes[in.node].ref},
+			g.named([]NodeID{in.node}) + ": is held twice"})
+	}
+	faults = append(faults, g.selfLoops()...)
+	alone := g.unconnected()
+	for id, yes := range alone {
+		if yes {
+			n := NodeID(id)
+			faults = append(faults, Fault{Unconnected, []NodeID{n}, []Ref{g.nodes[n].ref},
+				g.named([]NodeID{n}) + ": nothing connects to it"})
+		}
+	}
+	faults = append(faults, g.mixed(alone)...)
+	for _, group := range g.undetermined(alone) {
+		faults = append(faults, Fault{Undetermined, group, g.refsOf(group), g.named(group) +
+			": " + plural(group, "has", "have") + " no capacity and no path from a held node or a store, so that nothing determines the level"})
+	}
+	return faults
+}
+
+func plural(ids []NodeID, one, many string) string {
+	if len(ids) == 1 {
+		return one
+	}
+	return many
+}
+
+// branches lists resistances, one-way branches, feedbacks and inertances, in the
+// order of BranchKind.
+func (g *graph) branches() [4][]branch {
+	return [4][]branch{g.resistances, g.oneWays, g.feedbacks, g.inertances}
+}
+
+// selfLoops finds resistances, streams and inertances with both ends at one node. A feedback
+// of a node on itself is legal.
+func (g *graph) selfLoops() []Fault {
+	var faults []Fault
+	for kind, list := range g.branches() {
+		if BranchKind(kind) == FeedbackBranch {
+			continue
+		}
+		for _, b := range list {
+			if b.from == b.to {
+				faults = append(faults, Fault{SelfLoop, []NodeID{b.from}, []Ref{b.ref},
+					BranchKind(kind).String() + " " + strconv.Quote(b.name) + ": begins and ends at " + g.named([]NodeID{b.from})})
+			}
+		}
+	}
+	return faults
+}
+
+// unconnected marks nodes that no branch joins to another and, if they store or
+// are held, into which no source leads either: a lone store with a source is an
+// adiabatic body, a lone held node has no meaning.
+func (g *graph) unconnected() []bool {
+	alone := make([]bool, len(g.nodes))
+	for i := range alone {
+		alone[i] = true
+	}
+	for _, list := range g.branches() {
+		for _, b := range list {
+			alone[b.from], alone[b.to] = false, false
+		}
+	}
+	for _, in := range g.inputs {
+		if !in.held && g.nodes[in.node].held == noInput {
+			alone[in.node] = false
+		}
+	}
+	return alone
+}
+
+// undetermined groups the massless nodes that no path of influence reaches from
+// a held node or a store. A resistance carries influence both ways, a one-way
+// branch to its end, and a feedback of a node on itself may fix the node's level;
+// that its number does is checked when the numbers are known.
+func (g *graph) undetermined(skip []bool) [][]NodeID {
+	reached := make([]bool, len(g.nodes))
+	for i := range g.nodes {
+		reached[i] = !g.isMassless(NodeID(i)) || skip[i]
+	}
+	for _, f := range g.feedbacks {
+		if f.from == f.to {
+			reached[f.to] = true
+		}
+	}
+	g.spread(reached)
+	if len(g.inertances) > 0 {
+		g.spreadByFlow(reached)
+	}
+	return g.groups(func(n NodeID) bool { return !reached[n] })
+}
+
+// spread extends a set of determined nodes along the branches until it grows no more.
+func (g *graph) spread(reached []bool) {
+	for grown := true; grown; {
+		grown = false
+		mark := func(from, to NodeID) {
+			if reached[from] && !reached[to] {
+				reached[to], grown = true, true
+			}
+		}
+		for _, b := range g.resistances {
+			mark(b.from, b.to)
+			mark(b.to, b.from)
+		}
+		for _, b := range g.oneWays {
+			mark(b.from, b.to)
+		}
+	}
+}
+
+// groups returns the connected groups of the nodes that belong, joined by
+// branches of any kind, each group and the list of them in ascending order.
+func (g *graph) groups(belongs func(NodeID) bool) [][]NodeID {
+	parent := make([]int, len(g.nodes))
+	for i := range parent {
+		parent[i] = i
+	}
+	root := func(i int) int {
+		for parent[i] != i {
+			parent[i] = parent[parent[i]]
+			i = parent[i]
+		}
+		return i
+	}
+	for _, list := range g.branches() {
+		for _, b := range list {
+			if belongs(b.from) && belongs(b.to) {
+				p, q := root(int(b.from)), root(int(b.to))
+				parent[max(p, q)] = min(p, q)
+			}
+		}
+	}
+	index := make([]int, len(g.nodes)) // group of a root, plus one
+	var groups [][]NodeID
+	for i := range g.nodes {
+		if !belongs(NodeID(i)) {
+			continue
+		}
+		r := root(i)
+		if index[r] == 0 {
+			groups = append(groups, nil)
+			index[r] = len(groups)
+		}
+		groups[index[r]-1] = append(groups[index[r]-1], NodeID(i))
+	}
+	return groups
+}
+
+func (g *graph) isHeld(n NodeID) bool { return g.nodes[n].held != noInput }
+
+func (g *graph) isMassless(n NodeID) bool {
+	return g.nodes[n].held == noInput && len(g.nodes[n].capacities) == 0
+}
+
+// remarks lists what is legal and has no effect.
+func (g *graph) remarks() []Fault {
+	var list []Fault
+	for i := range g.nodes {
+		n := NodeID(i)
+		if g.isHeld(n) && len(g.nodes[i].capacities) > 0 {
+			list = append(list, Fault{HeldCapacity, []NodeID{n}, []Ref{g.capacities[g.nodes[i].capacities[0]].ref, g.nodes[i].ref},
+				g.named([]NodeID{n}) + ": is held, so that its capacity changes nothing"})
+		}
+	}
+	for _, in := range g.inputs {
+		if !in.held && g.isHeld(in.node) {
+			list = append(list, Fault{NoEffect, []NodeID{in.node}, []Ref{in.ref},
+				"source " + strconv.Quote(in.name) + ": leads into the held " + g.named([]NodeID{in.node}) + " and changes nothing"})
+		}
+	}
+	for _, f := range g.feedbacks {
+		if g.isHeld(f.to) {
+			list = append(list, Fault{NoEffect, []NodeID{f.to}, []Ref{f.ref},
+				"feedback " + strconv.Quote(f.name) + ": leads into the held " + g.named([]NodeID{f.to}) + " and changes nothing"})
+		}
+	}
+	return list
+}

@@ -1,0 +1,48 @@
+// Package network holds linear networks of stores that exchange something: heat
+// between bodies, volume between tanks. It knows nodes and branches, no physics
+// and no file.
+//
+// A node has a level x (a temperature, a pressure). It is one of three kinds:
+//
+//	store     has a capacity C > 0; C·x' is the sum of what flows in
+//	held      its level is an input u(t); a capacity of its own changes nothing
+//	massless  neither: what flows in sums to zero at every instant
+//
+// Into the balance of a node, positive into the node, go
+//
+//	resistance   G·(x_from − x_to) out of from and into to      G > 0
+//	one way      W·(x_from − x_to) into to, nothing from from   W ≥ 0, a stream
+//	feedback     K·(x_on − About) into its node                 K of any sign
+//	source       sign·u(t)
+//
+// A branch's flow is positive from its first-named end to its second. Numbers
+// are in units of the caller's choice, SI where they come from a case file:
+//
+//	            level   capacity  flow   conductance G, W, K  time
+//	thermal     K       J/K       W      W/K                  s
+//	hydraulic   Pa      m³/Pa     m³/s   m³/(s·Pa)            s
+//
+// The way through the package: a Builder takes the graph and Build returns it as
+// a Network with a plan, once; NewParams are the numbers, set many times; Reduce
+// turns both into a laplace.System whose states are the stores and whose outputs
+// are the levels and flows asked for; Respond answers in real levels against time.
+//
+// Massless nodes are eliminated exactly, never by a small made-up capacity: each
+// is replaced by the mesh of its neighbours (Kron 1939; the star–mesh transform),
+// in an order that keeps the mesh small (Markowitz 1957). The balances are kept
+// in the exchange form F_ij·(x_j − x_i), the diagonal is never formed, and without
+// feedback no subtraction occurs, so that every exchange is accurate to a few
+// roundings however stiff the network is (Grassmann, Taksar, Heyman 1985; Alfa,
+// Xue, Ye 2002). The steady state comes from the same elimination carried on
+// through the stores. A feedback can make the pivot of a massless node zero or
+// negative: then no answer exists, or not the limit of one with a small capacity,
+// and the node is named in a fault.
+//
+// Answers are formed in deviations from the start state, so that what does not
+// change keeps all its digits: y(t) = y(start) + response to u − u(0⁻) + response
+// to the start's imbalance, which is exactly zero where the start is steady.
+//
+// Not modelled here: inertances, a capacity between two nodes, the flow that the
+// holder of a held node supplies to that node's own capacity, parameters that
+// change with time or level, delays.
+package network

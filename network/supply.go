@@ -1,0 +1,102 @@
+package network
+
+// outputWeights turns an output into weights on the stores, the flows of inertances
+// and the inputs.
+func (n *Network) outputWeights(e *exchange, p *Params, o *Output, f *flows) weights {
+	var w weights
+	switch {
+	case o.Flow == nil || o.Flow.Kind == ResistanceFlow:
+		w = e.weightsOf(n.plan, &n.g, p, o)
+	case o.Flow.Kind == InertanceFlow:
+		w = n.noWeights()
+		w.carry(n, o.Flow.Inertance, o.Flow.Sign)
+	default:
+		w = n.supply(e, p, o.Flow)
+	}
+	if f != nil {
+		f.settle(&w)
+	}
+	return w
+}
+
+func (n *Network) noWeights() weights {
+	return weights{at: make([]float64, len(n.plan.order)), flow: make([]float64, n.plan.massless)}
+}
+
+// carry adds k times the flow of an inertance.
+func (w *weights) carry(n *Network, b InertanceID, k float64) {
+	if w.inert == nil {
+		w.inert = make([]float64, len(n.g.inertances))
+	}
+	w.inert[b] += k
+}
+
+// plus adds k times the weights v of levels and flows into massless nodes.
+func (w *weights) plus(k float64, v *weights) {
+	for i, x := range v.at {
+		w.at[i] += k * x
+	}
+	for i, x := range v.flow {
+		w.flow[i] += k * x
+	}
+	w.sum += k * v.sum
+}
+
+// supply returns the weights of what the driver of a held node delivers into it:
+// what branches take out of it, each from its own difference, less what sources,
+// streams and feedbacks bring, and C·u' of its own capacity.
+func (n *Network) supply(e *exchange, p *Params, t *FlowTerm) weights {
+	g, w, at := &n.g, n.noWeights(), t.Node
+	add := func(sign float64, o Output) {
+		v := e.weightsOf(n.plan, g, p, &o)
+		w.plus(sign*t.Sign, &v)
+	}
+	for k, b := range g.resistances {
+		if b.from == at || b.to == at {
+			add(outOf(b, at), Output{Flow: &FlowTerm{Resistance: ResistanceID(k), Sign: 1}})
+		}
+	}
+	for k, b := range g.inertances {
+		if b.from == at || b.to == at {
+			w.carry(n, InertanceID(k), t.Sign*outOf(b, at))
+		}
+	}
+	for k, b := range g.oneWays {
+		if b.to == at && p.W[k] != 0 {
+			add(-1, Output{Terms: []Term{{b.from, p.W[k]}, {at, -p.W[k]}}})
+		}
+	}
+	for k, b := range g.feedbacks {
+		if b.to == at && p.K[k] != 0 {
+			add(-1, Output{Terms: []Term{{b.from, p.K[k]}}})
+			w.constant += t.Sign * p.K[k] * p.About[k]
+		}
+	}
+	n.supplyInputs(p, t, &w)
+	return w
+}
+
+// outOf is 1 where a branch leads out of a node, −1 where it leads in.
+func outOf(b branch, at NodeID) float64 {
+	if b.from == at {
+		return 1
+	}
+	return -1
+}
+
+// supplyInputs adds what sources bring and the capacity takes in.
+func (n *Network) supplyInputs(p *Params, t *FlowTerm, w *weights) {
+	g := &n.g
+	for k, in := range g.inputs {
+		if !in.held && in.node == t.Node {
+			if w.direct == nil {
+				w.direct = make([]float64, len(g.inputs))
+			}
+			w.direct[k] -= t.Sign * in.sign
+		}
+	}
+	if c := g.capacityOf(p, t.Node); c != 0 {
+		w.rate = make([]float64, len(g.inputs))
+		w.rate[g.nodes[t.Node].held] = t.Sign * c
+	}
+}

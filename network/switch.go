@@ -1,0 +1,144 @@
+package network
+
+import (
+	"errors"
+	"slices"
+	"strconv"
+
+	"lagbook/laplace"
+)
+
+// SwitchID names a number of the network that changes in steps.
+type SwitchID int32
+
+// noted is a switch as the Builder receives it.
+type noted struct {
+	name string
+	ref  Ref
+}
+
+// Switch adds a number that changes in steps while the network runs, a factor of some
+// branches or the gain of a feedback. What it acts on is the business of Params.Turn;
+// the graph, and with it the stores, stay what they are.
+func (b *Builder) Switch(name string, r Ref) SwitchID {
+	b.g.switches = append(b.g.switches, noted{name, r})
+	return SwitchID(len(b.g.switches) - 1)
+}
+
+// A SwitchView is what is known of a switch.
+type SwitchView struct {
+	ID   SwitchID
+	Name string
+	Ref  Ref
+}
+
+// Switches returns the switches, by SwitchID.
+func (n *Network) Switches() []SwitchView {
+	all := make([]SwitchView, len(n.g.switches))
+	for i, s := range n.g.switches {
+		all[i] = SwitchView{SwitchID(i), s.name, s.ref}
+	}
+	return all
+}
+
+// Clone returns parameters of their own with the same numbers.
+func (p *Params) Clone() *Params {
+	c := *p
+	for _, v := range []*[]float64{&c.C, &c.G, &c.L, &c.LR, &c.W, &c.K, &c.About, &c.Start, &c.StartFlow, &c.Now} {
+		*v = slices.Clone(*v)
+	}
+	c.HasStart, c.HasStartFlow = slices.Clone(p.HasStart), slices.Clone(p.HasStartFlow)
+	c.Wave, c.Switch = slices.Clone(p.Wave), slices.Clone(p.Switch)
+	return &c
+}
+
+// Turns reports whether any switch moves.
+func (p *Params) Turns() bool {
+	return slices.ContainsFunc(p.Switch, func(w laplace.Waveform) bool { return !w.Constant() })
+}
+
+// At returns the numbers in force at t (s), after a switch there.
+func (p *Params) At(t float64) (*Params, error) {
+	if !p.Turns() {
+		return p, nil
+	}
+	now := make([]float64, len(p.Switch))
+	for i, w := range p.Switch {
+		now[i] = w.At(t)
+	}
+	return p.Turn(now)
+}
+
+// checkSwitches finds switches that move otherwise than in steps.
+func (n *Network) checkSwitches(p *Params, faults []Fault) []Fault {
+	for i, w := range p.Switch {
+		if laplace.NotStairs([]laplace.Waveform{w}) >= 0 {
+			s := n.g.switches[i]
+			faults = append(faults, Fault{BadNumber, nil, []Ref{s.ref}, strconv.Quote(s.name) +
+				": changes otherwise than in steps, and between steps only is the network linear"})
+		}
+	}
+	return faults
+}
+
+// schedule returns the network in its phases: each reduced on its own, all as
+// deviations from the levels at the start and the inputs just before, so that in each
+// the start has an imbalance of its own and the stores simply go on. It also returns
+// the inputs, of which the last is that imbalance.
+func (d *deviations) schedule() (*laplace.Schedule, []laplace.Waveform) {
+	inputs := len(d.r.net.g.inputs)
+	u := append(d.u[:inputs:inputs], laplace.Step(0, 1, 0))
+	return &laplace.Schedule{Waves: d.p.Switch, Pick: d.phase}, u
+}
+
+// phase reduces the network for the values given of its switches.
+func (d *deviations) phase(now []float64) (laplace.Kind, error) {
+	if slices.Equal(now, d.p.Now) {
+		return d.r.kind(d.start.Imbalance, d.base)
+	}
+	p, err := d.p.Turn(now)
+	if err != nil {
+		return laplace.Kind{}, err
+	}
+	p = p.Clone()
+	p.HasAllStart, p.StartCycle = false, false
+	for _, id := range d.r.States {
+		p.Start[id], p.HasStart[id] = d.start.Levels[id], true
+	}
+	for _, id := range d.r.Flows {
+		p.StartFlow[id], p.HasStartFlow[id] = d.start.Flows[id], true
+	}
+	r, err := d.r.net.Reduce(p, d.r.outs)
+	if err != nil {
+		return laplace.Kind{}, err
+	}
+	e, err := r.deviations(p)
+	if err != nil {
+		return laplace.Kind{}, err
+	}
+	return r.kind(e.start.Imbalance, e.base)
+}
+
+// kind returns the system with the imbalance as its last input, whether it is 0 or not.
+func (r *Reduction) kind(imbalance, base []float64) (laplace.Kind, error) {
+	x, inputs := r.Realisation, len(r.net.g.inputs)
+	x.B = append(x.B[:inputs:inputs], imbalance)
+	x.D = withNone(r.Realisation.D, inputs)
+	x.Rate = withNone(r.Realisation.Rate, inputs)
+	s, err := laplace.NewCarrying(x)
+	return laplace.Kind{System: s, Base: base}, err
+}
+
+// atSwitch says in the text of a fault when the numbers came about that are at fault.
+func atSwitch(err error) error {
+	var at *laplace.SwitchError
+	var faults *ParamFault
+	if !errors.As(err, &at) || !errors.As(at.Err, &faults) {
+		return err
+	}
+	list := slices.Clone(faults.List)
+	for i := range list {
+		list[i].Text += " (from " + number(at.At) + " s on, as the network is switched then)"
+	}
+	return &ParamFault{List: list}
+}

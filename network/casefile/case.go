@@ -1,0 +1,191 @@
+package casefile
+
+import (
+	"lagbook/laplace"
+	"lagbook/network"
+	"lagbook/network/quantity"
+)
+
+// A Case is a file read and checked. Its values are computed by Eval; its
+// network is handed out by Build.
+type Case struct {
+	File       string
+	Title      string
+	Author     string
+	Date       string
+	Revision   string
+	References []string
+	LeavesOut  []string // what the model does not hold, in the author's words
+	Given      []Given
+	Pressures  Pressures
+	Elements   []*Element // in file order
+	Questions  Questions
+
+	src     *source
+	heads   map[string]*Element // by domain
+	voc     []Vocabulary
+	refs    []place
+	byName  map[elementName]*Element
+	givens  []given
+	order   []int // of givens, so that each comes after those it uses
+	slots   []slot
+	moving  []Slot // those that depend on given values
+	waves   []wave
+	nodes   map[string]network.NodeID
+	net     *network.Network
+	setters []Setter
+	faults  []Diagnostic // of building
+}
+
+// A place is what a network.Ref stands for.
+type place struct {
+	span
+	owner
+}
+
+// An owner is what a value belongs to: an element, or a part of the file with a
+// name of its own.
+type owner struct {
+	e     *Element
+	label string
+}
+
+// thing names the owner as messages do.
+func (o owner) thing() string {
+	if o.e != nil {
+		return o.e.Thing()
+	}
+	return o.label
+}
+
+// ref notes a place that a fault may come back to.
+func (c *Case) ref(at span, o owner) network.Ref {
+	c.refs = append(c.refs, place{at, o})
+	return network.Ref(len(c.refs) - 1)
+}
+
+// Element returns the element of that name in a table: Element("stream",
+// "water"), or Element("thermal.stream", "water").
+func (c *Case) Element(table, name string) (*Element, bool) {
+	for i := range c.voc {
+		for j := range c.voc[i].Tables {
+			t, domain := &c.voc[i].Tables[j], c.voc[i].Domain
+			if t.Name != table && (domain == "" || domain+"."+t.Name != table) {
+				continue
+			}
+			if e := c.byName[elementKey(domain, t.Name, name)]; e != nil && e.Table == t {
+				return e, true
+			}
+		}
+	}
+	return nil, false
+}
+
+// elementName is the key of Case.byName. The parts of a domain share one set of
+// names; tables outside domains have a set each.
+type elementName struct{ domain, table, name string }
+
+func elementKey(domain, table, name string) elementName {
+	if domain == "" {
+		return elementName{"", table, name}
+	}
+	return elementName{domain, "", name}
+}
+
+// Part returns the node or branch of that name, whatever its table. Where two
+// domains have one, the first is meant unless the name says "thermal:tank".
+func (c *Case) Part(name string) (*Element, bool) {
+	if list := c.parts(name); len(list) > 0 {
+		return list[0], true
+	}
+	return nil, false
+}
+
+// Node returns what the network builder called the node of that full name.
+// Build functions look up the nodes they connect with Element.Node.
+func (c *Case) Node(name string) (network.NodeID, bool) {
+	id, ok := c.nodes[name]
+	return id, ok
+}
+
+// BindNode notes the identifier of a node under its full name; the Build function
+// of a table of nodes calls it.
+func (c *Case) BindNode(name string, id network.NodeID) { c.nodes[name] = id }
+
+// Diagnose returns an error about the part that ref stands for, for whoever
+// finds a fault in a case that only reckoning shows. code is a stable word.
+func (c *Case) Diagnose(ref network.Ref, code, text, hint string) Diagnostic {
+	d := Diagnostic{Code: code, Text: text, Hint: hint}
+	if ref < 0 || int(ref) >= len(c.refs) {
+		d.File = c.File
+		return d
+	}
+	p := c.refs[ref]
+	d.Thing = p.thing()
+	return c.src.place(d, p.span)
+}
+
+// A slot is one number of the case.
+type slot struct {
+	expr  *quantity.Expr // nil: si for ever
+	si    float64
+	dim   quantity.Dim
+	field *Field
+	n     *node
+	owner owner
+}
+
+// constant adds a slot that always holds v.
+func (c *Case) constant(v float64) Slot {
+	c.slots = append(c.slots, slot{si: v})
+	return Slot(len(c.slots) - 1)
+}
+
+// Eval computes every value of the case. given holds one value for each Given,
+// as GivenValues returns them; nil means as written. A Given that is an
+// expression is worked out anew from the others: its entry is not looked at.
+// Ranges are checked again, so that a value varied beyond them is a diagnostic.
+func (c *Case) Eval(given []quantity.Value) (Values, []Diagnostic) {
+	var diags []Diagnostic
+	known := c.GivenValues()
+	if given != nil {
+		if len(given) != len(c.givens) {
+			panic("casefile: Eval needs one value for each Given")
+		}
+		known, diags = c.derive(given)
+	}
+	v := Values{Num: make([]float64, len(c.slots)), Wave: make([]laplace.Waveform, len(c.waves))}
+	for i := range c.slots {
+		v.Num[i] = c.slots[i].si
+	}
+	if given != nil && diags == nil {
+		for _, i := range c.moving {
+			si, d := c.evaluate(&c.slots[i], known)
+			if d != nil {
+				diags = append(diags, *d)
+			}
+			v.Num[i] = si
+		}
+	}
+	if diags != nil {
+		return v, inFileOrder(diags)
+	}
+	for i := range c.waves {
+		w := &c.waves[i]
+		if given == nil || w.fixed {
+			v.Wave[i] = w.made
+			continue
+		}
+		made, d := c.makeWave(w, v.Num)
+		diags = append(diags, d...)
+		v.Wave[i] = made
+	}
+	if diags == nil && c.net != nil {
+		for i := range c.voc {
+			if check := c.voc[i].Check; check != nil {
+				diags = append(diags, check(c, v)...)
+			}
+		}
+	}
+	return v, inFileOrder(diags)
+}

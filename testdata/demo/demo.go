@@ -1,0 +1,15 @@
+// Package demo holds the cases that the command runs and copies when it is
+// given none: whole jobs as a practitioner would write them, with a hand check
+// in their comments. All their data are invented.
+package demo
+
+import "embed"
+
+// Cases are the files, each a case: servo-drive.toml, the one shown first,
+// curing-oven.toml and wash-tank.toml.
+//
+//go:embed *.toml
+var Cases embed.FS
+
+// Main is the name of the case shown first.
+const Main = "servo-drive.toml"

@@ -1,0 +1,64 @@
+package thermal
+
+import (
+	"lagbook/network/casefile"
+	"lagbook/network/quantity"
+)
+
+// Dimensions: exponents of kg, m, s, K, A.
+var (
+	dimless      = quantity.Dim{}
+	length       = quantity.Dim{0, 1, 0, 0, 0}
+	area         = quantity.Dim{0, 2, 0, 0, 0}
+	volume       = quantity.Dim{0, 3, 0, 0, 0}
+	mass         = quantity.Dim{1, 0, 0, 0, 0}
+	duration     = quantity.Dim{0, 0, 1, 0, 0}
+	temperature  = quantity.Dim{0, 0, 0, 1, 0}
+	power        = quantity.Dim{1, 2, -3, 0, 0}
+	resistance   = quantity.Dim{-1, -2, 3, 1, 0}
+	conductance  = quantity.Dim{1, 2, -3, -1, 0}
+	capacitance  = quantity.Dim{1, 2, -2, -1, 0}
+	conductivity = quantity.Dim{1, 1, -3, -1, 0}
+	coefficient  = quantity.Dim{1, 0, -3, -1, 0}
+	density      = quantity.Dim{1, -3, 0, 0, 0}
+	specificHeat = quantity.Dim{0, 2, -2, -1, 0}
+	volumeFlow   = quantity.Dim{0, 3, -1, 0, 0}
+	massFlow     = quantity.Dim{1, 0, -1, 0, 0}
+)
+
+// positive is a key that holds a number above zero.
+func positive(name string, dim quantity.Dim, help string) casefile.Field {
+	return casefile.Field{Name: name, Type: casefile.Number, Dim: dim, HasMin: true, MinOpen: true, Help: help}
+}
+
+// level is a key that holds a temperature, not a difference of two.
+func level(name, help string) casefile.Field {
+	return casefile.Field{Name: name, Type: casefile.Number, Dim: temperature, Kind: quantity.Level, HasMin: true, MinOpen: true, Help: help}
+}
+
+// nodeName is a key that names a node of the case.
+func nodeName(name, help string) casefile.Field {
+	return casefile.Field{Name: name, Type: casefile.Name, Refers: "node", Structural: true, Help: help}
+}
+
+// between names the two ends of a part; its flow is positive from the first to the second.
+func between() casefile.Field {
+	return casefile.Field{Name: "between", Type: casefile.Names, Refers: "node", Structural: true, Required: true,
+		HasMin: true, Min: 2, HasMax: true, Max: 2, Help: "the two nodes it joins; flow from the first to the second is positive"}
+}
+
+// materialName is a key that names an own material or one of the handbook.
+func materialName(help string) casefile.Field {
+	return casefile.Field{Name: "material", Type: casefile.Name, Structural: true, Help: help}
+}
+
+func required(f casefile.Field) casefile.Field {
+	f.Required = true
+	return f
+}
+
+// with says that a key must not stand alone.
+func with(f casefile.Field, key string) casefile.Field {
+	f.With = []string{key}
+	return f
+}

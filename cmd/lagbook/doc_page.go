@@ -1,0 +1,198 @@
+package main
+
+import (
+	"fmt"
+
+	"lagbook/cmd/lagbook/internal/present"
+	"lagbook/network/study"
+)
+
+// shareColumns is how many transfer functions share the table of time constants.
+const shareColumns = 2
+
+// pageDoc is the page of the demo, in the order in which an engineer reads: the
+// answer, the network, the time constants, the tables, the limits, a check by
+// hand, what is assumed, the caution.
+func pageDoc(m *study.Model, a *study.Page) present.Doc {
+	p := m.Show
+	d := present.Doc{Title: title(a.Title)}
+	add := func(parts ...present.Part) { d.Parts = append(d.Parts, parts...) }
+
+	add(present.Facts{List: opening(p, a)})
+	add(doubts(a.Evidence)...)
+	add(present.Heading{Level: 1, Text: "The network"})
+	add(networkParts(p, &a.Understood)...)
+	add(present.Heading{Level: 1, Text: "How slow"})
+	add(modesPart(p, a.Modes, a.Transfers[:min(shareColumns, len(a.Transfers))]))
+	add(gainsPart(p, a.Transfers))
+	add(present.Heading{Level: 1, Text: "Against time"})
+	for _, t := range a.Tables {
+		add(tablePart(p, t))
+	}
+	if len(a.Limits) > 0 {
+		add(present.Heading{Level: 1, Text: "Limits"})
+		add(limitsParts(p, a.Limits)...)
+	}
+	if len(a.Hand) > 0 {
+		add(present.Heading{Level: 1, Text: "Check by hand"})
+		for _, l := range a.Hand {
+			add(present.Formula{Text: handWords(p, l)})
+		}
+	}
+	add(present.Heading{Level: 1, Text: "Assumed"}, present.List{Items: assumed(a)}, present.Caution{Text: a.Caution})
+	return d
+}
+
+// opening is the answer in three lines: what was asked, what came out, which
+// limit governs.
+func opening(p study.Printer, a *study.Page) []present.Fact {
+	slow := slowestWords(p, a.Modes)
+	if len(a.Limits) == 0 {
+		return []present.Fact{{Name: "Asked", Value: "how slow, and what against time"}, {Name: "Answer", Value: slow + "; no limit is stated"}}
+	}
+	v := verdict(a.Limits)
+	v[0].Value += "; " + slow
+	return append([]present.Fact{askedLimits(p, a.Limits)}, v...)
+}
+
+// slowestWords names the slowest time constant.
+func slowestWords(p study.Printer, modes []study.Mode) string {
+	if len(modes) == 0 {
+		return "nothing is stored: every level follows at once"
+	}
+	if modes[0].NaturalFrequency != nil {
+		return "slowest: a " + slowness(p, modes[0].Pole)
+	}
+	return "slowest time constant " + slowness(p, modes[0].Pole)
+}
+
+// networkParts are the network in a few lines.
+func networkParts(p study.Printer, c *study.Understood) []present.Part {
+	waves := map[string]string{}
+	for _, in := range c.Inputs {
+		if in.Held {
+			waves[in.Name] = in.Wave
+		}
+	}
+	byKind := map[string][]string{}
+	for _, n := range c.Nodes {
+		word := n.Name
+		switch {
+		case n.Kind == "held":
+			word += " (" + waves[n.Name] + ")"
+		case n.Kind == "stored" && n.Capacitance != nil:
+			word += " (" + p.Value(*n.Capacitance, n.Unit, "") + ")"
+		}
+		byKind[n.Kind] = append(byKind[n.Kind], word)
+	}
+	var facts []present.Fact
+	for _, k := range []struct{ kind, name string }{{"held", "Held"}, {"stored", "Stores"}, {"massless", "Massless"}} {
+		if names := byKind[k.kind]; len(names) > 0 {
+			facts = append(facts, present.Fact{Name: k.name, Value: list(firstFew(names))})
+		}
+	}
+	for _, in := range c.Inputs {
+		if !in.Held {
+			facts = append(facts, present.Fact{Name: "Load " + in.Name, Value: in.What + ": " + in.Wave})
+		}
+	}
+	t := present.Table{
+		Columns:  []present.Column{{Head: "part"}, {Head: "from → to"}, {Head: "value"}, {Head: "how"}},
+		FullHead: []string{"part", "from", "to", "value", "unit", "how"},
+	}
+	for i, b := range c.Branches {
+		if rung := b.Numbers == "" && i+1 < len(c.Branches) && c.Branches[i+1].Name == b.Name; rung {
+			continue // the sum of a ladder says enough here; the verb check lists its rungs
+		}
+		if len(t.Full) == longList {
+			t.Caption = fmt.Sprintf("The first %d parts; the verb check lists all %d", longList, len(c.Branches))
+		}
+		if len(t.Full) < longList {
+			t.Rows = append(t.Rows, []string{b.Name, arrow(b.From, b.To), p.Value(b.Value, b.Unit, b.Kind), b.How()})
+		}
+		t.Full = append(t.Full, []string{b.Name, b.From, b.To, full(b.Value), b.Unit, b.How()})
+	}
+	parts := []present.Part{present.Facts{List: facts}}
+	if len(t.Rows) > 0 {
+		parts = append(parts, t)
+	}
+	return parts
+}
+
+// firstFew keeps a list of names short.
+func firstFew(names []string) []string {
+	if len(names) <= longList {
+		return names
+	}
+	return append(names[:longList:longList], fmt.Sprintf("%d more", len(names)-longList))
+}
+
+// gainsPart lists gain and settling of each transfer function, a line each.
+func gainsPart(p study.Printer, transfers []study.Transfer) present.Table {
+	t := present.Table{
+		Caption:  "Transfer functions",
+		Columns:  []present.Column{{Head: "from → to"}, {Head: "gain"}, {Head: "behaviour"}, {Head: "unit step"}},
+		FullHead: []string{"from", "to", "gain", "unit", "behaviour", "rise time / s", "within 5 % / s", "within 2 % / s", "overshoot / %"},
+	}
+	for i, tr := range transfers {
+		m := tr.Step
+		if m == nil {
+			m = &study.Step{}
+		}
+		t.Full = append(t.Full, []string{tr.Input, tr.Output, fullOf(tr.Gain), tr.Unit, tr.Behaviour, fullOf(m.RiseTime), fullOf(m.Settling5), fullOf(m.Settling2), fullOf(m.Overshoot)})
+		if i >= longList {
+			continue
+		}
+		gain, step := "–", stepWords(p, tr)
+		if tr.Gain != nil {
+			gain = p.Value(*tr.Gain, tr.Unit, "difference")
+		}
+		t.Rows = append(t.Rows, []string{arrow(tr.Input, tr.Output), gain, tr.Behaviour, step})
+	}
+	if n := len(transfers) - longList; n > 0 {
+		t.Caption += fmt.Sprintf(" (%d more under the verb poles)", n)
+	}
+	return t
+}
+
+// handWords is one line of the check by hand.
+func handWords(p study.Printer, l study.HandLine) string {
+	kind := ""
+	if l.Unit == "K" || l.Unit == "Pa" {
+		kind = "level"
+	}
+	if l.Computed != nil && *l.Computed == 0 { // a balance: there is no number but what is left over
+		return l.What + ": " + l.Numbers + ": together " + l.Remark
+	}
+	s := l.What + ": " + l.Numbers + " = " + p.Value(l.Hand, l.Unit, kind)
+	if l.Computed != nil {
+		s += "; computed " + p.Value(*l.Computed, l.Unit, kind)
+	}
+	if l.Off != nil {
+		s += ", off by " + offWords(p, *l.Off)
+	}
+	if l.Remark != "" {
+		s += " (" + l.Remark + ")"
+	}
+	return s
+}
+
+func offWords(p study.Printer, off float64) string {
+	if off > -5e-5 && off < 5e-5 {
+		return "less than 0.01 %"
+	}
+	return p.Percent(off)
+}
+
+// assumed lists what the answer rests on.
+func assumed(a *study.Page) []string {
+	items := []string{
+		"start: " + a.Start,
+		a.Linear,
+	}
+	items = append(items, a.Notes...)
+	if len(a.LeavesOut) > 0 {
+		items = append(items, "left out: "+list(a.LeavesOut))
+	}
+	return items
+}

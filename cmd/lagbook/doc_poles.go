@@ -1,0 +1,303 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"lagbook/cmd/lagbook/internal/present"
+	"lagbook/network/study"
+)
+
+// longList is the number of poles from which on only the slowest are printed;
+// CSV and JSON carry all.
+const longList = 24
+
+// polesDoc is the page of the verb poles.
+func polesDoc(p study.Printer, a *study.Poles) present.Doc {
+	d := present.Doc{Title: title(a.Title), Parts: doubts(a.Evidence)}
+	if len(a.Modes) > 0 {
+		d.Parts = append(d.Parts, modesPart(p, a.Modes, nil))
+	}
+	for _, t := range a.Transfers {
+		d.Parts = append(d.Parts, transferParts(p, t)...)
+	}
+	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	return d
+}
+
+// modesPart lists the modes of the network: how slow, and what moves together.
+func modesPart(p study.Printer, modes []study.Mode, of []study.Transfer) present.Table {
+	t := present.Table{
+		Caption:  "Time constants, slowest first",
+		Columns:  []present.Column{{Head: "time constant", Align: present.Right}, {Head: "pole / (1/s)", Align: present.Right}},
+		FullHead: []string{"re / (1/s)", "im / (1/s)", "multiplicity", "moves together"},
+	}
+	for _, tr := range of {
+		t.Columns = append(t.Columns, present.Column{Head: "share of " + tr.Input + " → " + tr.Output, Align: present.Right})
+		t.FullHead = append(t.FullHead, "share of "+tr.Input+" to "+tr.Output)
+	}
+	t.Columns = append(t.Columns, present.Column{Head: "moves together"})
+	for i, m := range modes {
+		moves := movesWords(p, m.Moves)
+		exact := []string{full(m.Re), full(m.Im), fmt.Sprint(m.Multiplicity), moves}
+		cells := []string{slowness(p, m.Pole), pairWords(p, m.Pole)}
+		for _, tr := range of {
+			share, x := "–", ""
+			for _, s := range m.Shares {
+				if s.Input == tr.Input && s.Output == tr.Output {
+					share, x = sharePercent(p, ofBoth(m.Pole)*s.Share), full(s.Share)
+				}
+			}
+			cells, exact = append(cells, share), append(exact, x)
+		}
+		t.Full = append(t.Full, exact)
+		if i < longList && m.Im >= 0 { // a pair is one row
+			t.Rows = append(t.Rows, append(cells, moves))
+		}
+	}
+	if !slices.ContainsFunc(modes, func(m study.Mode) bool { return len(m.Moves) > 0 }) {
+		dropLast(&t) // too many nodes to say what moves together
+	}
+	if n := len(modes) - longList; n > 0 {
+		t.Caption += fmt.Sprintf(" (%d faster ones are in csv and json)", n)
+	}
+	return t
+}
+
+// dropLast takes the last column from what is read; CSV keeps it.
+func dropLast(t *present.Table) {
+	n := len(t.Columns) - 1
+	t.Columns = t.Columns[:n]
+	for i := range t.Rows {
+		t.Rows[i] = t.Rows[i][:n]
+	}
+}
+
+// sharePercent prints a share; what does not show in three digits is said so.
+func sharePercent(p study.Printer, s float64) string {
+	if s > -0.0005 && s < 0.0005 {
+		return "< 0.1 %"
+	}
+	return p.Percent(s)
+}
+
+// slowness is the time constant of a real pole, or period and damping of a pair.
+func slowness(p study.Printer, q study.Pole) string {
+	switch {
+	case q.TimeConstant != nil && *q.TimeConstant < 0:
+		return "grows, e-fold in " + p.Time(-*q.TimeConstant)
+	case q.TimeConstant != nil:
+		return p.Time(*q.TimeConstant)
+	case q.NaturalFrequency != nil:
+		return "swing of " + p.Time(2*math.Pi/math.Abs(q.Im)) + ", ω0 " + p.Number(*q.NaturalFrequency) + " rad/s, ζ " + p.Number(*q.DampingRatio)
+	}
+	return "never (integrates)"
+}
+
+// pairWords writes a pole, or both of a pair.
+func pairWords(p study.Printer, q study.Pole) string {
+	s := poleWords(p, q.Re, q.Im, q.Multiplicity)
+	if q.Im > 0 {
+		s = strings.Replace(s, " + ", " ± ", 1)
+	}
+	return s
+}
+
+// ofBoth is 2 for one of a pair, whose shares are equal.
+func ofBoth(q study.Pole) float64 {
+	if q.Im != 0 {
+		return 2
+	}
+	return 1
+}
+
+func poleWords(p study.Printer, re, im float64, multiplicity int) string {
+	s := p.Number(re)
+	switch {
+	case im > 0:
+		s += " + " + p.Number(im) + "i"
+	case im < 0:
+		s += " − " + p.Number(-im) + "i"
+	}
+	if multiplicity > 1 {
+		s += fmt.Sprintf(" (%d-fold)", multiplicity)
+	}
+	return s
+}
+
+// together is how near to the largest a node moves to be named without a number.
+const together = 0.95
+
+// movesWords says which nodes move together, what moves less or against them,
+// and which parts move inside.
+func movesWords(p study.Printer, moves []study.Move) string {
+	var same, rest, inside []string
+	for _, m := range moves {
+		switch {
+		case m.Inside != "":
+			if !slices.Contains(inside, m.Inside) {
+				inside = append(inside, m.Inside)
+			}
+		case m.Size >= together:
+			same = append(same, m.Node)
+		case m.Size > 0:
+			rest = append(rest, m.Node+" "+p.Rough(100*m.Size)+" %")
+		default:
+			rest = append(rest, m.Node+" "+p.Rough(-100*m.Size)+" % against")
+		}
+	}
+	var words []string
+	for _, group := range [][]string{same, rest} {
+		if len(group) > 0 {
+			words = append(words, list(group))
+		}
+	}
+	if len(inside) > 0 {
+		words = append(words, "inside "+list(inside))
+	}
+	return strings.Join(words, "; ")
+}
+
+// transferParts shows one transfer function.
+func transferParts(p study.Printer, t study.Transfer) []present.Part {
+	parts := []present.Part{
+		present.Heading{Level: 1, Text: t.Input + " → " + t.Output},
+		present.Facts{List: transferFacts(p, t)},
+	}
+	if len(t.Poles) > 0 {
+		parts = append(parts, transferPoles(p, t))
+	}
+	return parts
+}
+
+// shortRatio is the order up to which H(s) is written out.
+const shortRatio = 4
+
+// transferFacts are what is said of a transfer function beside its poles.
+func transferFacts(p study.Printer, t study.Transfer) []present.Fact {
+	facts := []present.Fact{}
+	add := func(name, value string) { facts = append(facts, present.Fact{Name: name, Value: value}) }
+	if t.Gain != nil {
+		add("Gain", p.Value(*t.Gain, t.Unit, "difference"))
+	}
+	behaviour := t.Behaviour
+	if behaviour == "" {
+		behaviour = "follows at once"
+	}
+	add("Behaviour", fmt.Sprintf("%s, %s, relative degree %d", behaviour, t.Form, t.RelativeDegree))
+	if len(t.Zeros) > 0 {
+		add("Zeros / (1/s)", zeroWords(p, t.Zeros))
+	}
+	if len(t.Cancelled) > 0 {
+		add("Cancelled / (1/s)", zeroWords(p, t.Cancelled))
+	}
+	if words := stepWords(p, t); words != "" {
+		add("Unit step", words)
+	}
+	if n := len(t.Denominator) - 1; n > 0 && n <= shortRatio {
+		add("H(s)", "("+polynomial(p, t.Numerator)+") / ("+polynomial(p, t.Denominator)+")")
+	}
+	return facts
+}
+
+// transferPoles lists the poles of a transfer function.
+func transferPoles(p study.Printer, t study.Transfer) present.Table {
+	tab := present.Table{
+		Columns: []present.Column{{Head: "pole / (1/s)", Align: present.Right}, {Head: "time constant", Align: present.Right},
+			{Head: "residue", Align: present.Right}, {Head: "share", Align: present.Right}},
+		FullHead: []string{"input", "output", "re / (1/s)", "im / (1/s)", "multiplicity", "time constant / s", "error bound / (1/s)", "share", "residue re", "residue im"},
+	}
+	for i, q := range t.Poles {
+		share, res, rr, ri := "–", "–", "", ""
+		if q.Share != nil {
+			share = sharePercent(p, *q.Share)
+		}
+		if i < len(t.Residues) && len(t.Residues[i]) > 0 {
+			r := t.Residues[i][0]
+			res, rr, ri = poleWords(p, r[0], r[1], 1), full(r[0]), full(r[1])
+		}
+		if i < longList {
+			tab.Rows = append(tab.Rows, []string{poleWords(p, q.Re, q.Im, q.Multiplicity), slowness(p, q), res, share})
+		}
+		tab.Full = append(tab.Full, []string{t.Input, t.Output, full(q.Re), full(q.Im), fmt.Sprint(q.Multiplicity), fullOf(q.TimeConstant), fullOf(q.ErrorBound), fullOf(q.Share), rr, ri})
+	}
+	if !slices.ContainsFunc(t.Poles, func(q study.Pole) bool { return q.Share != nil }) {
+		dropLast(&tab)
+	}
+	return tab
+}
+
+func zeroWords(p study.Printer, zeros []study.Zero) string {
+	var words []string
+	for i, z := range zeros {
+		if i == longList {
+			words = append(words, fmt.Sprintf("%d more", len(zeros)-i))
+			break
+		}
+		words = append(words, poleWords(p, z.Re, z.Im, z.Multiplicity))
+	}
+	return strings.Join(words, ", ")
+}
+
+// stepWords are the measures of the response to a unit step.
+func stepWords(p study.Printer, t study.Transfer) string {
+	s := t.Step
+	if s == nil || len(t.Poles) == 0 {
+		return ""
+	}
+	var words []string
+	for _, m := range []struct {
+		name string
+		v    *float64
+	}{{"rise 10–90 % in ", s.RiseTime}, {"within 5 % after ", s.Settling5}, {"within 2 % after ", s.Settling2}} {
+		if m.v != nil {
+			words = append(words, m.name+p.Time(*m.v))
+		}
+	}
+	switch {
+	case s.Overshoot == nil:
+	case *s.Overshoot == 0:
+		words = append(words, "no overshoot")
+	case s.PeakTime != nil && s.Peak != nil:
+		words = append(words, fmt.Sprintf("overshoot %s, peak %s at %s", p.Percent(*s.Overshoot/100), p.Value(*s.Peak, t.Unit, "difference"), p.Time(*s.PeakTime)))
+	default:
+		words = append(words, "overshoot "+p.Percent(*s.Overshoot/100))
+	}
+	if s.Undershoot != nil && *s.Undershoot > 0 {
+		words = append(words, "goes the other way first by "+p.Percent(*s.Undershoot/100))
+	}
+	return strings.Join(words, ", ")
+}
+
+// polynomial writes ascending coefficients, highest power first.
+func polynomial(p study.Printer, c []float64) string {
+	var words []string
+	for k := len(c) - 1; k >= 0; k-- {
+		if c[k] == 0 {
+			continue
+		}
+		power := map[bool]string{true: "s"}[k > 0]
+		if k > 1 {
+			power += fmt.Sprintf("^%d", k)
+		}
+		sign, size := " + ", c[k]
+		if size < 0 {
+			sign, size = " − ", -size
+		}
+		word := p.Number(size)
+		switch {
+		case k > 0 && size == 1:
+			word = power
+		case k > 0:
+			word += "·" + power
+		}
+		words = append(words, sign, word)
+	}
+	if len(words) == 0 {
+		return "0"
+	}
+	words[0] = strings.TrimPrefix(strings.TrimSpace(words[0]), "+")
+	return strings.Join(words, "")
+}

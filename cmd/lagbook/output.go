@@ -1,0 +1,64 @@
+package main
+
+import (
+	"bytes"
+	"encoding/json"
+	"errors"
+	"fmt"
+	"io"
+	"syscall"
+
+	"lagbook/cmd/lagbook/internal/present"
+)
+
+// answer prints an answer: as JSON itself, in the other formats the document
+// made from it. The bytes are complete before the first is written.
+func (a *app) answer(answer any, doc func() present.Doc) error {
+	var b bytes.Buffer
+	if a.format == "json" {
+		e := json.NewEncoder(&b)
+		e.SetEscapeHTML(false)
+		e.SetIndent("", " ")
+		if err := e.Encode(answer); err != nil {
+			return &fault{exitCase, err.Error()}
+		}
+	} else if err := present.Encode(&b, a.format, doc()); err != nil {
+		return &fault{exitCase, err.Error()}
+	}
+	return a.publish(b.Bytes())
+}
+
+// publish writes the finished bytes to where they are wanted.
+func (a *app) publish(b []byte) error {
+	write := func(w io.Writer) error {
+		_, err := w.Write(b)
+		return err
+	}
+	if a.file == "" || a.file == "-" {
+		err := write(a.out)
+		switch {
+		case errors.Is(err, syscall.EPIPE):
+			return err // whoever read has seen enough
+		case err != nil:
+			return &fault{exitCase, fmt.Sprintf("cannot write to standard output: %v", last(err))}
+		}
+		return nil
+	}
+	a.filing.Lock()
+	defer a.filing.Unlock()
+	if err := present.WriteFile(a.file, a.out, write); err != nil {
+		return &fault{exitCase, fmt.Sprintf("cannot write %s: %v", a.file, last(err))}
+	}
+	return nil
+}
+
+// last is the innermost error: what went wrong, without the system call's name.
+func last(err error) error {
+	for {
+		inner := errors.Unwrap(err)
+		if inner == nil {
+			return err
+		}
+		err = inner
+	}
+}

@@ -1,0 +1,259 @@
+package study
+
+import (
+	"fmt"
+	"math"
+	"slices"
+
+	"lagbook/laplace"
+	"lagbook/network/casefile"
+)
+
+// A trial is one limit on one output: what is needed to judge it.
+type trial struct {
+	ask          casefile.AskLimit
+	show         shown
+	resp         *laplace.Response
+	t0, t1       float64 // the window
+	run          float64 // end of the run
+	begin        float64 // the value at the start of the run
+	level        float64
+	after, until *float64 // as asked
+	allowed      float64  // within, s
+	margin       float64  // asked for, in the limit's unit
+	slack        float64  // rounding error of the response
+	print        Printer
+}
+
+// Limits judges each [limit]. Roots and extremes are those of the closed form,
+// never samples.
+func (m *Model) Limits() (*Limits, error) {
+	asks := m.Case.Questions.Limits
+	for _, l := range asks {
+		for _, s := range l.Of {
+			if _, err := m.want(s, l.Above); err != nil {
+				return nil, err
+			}
+		}
+	}
+	a := &Limits{Title: m.Case.Title, Limits: []Limit{}, Met: true}
+	var warn []Warning
+	if len(asks) == 0 {
+		warn = append(warn, Warning{noLimits, "the case states no [limit]: there is nothing to judge"})
+		a.Evidence = m.evidence(warn)
+		return a, nil
+	}
+	resp, err := m.response()
+	if err != nil {
+		return nil, err
+	}
+	for _, l := range asks {
+		v, w, err := m.limit(resp, l)
+		if err != nil {
+			return nil, err
+		}
+		a.Limits = append(a.Limits, v)
+		a.Met = a.Met && v.Met
+		warn = append(warn, w...)
+	}
+	govern(a.Limits)
+	warn = append(warn, m.growing(m.red.System)...)
+	a.Evidence = m.evidence(warn)
+	return a, nil
+}
+
+// limit judges one limit; of several outputs the worst decides.
+func (m *Model) limit(resp *laplace.Response, ask casefile.AskLimit) (Limit, []Warning, error) {
+	var worst Limit
+	var warn []Warning
+	for i, s := range ask.Of {
+		w, err := m.want(s, ask.Above)
+		if err != nil {
+			return worst, nil, err
+		}
+		t := m.trial(resp, ask, w)
+		v, more := t.judge()
+		warn = append(warn, more...)
+		if i == 0 || worse(v, worst) {
+			worst = v
+		}
+	}
+	return worst, warn, nil
+}
+
+// trial gathers what a limit on one output needs.
+func (m *Model) trial(resp *laplace.Response, ask casefile.AskLimit, w shown) *trial {
+	num := m.val.Num
+	t := &trial{ask: ask, show: w, resp: resp, run: m.until, t1: m.until, begin: m.beginning(w), level: num[ask.Level], slack: resp.Rounding(w.out), print: m.Show}
+	if ask.HasAfter {
+		t.t0 = num[ask.After]
+		after := t.t0
+		t.after, t.begin = &after, resp.Left(w.out, after)
+	}
+	if ask.HasUntil {
+		t.t1 = num[ask.Until]
+		until := t.t1
+		t.until = &until
+	}
+	if ask.HasWithin {
+		t.allowed = num[ask.Within]
+	}
+	if ask.HasMargin {
+		t.margin = num[ask.Margin]
+	}
+	return t
+}
+
+// judge gives the verdict, and warns where the window does not lie in the run or
+// nothing happens in it.
+func (t *trial) judge() (Limit, []Warning) {
+	v := Limit{Name: t.ask.Name, Of: t.show.name, Unit: t.show.unit, Kind: t.show.kind, After: t.after, Until: t.until, Percentage: t.ask.Percent, Demand: demands[t.ask.Kind]}
+	if t.ask.Above != "" {
+		v.Of += " above " + t.ask.Above
+	}
+	level := t.level
+	v.Level, v.LevelUnit = &level, t.show.unit
+	var warn []Warning
+	if t.t1 > t.run*(1+1e-12) {
+		warn = append(warn, t.warning("beyond-the-run", fmt.Sprintf("its window ends at %s, the run at %s: judged as far as the run goes", t.print.Time(t.t1), t.print.Time(t.run))))
+		t.t1 = t.run
+	}
+	if t.t0 >= t.t1 {
+		v.Text = "cannot be judged: its window lies beyond the run"
+		return v, append(warn, t.warning("beyond-the-run", v.Text))
+	}
+	switch t.ask.Kind {
+	case casefile.StayBelow, casefile.StayAbove:
+		warn = append(warn, t.stay(&v)...)
+	case casefile.Reach:
+		warn = append(warn, t.reach(&v)...)
+	case casefile.Settle:
+		warn = append(warn, t.settle(&v)...)
+	case casefile.OvershootBelow:
+		warn = append(warn, t.overshoot(&v)...)
+	}
+	if !slices.ContainsFunc(warn, func(w Warning) bool { return w.Code == nothingChanges || w.Code == "true-at-start" }) && t.still() {
+		warn = append(warn, t.warning(nothingChanges, t.show.name+" does not change in the window: does its load reach its value before the run begins?"))
+	}
+	return v, warn
+}
+
+// Codes of warnings that others look for.
+const (
+	noLimits       = "no-limits"       // there is nothing to judge
+	nothingChanges = "nothing-changes" // in a table, or in the window of a limit
+)
+
+// demands are the words of the case file.
+var demands = map[casefile.LimitKind]string{
+	casefile.StayBelow: "stay_below", casefile.StayAbove: "stay_above", casefile.Reach: "reach",
+	casefile.Settle: "settle", casefile.OvershootBelow: "overshoot_below",
+}
+
+func (t *trial) warning(code, text string) Warning {
+	return Warning{code, fmt.Sprintf("limit %q: %s", t.ask.Name, text)}
+}
+
+// still reports whether the output is constant over the window. A few values
+// tell at once that it is not; only then are its extremes looked for.
+func (t *trial) still() bool {
+	y0 := t.resp.At(t.show.out, t.t0)
+	for k := 1.0; k <= 4; k++ {
+		if y := t.resp.At(t.show.out, t.t0+(t.t1-t.t0)*k/4); math.Abs(y-y0) > math.Max(1e-9*math.Abs(y0), math.Max(1e-6*speck(t.show.unit), 4*t.slack)) {
+			return false
+		}
+	}
+	hi, lo := t.resp.Max(t.show.out, t.t0, t.t1), t.resp.Min(t.show.out, t.t0, t.t1)
+	return hi.Y-lo.Y <= math.Max(1e-9*math.Abs(hi.Y), math.Max(1e-6*speck(t.show.unit), 4*t.slack))
+}
+
+// value prints a value of the limit's output; gap one that is a difference of two.
+func (t *trial) value(v float64) string { return t.print.Value(v, t.show.unit, t.show.kind) }
+
+// apart prints a value with as many digits as tell it from the level.
+func (t *trial) apart(v float64) string {
+	p := t.print
+	for p.digits < 12 && v != t.level && p.Value(v, t.show.unit, t.show.kind) == p.Value(t.level, t.show.unit, t.show.kind) {
+		p.digits++
+	}
+	return p.Value(v, t.show.unit, t.show.kind)
+}
+
+func (t *trial) gap(v float64) string {
+	if t.show.kind == kindLevel {
+		return t.print.Value(v, t.show.unit, kindDifference)
+	}
+	return t.value(v)
+}
+
+// judgeMargin fills in the margin and whether it suffices; way is what the
+// margin is a share of, 0 where nothing sensible is.
+func (t *trial) judgeMargin(v *Limit, margin, way float64, asked float64) {
+	v.Margin = &margin
+	if t.ask.HasMargin {
+		v.MarginAsked = &asked
+	}
+	v.Met = margin >= asked
+	if way > 0 {
+		p := 100 * margin / way
+		v.Percent = &p
+	}
+}
+
+// worse orders verdicts of one limit: the one not met, then the smaller share left.
+func worse(a, b Limit) bool {
+	if a.Met != b.Met {
+		return !a.Met
+	}
+	return share(a) < share(b)
+}
+
+// share is the part of the way that is left; a limit that has none governs where
+// it is not met and never where it is.
+func share(v Limit) float64 {
+	switch {
+	case v.Percent != nil && (v.Met || v.MarginAsked != nil || *v.Percent <= 0):
+		return *v.Percent
+	case v.Met:
+		return math.Inf(1)
+	}
+	return math.Inf(-1)
+}
+
+// govern marks the limit with the least margin as a share of the way.
+func govern(list []Limit) {
+	if len(list) == 0 {
+		return
+	}
+	g := 0
+	for i := range list {
+		if worse(list[i], list[g]) {
+			g = i
+		}
+	}
+	list[g].Governs = true
+}
+
+// beginning is the value of an output just before t = 0, where the start is a
+// steady state; else the value the run begins with.
+func (m *Model) beginning(w shown) float64 {
+	if w.kind == kindLevel || w.kind == kindDifference {
+		if s, err := m.startLevels(); err == nil {
+			sum := 0.0
+			for _, term := range m.outs[w.out].Terms {
+				sum += term.Coef * s[term.Node]
+			}
+			return sum
+		}
+	}
+	return m.resp.At(w.out, 0)
+}
+
+// startLevels are the levels at the start by NodeID.
+func (m *Model) startLevels() ([]float64, error) {
+	s, err := m.startState()
+	if err != nil {
+		return nil, err
+	}
+	return s.Levels, nil
+}

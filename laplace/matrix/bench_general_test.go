@@ -47,13 +47,34 @@ func pipeNet(n int, seed uint64) []float64 {
 
 func BenchmarkDenseBlockForm(b *testing.B) {
 	for _, n := range []int{10, 50, 200} {
-		a := pipeNet(n, 7)
+		a := pipeNet(n, uint64(2000+n))
 		b.Run(fmt.Sprintf("n=%d", n), func(b *testing.B) {
 			b.ReportAllocs()
 			for b.Loop() {
 				if _, err := DenseBlockForm(n, a, nil); err != nil {
 					b.Fatal(err)
 				}
+			}
+		})
+	}
+}
+
+// BenchmarkResidues is what the baselines do: all poles, and the residues from the
+// first pressure to the last.
+func BenchmarkResidues(b *testing.B) {
+	for _, n := range []int{10, 50, 200} {
+		a := pipeNet(n, uint64(2000+n))
+		in, out := unit(n, 0), unit(n, 2*n/5-1)
+		b.Run(fmt.Sprintf("n=%d", n), func(b *testing.B) {
+			b.ReportAllocs()
+			var w BlockWork
+			for b.Loop() {
+				f, err := w.Dense(n, a, nil)
+				if err != nil {
+					b.Fatal(err)
+				}
+				f.In(in)
+				f.Out(out)
 			}
 		})
 	}

@@ -32,11 +32,13 @@ type Root struct {
 //
 // Method: the strongly connected parts (Tarjan 1972) one by one. A part of
 // resistances and capacitances goes through RCWork.Modes, any other through a
-// scaled real Schur form refined in doubled precision; the parts and the groups
-// of poles are uncoupled after Bavely and Stewart (1979). A pole of a part of
+// scaled real Schur form (Householder; Francis 1961) refined in doubled precision:
+// its poles always, its vectors where the condition asks for it. The parts and the
+// groups of poles are uncoupled after Bavely and Stewart (1979). A pole of a part of
 // one state is a quotient, and equal ones are equal bit for bit.
 //
-// Cost: 30 n³ operations and a few n² of storage for one part of n states.
+// Cost: 30 n³ operations and some 20 n² of storage for one part of n states; see
+// BlockWork where there are many to do.
 type BlockForm struct {
 	N        int
 	Blocks   []Block
@@ -63,6 +65,11 @@ func (b *Balance) BlockForm() (*BlockForm, error) {
 // of the capacity of each state, or any size that makes scale[i]·x[i] comparable;
 // nil where they are so already.
 func DenseBlockForm(n int, a, scale []float64) (*BlockForm, error) {
+	return new(BlockWork).Dense(n, a, scale)
+}
+
+// scaledPlain is x' = a x with states of comparable sizes scale[i]·x[i].
+func scaledPlain(n int, a, scale []float64) (*system, error) {
 	if scale != nil && len(scale) != n {
 		return nil, ErrShape
 	}
@@ -76,7 +83,7 @@ func DenseBlockForm(n int, a, scale []float64) (*BlockForm, error) {
 		}
 		s.scale[i] = int(math.Round(math.Log2(v)))
 	}
-	return s.blockForm()
+	return s, nil
 }
 
 // StoreBlockForm uncouples capacity[i] x[i]' = Σ_j g[i,j] x[j]: pressures and flows
@@ -90,17 +97,18 @@ func StoreBlockForm(n int, capacity, g []float64) (*BlockForm, error) {
 	return s.blockForm()
 }
 
-func (s *system) blockForm() (*BlockForm, error) {
+func (s *system) blockForm() (*BlockForm, error) { return s.blockFormBy(new(BlockWork)) }
+
+func (s *system) blockFormBy(work *BlockWork) (*BlockForm, error) {
 	f := &BlockForm{N: s.n, from: s}
-	var rc RCWork
 	at := 0
 	for _, states := range components(s.n, s.feels) {
-		p, err := s.analyse(states, &rc)
+		p, err := s.analyse(states, work)
 		if err != nil {
 			return nil, err
 		}
 		f.parts = append(f.parts, p)
-		f.Coupling = math.Max(f.Coupling, p.coupling)
+		f.Coupling = max(f.Coupling, p.coupling)
 		f.first = append(f.first, at)
 		at += len(states)
 	}
@@ -115,34 +123,35 @@ func (s *system) blockForm() (*BlockForm, error) {
 // downstream comes first, and uncouples them.
 func (f *BlockForm) uncouple(s *system) {
 	n := f.N
-	t := make([]float64, n*n)
+	ld := stride(n)
+	t := make([]float64, n*ld)
 	var start []int
-	var poles [][]complex128
+	var poles []complex128
 	var level []float64
 	var owner []int
 	reach := f.reach(s)
 	for k, p := range f.parts {
 		m, at := len(p.states), f.first[k]
 		for i := 0; i < m; i++ {
-			copy(t[(at+i)*n+at:(at+i)*n+at+m], p.d[i*m:i*m+m])
+			copy(t[(at+i)*ld+at:(at+i)*ld+at+m], p.d[i*m:i*m+m])
 		}
 		for a, roots := range p.roots {
 			start = append(start, at+p.start[a])
 			level = append(level, p.level(a))
 			owner = append(owner, k)
-			list := make([]complex128, len(roots))
-			for i, r := range roots {
-				list[i] = complex(r.Re, r.Im)
+			for _, r := range roots {
+				poles = append(poles, complex(r.Re, r.Im))
 			}
-			poles = append(poles, list)
 		}
 		for l := k + 1; l < len(f.parts); l++ {
-			f.couple(s, t, k, l)
+			f.couple(s, t, ld, k, l)
 		}
 	}
 	start = append(start, n)
-	f.u = decouple(n, t, start, poles, level, func(i, j int) bool { return reach[owner[j]][owner[i]] })
-	f.Coupling = math.Max(f.Coupling, f.u.size)
+	f.u = new(decoupling)
+	f.u.limit = maxCoupling
+	f.u.decouple(n, ld, t, start, poles, level, func(i, j int) bool { return reach[owner[j]][owner[i]] })
+	f.Coupling = max(f.Coupling, f.u.size)
 }
 
 // reach tells which parts each part feels, directly or through others.
@@ -174,7 +183,7 @@ func (f *BlockForm) reach(s *system) [][]bool {
 }
 
 // couple writes W·G·V, what part k feels of part l, into t.
-func (f *BlockForm) couple(s *system, t []float64, k, l int) {
+func (f *BlockForm) couple(s *system, t []float64, ld, k, l int) {
 	p, q := f.parts[k], f.parts[l]
 	m, w := len(p.states), len(q.states)
 	var g []float64 // G·V
@@ -194,7 +203,7 @@ func (f *BlockForm) couple(s *system, t []float64, k, l int) {
 		return
 	}
 	for i := 0; i < m; i++ {
-		row := t[(f.first[k]+i)*s.n+f.first[l]:]
+		row := t[(f.first[k]+i)*ld+f.first[l]:]
 		for r := 0; r < m; r++ {
 			for c := 0; c < w; c++ {
 				row[c] += p.w[i*m+r] * g[r*w+c]
@@ -217,62 +226,95 @@ func (f *BlockForm) clusters() (list []cluster) {
 	for k, p := range f.parts {
 		for a := range p.roots {
 			start = append(start, f.first[k]+p.start[a])
-			roots = append(roots, p.roots[a])
 		}
+		roots = append(roots, p.roots...)
 	}
 	start = append(start, f.N)
-	add := func(d []float64, atoms ...int) {
+	for _, group := range f.u.clusters() {
 		var c cluster
-		for _, a := range atoms {
+		for _, a := range group {
 			c.roots = append(c.roots, roots[a]...)
 			for i := start[a]; i < start[a+1]; i++ {
 				c.inner = append(c.inner, i)
 			}
 		}
-		for _, i := range c.inner {
-			for _, j := range c.inner {
-				c.t = append(c.t, d[i*f.N+j])
-			}
-		}
+		c.t = appendBlock(nil, f.u.d, f.u.ld, c.inner)
 		sortRoots(c.roots)
 		list = append(list, c)
-	}
-	if f.u != nil {
-		for _, atoms := range f.u.members() {
-			add(f.u.d, atoms...)
-		}
-		return list
-	}
-	for _, p := range f.parts { // one at most
-		for a := range p.roots {
-			add(p.d, a)
-		}
 	}
 	return list
 }
 
+// appendBlock appends the rows and columns of d named by states to t.
+func appendBlock(t, d []float64, ld int, states []int) []float64 {
+	for _, i := range states {
+		for _, j := range states {
+			t = append(t, d[i*ld+j])
+		}
+	}
+	return t
+}
+
 // finish lays the clusters out as blocks, slowest first, and lists the poles.
 func (f *BlockForm) finish() {
-	list := f.clusters()
-	slices.SortStableFunc(list, func(p, q cluster) int { return slower(p.roots[0], q.roots[0]) })
-	for k, c := range list {
-		f.Blocks = append(f.Blocks, Block{First: len(f.order), N: len(c.inner), T: c.t})
-		f.order = append(f.order, c.inner...)
-		for _, r := range c.roots {
-			r.Block = k
-			f.Poles = append(f.Poles, r)
+	f.Poles, f.order = make([]Root, 0, f.N), make([]int, 0, f.N)
+	if f.u == nil {
+		f.single()
+	} else {
+		list := f.clusters()
+		slices.SortStableFunc(list, func(p, q cluster) int { return slower(p.roots[0], q.roots[0]) })
+		for _, c := range list {
+			f.add(c)
 		}
 	}
 	sortRoots(f.Poles)
 }
 
+// add appends a block.
+func (f *BlockForm) add(c cluster) {
+	for _, r := range c.roots {
+		r.Block = len(f.Blocks)
+		f.Poles = append(f.Poles, r)
+	}
+	f.Blocks = append(f.Blocks, Block{First: len(f.order), N: len(c.inner), T: c.t})
+	f.order = append(f.order, c.inner...)
+}
+
+// single lays out one part alone, every atom a block.
+func (f *BlockForm) single() {
+	if len(f.parts) == 0 {
+		return
+	}
+	p := f.parts[0]
+	room := make([]int, len(p.roots)+f.N)
+	atoms, states := room[:len(p.roots)], room[len(p.roots):]
+	for a := range atoms {
+		atoms[a] = a
+		sortRoots(p.roots[a])
+	}
+	for i := range states {
+		states[i] = i
+	}
+	slices.SortStableFunc(atoms, func(a, b int) int { return slower(p.roots[a][0], p.roots[b][0]) })
+	f.Blocks = make([]Block, 0, len(atoms))
+	t := make([]float64, 0, 2*f.N)
+	for _, a := range atoms {
+		c := cluster{inner: states[p.start[a]:p.start[a+1]], roots: p.roots[a]}
+		from := len(t)
+		t = appendBlock(t, p.d, f.N, c.inner)
+		c.t = t[from:len(t):len(t)]
+		f.add(c)
+	}
+}
+
 // slower orders roots: ascending modulus, then real part, then imaginary part.
 func slower(p, q Root) int {
-	return cmp.Or(
-		cmp.Compare(math.Hypot(p.Re, p.Im), math.Hypot(q.Re, q.Im)),
-		cmp.Compare(p.Re, q.Re),
-		cmp.Compare(p.Im, q.Im),
-	)
+	if p.Re != q.Re || math.Abs(p.Im) != math.Abs(q.Im) {
+		if c := cmp.Compare(math.Hypot(p.Re, p.Im), math.Hypot(q.Re, q.Im)); c != 0 {
+			return c
+		}
+	}
+	return cmp.Or(cmp.Compare(p.Re, q.Re), cmp.Compare(p.Im, q.Im))
 }
 
 func sortRoots(r []Root) { slices.SortStableFunc(r, slower) }
@@ -297,7 +339,7 @@ func (f *BlockForm) In(b []float64) []float64 {
 		for j := n - 1; j >= 0; j-- {
 			if y[j] != 0 {
 				for i := 0; i < j; i++ {
-					y[i] -= f.u.ut[j*n+i] * y[j]
+					y[i] -= f.u.ut[j*f.u.ld+i] * y[j]
 				}
 			}
 		}
@@ -323,7 +365,7 @@ func (f *BlockForm) Out(c []float64) []float64 {
 		n := f.N
 		for j := n - 1; j >= 0; j-- {
 			for i := 0; i < j; i++ {
-				y[j] += f.u.ut[j*n+i] * y[i]
+				y[j] += f.u.ut[j*f.u.ld+i] * y[i]
 			}
 		}
 	}

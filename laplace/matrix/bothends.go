@@ -9,7 +9,7 @@ import (
 // inverse matrix, formed in doubled precision: where rates spread by more than
 // 1e15 the slow end of a Schur form is lost, and that of the inverse is its fast
 // end. nil where the matrix is singular or the two lists do not meet.
-func bothEnds(a *scaledMatrix, g *eigenblocks) *eigenblocks {
+func bothEnds(a *scaledMatrix, g *eigenblocks, w *BlockWork) *eigenblocks {
 	m := a.m
 	inv := a.inverse()
 	if inv == nil {
@@ -22,11 +22,11 @@ func bothEnds(a *scaledMatrix, g *eigenblocks) *eigenblocks {
 	if !allFinite(inv) {
 		return nil
 	}
-	t, q, err := schur(m, inv)
-	if err != nil {
+	if w.schur.schur(m, inv) != nil {
 		return nil
 	}
-	h := newEigenblocks(m, t, q)
+	h := &w.inverse
+	h.uncouple(w)
 	h.invertBlocks(-e)
 	fast, slow := g.bySize(), h.bySize()
 	at, ok := meet(g, h, fast, slow)
@@ -41,6 +41,9 @@ func bothEnds(a *scaledMatrix, g *eigenblocks) *eigenblocks {
 		out.take(h, slow[k])
 	}
 	out.radius = make([]float64, len(out.start)-1)
+	for a := range out.radius {
+		out.radius[a] = math.Inf(1) // not good as it is
+	}
 	return out
 }
 

@@ -10,7 +10,13 @@ import "slices"
 // place of recursion. The pattern is that of the exact zeros; the search starts
 // from the states in order, so the same matrix gives the same parts.
 func components(n int, feels func(i, j int) bool) [][]int {
-	t := tarjan{index: make([]int, n), low: make([]int, n), next: make([]int, n), on: make([]bool, n)}
+	room := make([]int, 6*n) // in one piece: small systems are many
+	cut := func() []int {
+		v := room[:n:n]
+		room = room[n:]
+		return v
+	}
+	t := tarjan{index: cut(), low: cut(), next: cut(), stack: cut()[:0], call: cut()[:0], states: cut()[:0], on: make([]bool, n)}
 	for i := 0; i < n; i++ {
 		if t.index[i] == 0 {
 			t.walk(n, i, feels)
@@ -27,6 +33,7 @@ type tarjan struct {
 	index, low, next []int // 1-based order of discovery; lowest reachable; next neighbour to try
 	on               []bool
 	stack, call      []int
+	states           []int // of the parts closed, one after the other
 	count            int
 	parts            [][]int
 }
@@ -72,7 +79,9 @@ func (t *tarjan) close(i int) {
 	for t.stack[k] != i {
 		k--
 	}
-	part := append([]int(nil), t.stack[k:]...)
+	from := len(t.states)
+	t.states = append(t.states, t.stack[k:]...)
+	part := t.states[from:len(t.states):len(t.states)]
 	t.stack = t.stack[:k]
 	slices.Sort(part)
 	for _, j := range part {

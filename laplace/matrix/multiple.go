@@ -29,7 +29,7 @@ func settleMultiple(roots []*Root, count func() int) {
 		var size int
 		for k, r := range roots {
 			if group[k] == g {
-				re, im, err = re+r.Re, im+r.Im, math.Max(err, r.mean)
+				re, im, err = re+r.Re, im+r.Im, max(err, r.mean)
 				size++
 			}
 		}
@@ -55,7 +55,8 @@ func overlapping(roots []*Root) (group []int, repeated int) {
 	}
 	for i, p := range roots {
 		for j, q := range roots[:i] {
-			if group[i] == group[j] || math.Hypot(p.Re-q.Re, p.Im-q.Im) > p.Radius+q.Radius {
+			reach := p.Radius + q.Radius
+			if math.Abs(p.Re-q.Re) > reach || group[i] == group[j] || math.Hypot(p.Re-q.Re, p.Im-q.Im) > reach {
 				continue
 			}
 			from, to := max(group[i], group[j]), min(group[i], group[j])

@@ -11,7 +11,7 @@ func (s *system) settleOrigin(p *part) {
 	for _, roots := range p.roots {
 		for _, r := range roots {
 			m := math.Hypot(r.Re, r.Im)
-			large, small = math.Max(large, m), math.Min(small, m)
+			large, small = max(large, m), min(small, m)
 			asked = asked || m <= 4*r.Radius
 		}
 	}
@@ -35,7 +35,7 @@ func (p *part) smallest() (atom int, ok bool) {
 	for a, roots := range p.roots {
 		var m float64
 		for _, r := range roots {
-			m = math.Max(m, math.Hypot(r.Re, r.Im))
+			m = max(m, math.Hypot(r.Re, r.Im))
 		}
 		if m < least && (m != 0 || roots[0].Radius != 0) {
 			least, atom, ok = m, a, true

@@ -16,11 +16,12 @@ type part struct {
 
 func newPart(states []int) *part {
 	m := len(states)
-	return &part{states: states, v: make([]float64, m*m), w: make([]float64, m*m), d: make([]float64, m*m), scale: make([]int, m)}
+	room := make([]float64, 3*m*m)
+	return &part{states: states, v: room[: m*m : m*m], w: room[m*m : 2*m*m : 2*m*m], d: room[2*m*m:], scale: make([]int, m)}
 }
 
 // analyse uncouples one part by the route that suits it.
-func (s *system) analyse(states []int, rc *RCWork) (*part, error) {
+func (s *system) analyse(states []int, work *BlockWork) (*part, error) {
 	if len(states) == 1 {
 		p := s.single(states)
 		if !allFinite(p.d) || !allFinite(p.w) {
@@ -30,19 +31,21 @@ func (s *system) analyse(states []int, rc *RCWork) (*part, error) {
 	}
 	if s.leak != nil {
 		if b, ok := s.rcWithin(states); ok {
-			return rcPart(b, states, rc)
+			return rcPart(b, states, &work.rc)
 		}
 	}
 	if s.stores != nil {
 		if b, ok := s.stores.rcWithin(states); ok {
-			p, err := rcPart(b, states, rc)
+			p, err := rcPart(b, states, &work.rc)
 			if err == nil {
 				s.comparable(p)
 			}
 			return p, err
 		}
 	}
-	a := s.matrix(states)
+	work.room(len(states))
+	a := &work.a
+	s.matrix(states, a)
 	if !allFinite(a.hi) || !allFinite(a.noise) {
 		return nil, ErrRange
 	}
@@ -51,7 +54,7 @@ func (s *system) analyse(states []int, rc *RCWork) (*part, error) {
 			return p, nil
 		}
 	}
-	p, err := s.general(states, a)
+	p, err := s.general(states, a, work)
 	if err == nil && (s.low == nil || s.stores != nil) {
 		s.settleOrigin(p)
 		settleMultiple(p.all(), func() int {
@@ -76,14 +79,15 @@ func (p *part) level(a int) (size float64) {
 	m := len(p.states)
 	for i := 0; i < m; i++ {
 		for k := p.start[a]; k < p.start[a+1]; k++ {
-			size = math.Max(size, math.Abs(math.Ldexp(p.v[i*m+k], p.scale[i])))
+			size = max(size, math.Abs(math.Ldexp(p.v[i*m+k], p.scale[i])))
 		}
 	}
 	return size
 }
 
 // all lists the roots of a part.
-func (p *part) all() (list []*Root) {
+func (p *part) all() []*Root {
+	list := make([]*Root, 0, len(p.states))
 	for _, roots := range p.roots {
 		for k := range roots {
 			list = append(list, &roots[k])
@@ -191,15 +195,16 @@ func (s *system) pair(states []int, mat *scaledMatrix) (*part, bool) {
 	for k := range err {
 		err[k] *= eps / 2
 	}
-	p.roots = [][]Root{scaleRoots(pairRoots(mean, disc, (err[0]+err[3])/2, discError(mat.hi, err)), mat.time)}
+	p.roots = [][]Root{pairRoots(nil, mean, disc, (err[0]+err[3])/2, discError(mat.hi, err))}
+	scaleRoots(p.roots[0], mat.time)
 	return p, true
 }
 
-// blockRoots returns the eigenvalues of a 2×2 block whose entries are uncertain by
+// appendPair appends the eigenvalues of a 2×2 block whose entries are uncertain by
 // err each.
-func blockRoots(d, err []float64) []Root {
+func appendPair(list []Root, d [4]float64, err []float64) []Root {
 	mean, disc := pairTerms(toDD(d[0]), toDD(d[1]), toDD(d[2]), toDD(d[3]))
-	return pairRoots(mean, disc, (err[0]+err[3])/2, discError(d, err))
+	return pairRoots(list, mean, disc, (err[0]+err[3])/2, discError(d[:], err))
 }
 
 // pairTerms returns the mean and the discriminant of [a b; c d]: its eigenvalues
@@ -215,8 +220,8 @@ func discError(d, err []float64) float64 {
 	return (2*half+e)*e + math.Abs(d[1])*err[2] + math.Abs(d[2])*err[1] + err[1]*err[2]
 }
 
-// pairRoots returns mean ± √disc with the radius that errors of both give.
-func pairRoots(mean, disc dd, meanErr, discErr float64) []Root {
+// pairRoots appends mean ± √disc with the radius that errors of both give.
+func pairRoots(list []Root, mean, disc dd, meanErr, discErr float64) []Root {
 	root := disc.abs().sqrt().float()
 	rad := math.Sqrt(discErr)
 	if root > rad {
@@ -226,14 +231,14 @@ func pairRoots(mean, disc dd, meanErr, discErr float64) []Root {
 	rad += meanErr
 	if disc.hi < 0 {
 		rad += ulps(1, m) + ulps(1, root)
-		return []Root{{Re: m, Im: root, Radius: rad, mean: meanErr}, {Re: m, Im: -root, Radius: rad, mean: meanErr}}
+		return append(list, Root{Re: m, Im: root, Radius: rad, mean: meanErr}, Root{Re: m, Im: -root, Radius: rad, mean: meanErr})
 	}
 	a, b := mean.add(disc.sqrt()).float(), mean.sub(disc.sqrt()).float()
-	return []Root{{Re: a, Radius: rad + ulps(2, a), mean: meanErr}, {Re: b, Radius: rad + ulps(2, b), mean: meanErr}}
+	return append(list, Root{Re: a, Radius: rad + ulps(2, a), mean: meanErr}, Root{Re: b, Radius: rad + ulps(2, b), mean: meanErr})
 }
 
 // scaleRoots multiplies by 2^−time.
-func scaleRoots(list []Root, time int) []Root {
+func scaleRoots(list []Root, time int) {
 	for k, r := range list {
 		list[k] = Root{
 			Re:     math.Ldexp(r.Re, -time),
@@ -242,5 +247,4 @@ func scaleRoots(list []Root, time int) []Root {
 			mean:   math.Ldexp(r.mean, -time),
 		}
 	}
-	return list
 }

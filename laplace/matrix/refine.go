@@ -6,84 +6,13 @@ import (
 	blaslib "gonum.org/v1/gonum/blas"
 )
 
-// sparseRows holds the rows of a matrix hi + lo without its zeros.
-type sparseRows struct {
-	ptr, col []int
-	hi, lo   []float64
-}
-
-func newSparseRows(m int, hi, lo []float64, transposed bool) *sparseRows {
-	s := &sparseRows{ptr: make([]int, 1, m+1)}
-	for i := 0; i < m; i++ {
-		for j := 0; j < m; j++ {
-			k := i*m + j
-			if transposed {
-				k = j*m + i
-			}
-			if hi[k] != 0 {
-				s.col = append(s.col, j)
-				s.hi, s.lo = append(s.hi, hi[k]), append(s.lo, lo[k])
-			}
-		}
-		s.ptr = append(s.ptr, len(s.col))
-	}
-	return s
-}
-
-// residual sets r = M X − X D, every entry a compensated sum rounded once. D is
-// block diagonal over start; transposed takes Dᵀ.
-//
-// Method: dot products of T. Ogita, S. M. Rump, S. Oishi, SIAM J. Sci. Comput. 26
-// (2005) 1955.
-func (s *sparseRows) residual(m int, r, x, d []float64, start []int, transposed bool) {
-	low := make([]float64, m)
-	for i := 0; i < m; i++ {
-		high := r[i*m : i*m+m]
-		clear(high)
-		clear(low)
-		for e := s.ptr[i]; e < s.ptr[i+1]; e++ {
-			row := x[s.col[e]*m : s.col[e]*m+m]
-			accumulate(high, low, row, s.hi[e], s.lo[e])
-		}
-		row := x[i*m : i*m+m]
-		for a := 0; a+1 < len(start); a++ {
-			for k := start[a]; k < start[a+1]; k++ {
-				for l := start[a]; l < start[a+1]; l++ {
-					v := d[l*m+k]
-					if transposed {
-						v = d[k*m+l]
-					}
-					p, f := twoProd(row[l], -v)
-					h, g := twoSum(high[k], p)
-					high[k] = h
-					low[k] += f + g
-				}
-			}
-		}
-		for k := range high {
-			high[k] += low[k]
-		}
-	}
-}
-
-// accumulate adds (hi+lo)·x to high + low.
-func accumulate(high, low, x []float64, hi, lo float64) {
-	for k, v := range x {
-		p := hi * v
-		f := math.FMA(hi, v, -p) + lo*v
-		h := high[k] + p
-		t := h - high[k]
-		low[k] += ((high[k] - (h - t)) + (p - t)) + f
-		high[k] = h
-	}
-}
-
 const (
-	refineAlways = 16    // up to this size X and W are refined in any case, above it
-	refineLight  = 1e-12 // where a pole may be worse than this, relative; else D alone is
-	refineSteps  = 5
-	refineFrom   = 0.25 // largest first correction that is trusted
-	refineTo     = 1e-7 // a correction below this is squared away by the step it makes
+	refineSmall = 16    // up to this size a second look is cheap:
+	refineTight = 1e-13 // X and W are refined where a pole may be worse than this, relative,
+	refineLight = 1e-12 // above it where worse than this; else D alone is
+	refineSteps = 5
+	refineFrom  = 0.25 // largest first correction that is trusted
+	refineTo    = 1e-7 // a correction below this is squared away by the step it makes
 )
 
 // refine corrects D, X and W of M = hi + lo by Newton's method for all blocks at
@@ -92,20 +21,25 @@ const (
 //
 // Method: J. J. Dongarra, C. B. Moler, J. H. Wilkinson, SIAM J. Numer. Anal. 20
 // (1983) 23, for invariant subspaces in place of single vectors.
-func (g *eigenblocks) refine(a *scaledMatrix) bool {
+func (g *eigenblocks) refine(a *scaledMatrix, w *BlockWork) bool {
 	m := g.m
-	rows := newSparseRows(m, a.hi, a.lo, false)
-	if m > refineAlways && g.good(refineLight) {
-		g.rayleigh(rows)
+	rows, cols := &w.rows, &w.cols
+	rows.set(m, a.hi, a.lo, false)
+	r, e, res := w.free(m)
+	w.low = resized(w.low, m)
+	tol := refineLight
+	if m <= refineSmall {
+		tol = refineTight
+	}
+	if g.good(tol) {
+		g.rayleigh(rows, w, e, res)
 		return true
 	}
-	cols := newSparseRows(m, a.hi, a.lo, true)
-	kept := *g
-	kept.x, kept.wt, kept.d = cloned(g.x), cloned(g.wt), cloned(g.d)
-	r, e, res := make([]float64, m*m), make([]float64, m*m), make([]float64, m*m)
+	cols.set(m, a.hi, a.lo, true)
+	w.kept.copyFrom(g)
 	norm := norm2(a.hi)
 	for step := 0; step < refineSteps; step++ {
-		rows.residual(m, res, g.x, g.d, g.start, false)
+		rows.residual(m, res, g.x, g.d, w.low, g.start, false)
 		blas.Dgemm(blaslib.Trans, blaslib.NoTrans, m, m, m, 1, g.wt, m, res, m, 0, r, m)
 		size := g.correction(e, r, -1)
 		if !(size < refineFrom) {
@@ -115,7 +49,7 @@ func (g *eigenblocks) refine(a *scaledMatrix) bool {
 		g.update(r)
 		fine := g.good(4 * eps)
 		addProduct(m, g.x, e, blaslib.NoTrans, res)
-		cols.residual(m, res, g.wt, g.d, g.start, true)
+		cols.residual(m, res, g.wt, g.d, w.low, g.start, true)
 		blas.Dgemm(blaslib.Trans, blaslib.NoTrans, m, m, m, 1, res, m, g.x, m, 0, r, m)
 		if left := g.correction(e, r, 1); !(left < refineFrom) {
 			break
@@ -127,23 +61,53 @@ func (g *eigenblocks) refine(a *scaledMatrix) bool {
 			return true
 		}
 	}
-	*g = kept
+	g.copyFrom(&w.kept)
 	return false
 }
 
 func cloned(a []float64) []float64 { return append([]float64(nil), a...) }
 
+// copyFrom makes g equal to o, in storage of its own.
+func (g *eigenblocks) copyFrom(o *eigenblocks) {
+	g.m, g.coupling = o.m, o.coupling
+	g.x, g.wt, g.d = append(g.x[:0], o.x...), append(g.wt[:0], o.wt...), append(g.d[:0], o.d...)
+	g.start, g.radius = append(g.start[:0], o.start...), append(g.radius[:0], o.radius...)
+}
+
 // good reports whether every pole's estimated error is below tol, relative.
 func (g *eigenblocks) good(tol float64) bool {
-	for a := range g.radius {
-		p, d := g.block(a)
-		for _, v := range eigenvalues(p, d) {
-			if !(g.radius[a] <= tol*cabs(v)) {
+	for a, r := range g.radius {
+		at := g.start[a] * (g.m + 1)
+		switch g.start[a+1] - g.start[a] {
+		case 1:
+			if !(r <= tol*math.Abs(g.d[at])) {
+				return false
+			}
+		default:
+			p, d := g.block(a)
+			for _, v := range eigenvalues(p, d) {
+				if !(r <= tol*cabs(v)) {
+					return false
+				}
+			}
+		case 2:
+			if !(r <= tol*least2(g.d[at], g.d[at+1], g.d[at+g.m], g.d[at+g.m+1])) {
 				return false
 			}
 		}
 	}
 	return true
+}
+
+// least2 is the smaller modulus of the eigenvalues of [a b; c d], within rounding of
+// the larger one.
+func least2(a, b, c, d float64) float64 {
+	half, mean := (a-d)/2, (a+d)/2
+	disc := half*half + b*c
+	if disc < 0 {
+		return math.Hypot(mean, math.Sqrt(-disc))
+	}
+	return math.Abs(a*d-b*c) / (math.Abs(mean) + math.Sqrt(disc))
 }
 
 // correction solves D_a E − E D_b = sign·R_ab for every two atoms and returns the
@@ -202,17 +166,18 @@ func worst(a, v float64) float64 {
 // out, Σ R_ab E_ba, and the rounding of the products that form R.
 func (g *eigenblocks) bound(r, e []float64, norm float64) {
 	m := g.m
+	g.radius = g.conditions(g.radius)
 	for a := range g.radius {
 		var s, size float64
 		for i := g.start[a]; i < g.start[a+1]; i++ {
 			for k := g.start[a]; k < g.start[a+1]; k++ {
-				size = math.Max(size, math.Abs(g.d[i*m+k]))
+				size = max(size, math.Abs(g.d[i*m+k]))
 				for j := 0; j < m; j++ {
 					s += math.Abs(r[i*m+j] * e[j*m+k])
 				}
 			}
 		}
-		g.radius[a] = 2*s + eps*size + 4*float64(m)*eps*eps*norm*g.condition(a)
+		g.radius[a] = 2*s + eps*size + 4*float64(m)*eps*eps*norm*g.radius[a]
 	}
 }
 

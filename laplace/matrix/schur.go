@@ -34,10 +34,7 @@ func (s *schurWork) schur(n int, a []float64) error {
 
 // size makes room for n states, all zero.
 func (s *schurWork) size(n int) {
-	s.n, s.ld = n, (n+3)&^3+4
-	if s.ld%64 == 0 { // rows a page apart share a few lines of the cache
-		s.ld += 8
-	}
+	s.n, s.ld = n, schurStride(n)
 	ld := s.ld
 	s.h, s.qt = resized(s.h, (n+2)*ld), resized(s.qt, (n+2)*ld)
 	clear(s.h)
@@ -52,6 +49,16 @@ func (s *schurWork) size(n int) {
 	if s.chain == nil || cap(s.chain) < n*reflectorSize {
 		s.chain = make([]float64, 0, n*reflectorSize)
 	}
+}
+
+// schurStride is stride, but never a multiple of 64: rows a page apart share a few
+// lines of the cache.
+func schurStride(n int) int {
+	ld := stride(n)
+	if ld%64 == 0 {
+		ld += 8
+	}
+	return ld
 }
 
 // resized returns a slice of length n, v where it is long enough; what is in it
@@ -82,10 +89,14 @@ func schur(n int, a []float64) (t, q []float64, err error) {
 // atomsOf returns where the 1×1 and 2×2 diagonal blocks of a quasi triangular
 // matrix begin, closed by n.
 func atomsOf(n int, t []float64) []int {
-	start := make([]int, 0, n+1)
+	return appendAtoms(make([]int, 0, n+1), n, n, t)
+}
+
+// appendAtoms is atomsOf for rows of stride ld.
+func appendAtoms(start []int, n, ld int, t []float64) []int {
 	for i := 0; i < n; i++ {
 		start = append(start, i)
-		if i+1 < n && t[(i+1)*n+i] != 0 {
+		if i+1 < n && t[(i+1)*ld+i] != 0 {
 			i++
 		}
 	}
@@ -132,13 +143,21 @@ func eigenvalues(n int, t []float64) []complex128 {
 
 // norm2 is the Frobenius norm, safe against overflow.
 func norm2(a []float64) float64 {
-	var s, m float64
+	var s float64
+	for _, v := range a {
+		s += v * v
+	}
+	if s > smallSquare && s < 1/smallSquare {
+		return math.Sqrt(s)
+	}
+	var m float64
 	for _, v := range a {
 		m = math.Max(m, math.Abs(v))
 	}
 	if m == 0 {
 		return 0
 	}
+	s = 0
 	for _, v := range a {
 		s += (v / m) * (v / m)
 	}

@@ -4,44 +4,8 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
-	"slices"
 	"testing"
-
-	"golang.org/x/sys/cpu"
 )
-
-// The chains of reflectors: vector kernels and plain ones agree bit for bit.
-func TestChaseKernels(t *testing.T) {
-	rng := rand.New(rand.NewPCG(1, 2))
-	draw := func(n int) []float64 {
-		v := make([]float64, n)
-		for i := range v {
-			v[i] = rng.NormFloat64()
-		}
-		return v
-	}
-	defer func(was bool) { useAVX = was }(useAVX)
-	for _, k := range []int{1, 2, 4, 7, 8, 12} {
-		for _, size := range []int{4, 8, 12, 16, 20} {
-			const stride = 27
-			a, c := draw(24*stride), draw(k*reflectorSize)
-			var rows, columns, sums [2][]float64
-			for way, avx := range []bool{cpu.X86.HasAVX, false} {
-				useAVX = avx
-				rows[way], columns[way] = slices.Clone(a), slices.Clone(a)
-				chaseRows(rows[way][3:], stride, k, size, c)
-				sums[way] = slices.Clone(a[:24])
-				sumRows(a[7:], stride, k, size, c, sums[way])
-				if k%4 == 0 {
-					chaseColumns(columns[way][stride+5:], stride, k, size, c)
-				}
-			}
-			if !slices.Equal(rows[0], rows[1]) || !slices.Equal(sums[0], sums[1]) || !slices.Equal(columns[0], columns[1]) {
-				t.Errorf("%d reflectors, %d entries: kernels differ", k, size)
-			}
-		}
-	}
-}
 
 // schurResidual returns ‖A − Q T Qᵀ‖/‖A‖ and ‖Q Qᵀ − I‖, and reports a T that is
 // not in canonical form.

@@ -6,14 +6,16 @@ import "math"
 // does to every entry of the block. For a Balance an exchange counts with the
 // difference it acts on: a slow mode, nearly level over stores that exchange
 // much, is not blamed for the size of that exchange.
-func (s *system) sensitivity(p *part) [][]float64 {
+func (s *system) sensitivity(p *part, w *BlockWork) [][]float64 {
 	m := len(p.states)
-	out := make([][]float64, len(p.start)-1)
-	for a := range out {
-		w := p.start[a+1] - p.start[a]
-		out[a] = make([]float64, w*w)
+	out, room := w.data[:0], w.noise[:0]
+	for a := 0; a+1 < len(p.start); a++ {
+		size := (p.start[a+1] - p.start[a]) * (p.start[a+1] - p.start[a])
+		room = append(room, make([]float64, size)...)
+		out = append(out, room[len(room)-size:len(room):len(room)])
 	}
-	row := make([]float64, m) // flow into store i that rounding makes uncertain, per mode
+	w.data, w.noise = out, room
+	row := w.low[:m] // flow into store i that rounding makes uncertain, per mode
 	for i := range p.states {
 		clear(row)
 		if s.leak != nil {

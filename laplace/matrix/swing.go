@@ -10,6 +10,7 @@ import (
 //	s C_i x_i = Σ_j F_ij (x_j − x_i) − Leak_i x_i + f_i       of a Balance,
 //	s x_i = Σ_j a_ij x_j + f_i                                of a plain matrix,
 //
+// and those of Stores,
 // for any number of s, without poles and residues: far above the corners of a
 // transfer function those cancel to nothing, and these equations do not.
 //
@@ -18,7 +19,6 @@ type Swing struct {
 	n     int
 	solve swingSolver
 	x, y  []complex128
-	from  *system // nil: flows are taken as they are
 }
 
 // A swingSolver is one of the two ways to solve: starSwing, which never subtracts,
@@ -66,15 +66,14 @@ func PlainSwing(n int, a []float64) (*Swing, error) {
 	return w, nil
 }
 
-// StoresSwing prepares stores with couplings of their own, as NewSwing does where
-// something is negative.
+// StoresSwing prepares stores of every kind, levels and flows. It returns ErrShape or
+// ErrValue.
 func StoresSwing(s *Stores) (*Swing, error) {
-	sys, err := s.system()
-	if err != nil {
+	if err := s.check(); err != nil {
 		return nil, err
 	}
 	w := newSwing(s.N)
-	w.solve, w.from = refineStores(sys), sys
+	w.solve = refineStores(s)
 	return w, nil
 }
 
@@ -93,9 +92,6 @@ func newSwing(n int) *Swing {
 func (w *Swing) Transfer(s complex128, in, out []float64, direct float64) (h complex128, slack float64) {
 	if len(in) != w.n || len(out) != w.n {
 		panic("matrix: the weights are not as many as the stores")
-	}
-	if w.from != nil {
-		in = w.from.forces(in)
 	}
 	if !w.solve.factor(s) {
 		return cmplx.Inf(), math.Inf(1)

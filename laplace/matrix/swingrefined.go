@@ -6,19 +6,19 @@ import (
 	"slices"
 )
 
-// refinedSwing solves (diag(c) s − A) x = f by elimination with row exchanges and
-// corrects the result with residuals in twice the precision until it no longer
-// moves: every level then has its own relative accuracy, small ones too, as long as
-// the equations are not singular to working precision.
+// refinedSwing solves (M s − A) x = f by elimination with row exchanges and corrects
+// the result with residuals in twice the precision until it no longer moves: every
+// level then has its own relative accuracy, small ones too, as long as the equations
+// are not singular to working precision.
 //
 // Source: R. D. Skeel, Math. Comp. 35 (1980) 817-832; Higham, Accuracy and
 // Stability of Numerical Algorithms, 2nd ed., ch. 12.
 type refinedSwing struct {
 	n    int
 	c    []float64 // capacities; nil: 1
-	a    []float64 // A off the diagonal, N×N
-	diag []dd      // of A
-	size []float64 // sum of the sizes that went into diag
+	mass []float64 // M, N×N; nil: diag(c)
+	a    []dd      // A
+	size []float64 // sums of the sizes that went into A
 
 	s     complex128
 	lu    []complex128
@@ -27,28 +27,23 @@ type refinedSwing struct {
 	r     []complex128
 }
 
-func refineBalance(b *Balance) *refinedSwing {
-	sys := b.system()
-	w := &refinedSwing{n: b.N, c: b.C, a: b.F, diag: sys.diag, size: make([]float64, b.N)}
-	for i := range w.size {
-		w.size[i] = sys.uncertain(i, i)
-	}
-	return w.ready()
-}
+func refineBalance(b *Balance) *refinedSwing { return refineStores(&Stores{Balance: *b}) }
 
-func refineStores(sys *system) *refinedSwing {
-	w := &refinedSwing{n: sys.n, c: sys.c, a: sys.g, diag: sys.diag, size: make([]float64, sys.n)}
-	for i := range w.size {
-		w.size[i] = sys.uncertain(i, i)
+func refineStores(s *Stores) *refinedSwing {
+	n := s.N
+	w := &refinedSwing{n: n, c: s.C, mass: s.Mass, a: make([]dd, n*n), size: make([]float64, n*n)}
+	for i := range n {
+		for j := range n {
+			w.a[i*n+j], w.size[i*n+j] = s.entry(i, j)
+		}
 	}
 	return w.ready()
 }
 
 func refinePlain(n int, a []float64) *refinedSwing {
-	w := &refinedSwing{n: n, a: a, diag: make([]dd, n), size: make([]float64, n)}
-	for i := range n {
-		w.diag[i] = toDD(a[i*n+i])
-		w.size[i] = math.Abs(a[i*n+i])
+	w := &refinedSwing{n: n, a: make([]dd, n*n), size: make([]float64, n*n)}
+	for k, v := range a {
+		w.a[k], w.size[k] = toDD(v), math.Abs(v)
 	}
 	return w.ready()
 }
@@ -61,8 +56,14 @@ func (w *refinedSwing) ready() *refinedSwing {
 	return w
 }
 
-func (w *refinedSwing) capacity(i int) float64 {
-	if w.c == nil {
+// massOf returns M[i,j].
+func (w *refinedSwing) massOf(i, j int) float64 {
+	switch {
+	case w.mass != nil:
+		return w.mass[i*w.n+j]
+	case i != j:
+		return 0
+	case w.c == nil:
 		return 1
 	}
 	return w.c[i]
@@ -76,10 +77,7 @@ func (w *refinedSwing) factor(s complex128) bool {
 		line := w.lu[i*n : (i+1)*n]
 		most := 0.0
 		for j := range line {
-			line[j] = complex(-w.a[i*n+j], 0)
-			if i == j {
-				line[j] = realTimes(w.capacity(i), s) - complex(w.diag[i].float(), 0)
-			}
+			line[j] = realTimes(w.massOf(i, j), s) - complex(w.a[i*n+j].float(), 0)
 			most = max(most, magnitude(line[j]))
 		}
 		if most == 0 || math.IsInf(most, 0) {
@@ -199,23 +197,22 @@ func (w *refinedSwing) weights(c []float64, y []complex128) {
 	copy(y, w.r)
 }
 
-// residual sets w.r to f − (diag(c)s − A)x.
+// residual sets w.r to f − (M s − A)x.
 func (w *refinedSwing) residual(f []float64, x []complex128) {
 	n := w.n
 	for i := range n {
 		re, im := toDD(f[i]), dd{}
 		for j := range n {
-			if v := w.a[i*n+j]; v != 0 && j != i {
-				re = re.add(exactly(v, real(x[j])))
-				im = im.add(exactly(v, imag(x[j])))
+			a, m := w.a[i*n+j], w.massOf(i, j)
+			if a.zero() && m == 0 {
+				continue
 			}
+			a = a.sub(exactly(m, real(w.s))) // what x_j counts for: a − i·b
+			b := exactly(m, imag(w.s))
+			xr, xi := toDD(real(x[j])), toDD(imag(x[j]))
+			re = re.add(a.mul(xr)).add(b.mul(xi))
+			im = im.add(a.mul(xi)).sub(b.mul(xr))
 		}
-		c, d := w.capacity(i), w.diag[i]
-		a := d.sub(exactly(c, real(w.s))) // what x_i itself counts for: a − i·b
-		b := exactly(c, imag(w.s))
-		xr, xi := toDD(real(x[i])), toDD(imag(x[i]))
-		re = re.add(a.mul(xr)).add(b.mul(xi))
-		im = im.add(a.mul(xi)).sub(b.mul(xr))
 		w.r[i] = complex(re.float(), im.float())
 	}
 }
@@ -227,11 +224,9 @@ func exactly(a, b float64) dd {
 }
 
 func (w *refinedSwing) noise(s complex128, i int, x []complex128) float64 {
-	sum := (w.size[i] + w.capacity(i)*cmplx.Abs(s)) * cmplx.Abs(x[i])
-	for j, v := range w.a[i*w.n : (i+1)*w.n] {
-		if j != i {
-			sum += math.Abs(v) * cmplx.Abs(x[j])
-		}
+	var sum float64
+	for j, v := range w.size[i*w.n : (i+1)*w.n] {
+		sum += (v + math.Abs(w.massOf(i, j))*cmplx.Abs(s)) * cmplx.Abs(x[j])
 	}
 	return sum
 }

@@ -15,9 +15,10 @@ type system struct {
 	leak  []float64 // of a Balance; nil for a plain matrix
 	scale []int     // x[i]·2^scale[i] are comparable states
 
-	stores  *Stores   // what it was made from, where that has couplings of its own
-	heavy   []*heavy  // the groups tied by a mass matrix
-	exactly []residue // of submodular
+	rootsOnly bool      // no response is asked for, so that close poles may stay apart
+	stores    *Stores   // what it was made from, where that has couplings of its own
+	heavy     []*heavy  // the groups tied by a mass matrix
+	exactly   []residue // of submodular
 }
 
 func (b *Balance) system() *system {
@@ -75,7 +76,12 @@ func (s *system) entry(i, j int) dd {
 func (s *system) feels(i, j int) bool { return s.g[i*s.n+j] != 0 }
 
 // over returns a/c in doubled precision.
-func over(a dd, c float64) dd { return a.div(dd{hi: c}) }
+func over(a dd, c float64) dd {
+	if c == 1 {
+		return a
+	}
+	return a.div(dd{hi: c})
+}
 
 // rate is the pole of state i alone.
 func (s *system) rate(i int) float64 { return over(s.diag[i], s.c[i]).float() }
@@ -91,9 +97,14 @@ type scaledMatrix struct {
 	time   int
 }
 
-func (s *system) matrix(states []int) *scaledMatrix {
+// matrix fills a with the given states.
+func (s *system) matrix(states []int, a *scaledMatrix) {
 	m := len(states)
-	a := &scaledMatrix{m: m, hi: make([]float64, m*m), lo: make([]float64, m*m), noise: make([]float64, m*m), scale: make([]int, m)}
+	a.m, a.time, a.scale = m, 0, resizedInts(a.scale, m)
+	a.hi, a.lo, a.noise = resized(a.hi, m*m), resized(a.lo, m*m), resized(a.noise, m*m)
+	clear(a.hi)
+	clear(a.lo)
+	clear(a.noise)
 	for p, i := range states {
 		a.scale[p] = s.scale[i]
 		for q, j := range states {
@@ -105,14 +116,16 @@ func (s *system) matrix(states []int) *scaledMatrix {
 				continue
 			}
 			v = over(v, s.c[i])
-			k := math.Ldexp(1, s.scale[i]-s.scale[j])
+			k := 1.0
+			if d := s.scale[i] - s.scale[j]; d != 0 {
+				k = math.Ldexp(1, d)
+			}
 			a.hi[p*m+q], a.lo[p*m+q] = v.hi*k, v.lo*k
 			a.noise[p*m+q] = s.uncertain(i, j) / s.c[i] * k
 		}
 	}
 	a.balance()
 	a.normalise()
-	return a
 }
 
 // uncertain is the size of the numbers that entry i, j was made from.
@@ -138,7 +151,7 @@ func (s *system) uncertain(i, j int) float64 {
 func (a *scaledMatrix) normalise() {
 	var large float64
 	for _, v := range a.hi {
-		large = math.Max(large, math.Abs(v))
+		large = max(large, math.Abs(v))
 	}
 	if large == 0 {
 		return
@@ -163,8 +176,8 @@ func (a *scaledMatrix) balance() {
 		done := true
 		for i := 0; i < m; i++ {
 			r, c := a.offDiagonal(i)
-			if r == 0 || c == 0 {
-				continue
+			if r == 0 || c == 0 || r < 2*c && c < 2*r {
+				continue // k would be 0
 			}
 			k := int(math.Round(math.Log2(r/c) / 2))
 			f := math.Ldexp(1, k)

@@ -112,9 +112,10 @@ func (b *Balance) heldPoles(k int) ([]Root, error) {
 // poles lists the eigenvalues part by part.
 func (s *system) poles() ([]Root, error) {
 	var list []Root
-	var rc RCWork
+	var work BlockWork
+	s.rootsOnly = true
 	for _, states := range components(s.n, s.feels) {
-		p, err := s.analyse(states, &rc)
+		p, err := s.analyse(states, &work)
 		if err != nil {
 			return nil, err
 		}
@@ -147,10 +148,15 @@ func (s *system) zeros(b, c []float64, d float64, r int) ([]Root, error) {
 	if err != nil {
 		return nil, err
 	}
+	at0 := 0
+	if rest := null.withoutOrigin(origin); rest != nil {
+		null, at0 = rest, origin
+	}
 	roots, err := null.poles()
 	if err != nil {
 		return nil, err
 	}
+	roots = append(make([]Root, at0, at0+len(roots)), roots...)
 	for k := 0; k < origin && k < len(roots); k++ {
 		roots[k] = Root{}
 	}
@@ -252,6 +258,7 @@ func (z *nuller) step() bool {
 			if !drop.zero() && !m[k].zero() {
 				v = v.sub(drop.mul(m[k]))
 				e += (z.noise[i*n+j] + 2*math.Abs(drop.hi)) * math.Abs(m[k].hi)
+				v = v.orZero(e)
 			}
 			if i != j {
 				next.a = append(next.a, v)
@@ -265,7 +272,7 @@ func (z *nuller) step() bool {
 	}
 	for k, v := range row {
 		if k != j {
-			next.c = append(next.c, v)
+			next.c = append(next.c, v.orZero(rowNoise[k]))
 			next.cNoise = append(next.cNoise, rowNoise[k])
 		}
 	}
@@ -296,6 +303,7 @@ func (z *nuller) close() (*system, error) {
 				f := z.b[i].div(z.d)
 				v = v.sub(f.mul(z.c[j]))
 				s.noise[i*n+j] += math.Abs(f.hi) * (3*math.Abs(z.c[j].hi) + z.noiseOf(j))
+				v = v.orZero(s.noise[i*n+j])
 			}
 			s.g[i*n+j], s.low[i*n+j] = v.hi, v.lo
 			if i == j {

@@ -43,7 +43,13 @@
 //
 // # Not here
 //
-// Systems with delays or with coefficients that vary in time, and anything nonlinear.
+// Systems with delays, with coefficients that vary in time otherwise than in steps (a
+// Schedule has those that do), and anything nonlinear.
+//
+// A Cycle is the periodic steady state, from (1 − e^{pP})z = w for each mode, and for a
+// Schedule, whose systems take turns, from the map of the stores over a period. Steady
+// periodic answers of 30 digits (testdata/periodic.json, 106 of 43 systems): 1e-14 of the
+// largest value, 1.4e-13 where losses and feedback nearly cancel.
 //
 // # Where to start
 //

@@ -49,23 +49,25 @@ type FrequencyResponse struct {
 func (h *Transfer) Frequency() (*FrequencyResponse, error) {
 	r := &FrequencyResponse{h: h}
 	if h.system == nil {
+		r.lines.add(h.Zeros, +1)
 		return r, nil
 	}
-	p := &h.system.plant
 	var err error
-	switch {
-	case p.balance != nil:
-		r.swing, err = matrix.NewSwing(p.balance)
-	case p.stores != nil:
-		r.swing, err = matrix.StoresSwing(p.stores)
-	default:
-		r.swing, err = matrix.PlainSwing(p.n, p.dense)
-	}
-	if err != nil {
+	if r.swing, err = h.system.plant.swing(); err != nil {
 		return nil, err
 	}
 	r.lines = r.factors()
 	return r, nil
+}
+
+func (p *plant) swing() (*matrix.Swing, error) {
+	switch {
+	case p.balance != nil:
+		return matrix.NewSwing(p.balance)
+	case p.stores != nil:
+		return matrix.StoresSwing(p.stores)
+	}
+	return matrix.PlainSwing(p.n, p.dense)
 }
 
 // slackFactor is how many times the effect of one rounding a result may be off.

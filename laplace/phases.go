@@ -33,13 +33,21 @@ func (p *phases) kindAt(t float64) int {
 	return p.kind[max(sort.Search(len(p.at), func(i int) bool { return p.at[i] > t })-1, 0)]
 }
 
-// growth returns the fastest rate at which a mode of any system grows.
+// growth bounds the logarithm of what the modes grow by in the whole response.
 func (p *phases) growth(r *Response) float64 {
-	rate := 0.0
-	for _, k := range p.kinds {
-		rate = max(rate, k.System.growth(r))
+	rate := make([]float64, len(p.kinds))
+	for k := range p.kinds {
+		rate[k] = p.kinds[k].System.growth(r)
 	}
-	return rate
+	sum := 0.0
+	for k, at := range p.at {
+		end := r.until
+		if k+1 < len(p.at) {
+			end = min(end, p.at[k+1])
+		}
+		sum += rate[p.kind[k]] * max(end-at, 0)
+	}
+	return sum
 }
 
 // cross takes the state z of the system in force at t into the coordinates of the
@@ -50,6 +58,19 @@ func (p *phases) cross(t, next float64, z vector) vector {
 		return z
 	}
 	return p.kinds[b].System.hold(p.kinds[a].System.held(&z))
+}
+
+// Systems returns the systems that are in force one after the other, each once.
+func (r *Response) Systems() []*System {
+	var list []*System
+	seen := make([]bool, len(r.phases.kinds))
+	for _, k := range r.phases.kind {
+		if !seen[k] {
+			seen[k] = true
+			list = append(list, r.phases.kinds[k].System)
+		}
+	}
+	return list
 }
 
 // A carrier holds the maps between the stores and the modes of a system.

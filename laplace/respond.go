@@ -118,7 +118,7 @@ func respondIn(p phases, first *vector, u []Waveform, until float64) (*Response,
 // fits refuses a growth beyond what a number holds.
 func (r *Response) fits() error {
 	const most = 600 // exp(600) = 4e260: room for the weights
-	rate := r.phases.growth(r)
+	grown, rate := r.phases.growth(r), 0.0
 	for _, w := range r.wave {
 		for i := range w.Segments {
 			for _, e := range w.Segments[i].Exp {
@@ -126,8 +126,8 @@ func (r *Response) fits() error {
 			}
 		}
 	}
-	if rate*r.until > most {
-		return &Overflow{At: most / rate}
+	if grown = max(grown, rate*r.until); grown > most {
+		return &Overflow{At: most / grown * r.until}
 	}
 	return nil
 }
@@ -140,7 +140,8 @@ func (s *System) growth(r *Response) float64 {
 			continue
 		}
 		for _, at := range s.seats[i] {
-			if s.driven(r, at) || r.first != nil && r.first.holds(s.modal, at) {
+			// over a switch anything may be handed to any mode
+			if len(r.phases.kinds) > 1 || s.driven(r, at) || r.first != nil && r.first.holds(s.modal, at) {
 				rate = max(rate, real(p.P))
 			}
 		}

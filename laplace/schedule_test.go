@@ -80,7 +80,7 @@ func anyTurning(t *rapid.T) *turning {
 	oneWay := rapid.Bool().Draw(t, "one way")
 	for i := range n {
 		w.C = append(w.C, rapid.Float64Range(0.5, 5).Draw(t, "C"))
-		w.b = append(w.b, rapid.Float64Range(0, 1).Draw(t, "b"))
+		w.b = append(w.b, rapid.Float64Range(0.05, 1).Draw(t, "b")) // levels of one size: rounding is that of the largest
 		w.leak[rapid.IntRange(0, 1).Draw(t, "which")][i] = rapid.Float64Range(0.1, 2).Draw(t, "leak")
 		for j := range i {
 			f := rapid.Float64Range(0.1, 2).Draw(t, "F")
@@ -92,6 +92,10 @@ func anyTurning(t *rapid.T) *turning {
 		}
 	}
 	w.leak[0][0] += 0.1
+	if n > 1 && rapid.Bool().Draw(t, "swings") { // a pair of poles while the scale is not 0
+		w.F[1][1], w.F[1][n] = w.F[1][1]+3, w.F[1][n]-3
+		w.leak[1][1] += 6
+	}
 	return w
 }
 
@@ -182,8 +186,8 @@ func TestScheduleCycle(t *testing.T) {
 				continue
 			}
 			excess := func(cycle float64) (worst float64) {
-				for k := range 240 {
-					at := 0.025 * float64(k)
+				for k := range 1200 {
+					at := 0.005 * float64(k)
 					worst = max(worst, math.Abs(r.At(i, cycle*6+at)-c.At(i, at)))
 				}
 				return worst
@@ -192,8 +196,9 @@ func TestScheduleCycle(t *testing.T) {
 			if worst := excess(n); worst > band*(1+1e-9) {
 				t.Errorf("after %v cycles %v off, band %v", n, worst, band)
 			}
-			if n > 0 && excess(n-1) < band*0.97 {
-				t.Errorf("%v cycles, but within the band a cycle earlier", n)
+			// samples are 0.15 of the fastest time constant apart and may miss the last excess
+			if n > 0 && excess(n-1) < band*0.8 {
+				t.Errorf("%v cycles, but %v off a cycle earlier already, band %v", n, excess(n-1), band)
 			}
 		}
 	})
@@ -279,6 +284,14 @@ func TestScheduleEdges(t *testing.T) {
 	var at *SwitchError
 	if _, err := bad.Respond(u, 10); !errors.As(err, &at) || at.At != 4 || !errors.Is(err, lost) {
 		t.Error(err)
+	}
+	// a gain for a short while in a long run is no overflow
+	short := &turning{n: 1, C: []float64{1}, b: []float64{1}, F: [2][]float64{{0}, {0}}, leak: [2][]float64{{0.01}, {-1}}}
+	burst := wave(t)(Pulse(PulseTrain{High: 1, Width: 5, At: 10, Count: 1}))
+	if r, err := short.schedule(burst).Respond([]Waveform{Step(0, 1, 0)}, 1e6); err != nil {
+		t.Error(err)
+	} else {
+		nearly(t, "in the end", r.At(0, 1e6), 100, 1e-13)
 	}
 	// a gain that outweighs the loss on the mean
 	grow := &turning{n: 1, C: []float64{1}, b: []float64{1}, F: [2][]float64{{0}, {0}}, leak: [2][]float64{{-0.5}, {0.9}}}

@@ -26,6 +26,10 @@ type Realisation struct {
 	Output  [][]float64 // outputs × N
 	D       [][]float64 // outputs × inputs; nil where nothing passes at once
 	Rate    [][]float64 // outputs × inputs; nil where no output is improper
+
+	// Rounded says that B, Output and D are rounded where they may have to cancel
+	// exactly: error bounds then decide what does, not the numbers as they stand.
+	Rounded bool
 }
 
 // A System is a linear system with several inputs and outputs, taken apart into
@@ -36,10 +40,12 @@ type System struct {
 	b, c  [][]float64 // inputs × order, outputs × order
 	d     [][]float64 // outputs × inputs, never nil
 	rate  [][]float64 // outputs × inputs; nil where no output is improper
-	modal *modal
-	poles []Pole
-	seats [][]seat // of each pole, where its modes are
-	carry *carrier // nil unless from NewCarrying
+
+	rounded bool // as in Realisation
+	modal   *modal
+	poles   []Pole
+	seats   [][]seat // of each pole, where its modes are
+	carry   *carrier // nil unless from NewCarrying
 
 	once  sync.Once
 	solve func(b []float64) []float64 // of atRest
@@ -59,8 +65,11 @@ func New(r Realisation) (*System, error) {
 		p = plant{n: p.n, stores: &matrix.Stores{Balance: r.Balance, K: r.K, Mass: r.Mass}}
 	}
 	s, err := newSystem(p, r.B, r.Output, r.D)
-	if err != nil || r.Rate == nil {
-		return s, err
+	if err != nil {
+		return nil, err
+	}
+	if s.rounded = r.Rounded; r.Rate == nil {
+		return s, nil
 	}
 	if err := checkPorts(p.n, r.B, r.Output, r.Rate); err != nil {
 		return nil, err

@@ -80,6 +80,7 @@ func (s *System) Transfer(in, out int) (*Transfer, error) {
 	h.RelativeDegree = sub.plant.n - len(found)
 	h.form()
 	zeros, _ := gather(found)
+	sub.settleOrigin(zeros)
 	f := sub.facts(found)
 	c := cancel(sub.poles, zeros, f)
 	h.Poles, h.Zeros, h.Cancelled = c.poles, c.zeros, c.gone
@@ -156,13 +157,13 @@ func (s *System) between(keep []int, in, out int) (*System, error) {
 		p, b, c := s.along(keep, in, out)
 		sub, err := newSystem(p, [][]float64{b}, [][]float64{c}, d)
 		if err == nil {
-			sub.rate = rate
+			sub.rate, sub.rounded = rate, s.rounded
 		}
 		return sub, err
 	}
 	m := *s.modal
 	m.in, m.out = s.modal.in[in:in+1], s.modal.out[out:out+1]
-	return &System{plant: s.plant, b: s.b[in : in+1], c: s.c[out : out+1], d: d, rate: rate,
+	return &System{plant: s.plant, b: s.b[in : in+1], c: s.c[out : out+1], d: d, rate: rate, rounded: s.rounded,
 		modal: &m, poles: s.poles, seats: s.seats}, nil
 }
 

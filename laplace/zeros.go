@@ -2,6 +2,8 @@ package laplace
 
 import (
 	"errors"
+	"math"
+	"math/cmplx"
 
 	"lagbook/laplace/matrix"
 )
@@ -23,12 +25,12 @@ type facts struct {
 // zero or a pole at 0 is exactly 0 in what package matrix returns.
 func (s *System) facts(zeros []seated) facts {
 	var f facts
-	if w := s.withCouplings(); w != nil && s.plant.n <= MaxExactOrder {
+	if w := s.withCouplings(); w != nil && s.plant.n <= MaxExactOrder && !s.rounded {
 		if e, err := w.Exact(s.b[0], s.c[0], s.d[0][0], s.rateOf(0, 0)); err == nil {
 			return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
 		}
 	}
-	if b := s.plant.balance; b != nil && s.plant.n <= MaxExactOrder {
+	if b := s.plant.balance; b != nil && s.plant.n <= MaxExactOrder && !s.rounded {
 		e := b.Exact(s.b[0], s.c[0], s.d[0][0])
 		return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
 	}
@@ -61,6 +63,9 @@ func (s *System) zeros() (list []seated, vanishes bool, err error) {
 		return nil, true, nil
 	}
 	for _, z := range found {
+		if s.rounded && s.beyond(&z) {
+			continue
+		}
 		list = append(list, seated{p: complex(z.Re, z.Im), radius: z.Radius})
 	}
 	return list, false, err
@@ -76,4 +81,31 @@ func (s *System) withCouplings() *matrix.Stores {
 		return &matrix.Stores{Balance: *s.plant.balance}
 	}
 	return nil
+}
+
+// beyondAll is how many times the fastest pole a zero lies that rounding of a leading
+// coefficient has brought in from infinity.
+const beyondAll = 1e12
+
+// beyond reports a zero that rounded numbers have brought in from infinity.
+func (s *System) beyond(z *matrix.Root) bool {
+	size := math.Hypot(z.Re, z.Im)
+	fastest := s.fastest()
+	return fastest > 0 && size > beyondAll*fastest
+}
+
+func (s *System) fastest() (most float64) {
+	for _, p := range s.poles {
+		most = max(most, cmplx.Abs(p.P))
+	}
+	return most
+}
+
+// settleOrigin makes zeros of rounded numbers that cannot be told from 0 exactly 0.
+func (s *System) settleOrigin(zeros []Pole) {
+	for i, z := range zeros {
+		if m := cmplx.Abs(z.P); s.rounded && m <= z.Radius && m <= s.fastest()/beyondAll {
+			zeros[i].P = 0
+		}
+	}
 }

@@ -15,6 +15,7 @@ const maxRows = 100_000
 var transferFields = []Field{
 	{Name: "from", Type: Name, Required: true},
 	{Name: "to", Type: Name, Required: true},
+	{Name: "about", Type: loose},
 }
 
 var tableFields = []Field{
@@ -72,7 +73,7 @@ func (r *reader) each(k *key, read func(o owner, n *node)) {
 
 // transfer reads one [[transfer]].
 func (r *reader) transfer(o owner, n *node) {
-	f := fielder{r: r, o: o, v: &Vocabulary{NotBuilt: []string{"transfer.about"}}, word: "transfer", header: n.span}
+	f := fielder{r: r, o: o, word: "transfer", header: n.span}
 	list, _, ok := f.fields(n, transferFields, nil)
 	ask := AskTransfer{Ref: r.c.ref(n.span, o)}
 	for i := range list {
@@ -87,6 +88,13 @@ func (r *reader) transfer(o owner, n *node) {
 			continue
 		}
 		var good bool
+		if x.name == "about" {
+			if x.n.text != "start" {
+				ask.About, good = r.number(o, x.n, &Field{Name: "about", Dim: dimTime, HasMin: true})
+				ask.HasAbout, ok = good, ok && good
+			}
+			continue
+		}
 		ask.To, good = r.shown(o, x.n)
 		ok = ok && good
 	}

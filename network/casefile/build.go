@@ -237,7 +237,7 @@ func (c *Case) Explain(err error) []Diagnostic {
 		}
 	case errors.As(err, &cycle):
 		d := c.fault(network.Fault{Refs: cycle.Refs, Text: "there is no steady cycle: " + cycle.Text})
-		d.Code = "no-cycle"
+		d.Code, d.Hint = "no-cycle", ""
 		list = append(list, d)
 	default:
 		return []Diagnostic{{File: c.File, Code: "not-computed", Text: err.Error()}}

@@ -98,7 +98,7 @@ func (d Diagnostic) String() string {
 
 // shownFix puts a replacement in quotes unless it brings its own.
 func shownFix(fix string) string {
-	if strings.IndexByte("\"'[{", fix[0]) >= 0 || isInteger(fix) || isFloat(fix) {
+	if strings.IndexByte("\"'[{", fix[0]) >= 0 || isNumber(fix) {
 		return fix
 	}
 	return `"` + fix + `"`
@@ -145,7 +145,7 @@ type span struct{ at, end int32 }
 type source struct {
 	file  string
 	text  string
-	keys  int     // how many the scan found
+	keys  int     // how many there are
 	lines []int32 // byte offset at which each line begins; made when first needed
 }
 

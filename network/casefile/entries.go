@@ -53,7 +53,7 @@ func (r *reader) withSource(o owner, n *node) (value *node, source string) {
 				ok = false
 			}
 			source = k.value.text
-		case "points":
+		case "points", "level":
 			r.notBuilt(o, k, k.name)
 			ok = false
 		default:
@@ -77,7 +77,7 @@ func (f fielder) count(n *node, field *Field) (Slot, bool) {
 		f.r.wrongType(f.o, n, field, "a whole number")
 		return noSlot, false
 	}
-	x := slot{si: n.number(), field: field, n: n, owner: f.o}
+	x := slot{si: n.num, field: field, n: n, owner: f.o}
 	if d := f.r.c.inRange(&x, x.si); d != nil {
 		f.r.report(*d)
 		return noSlot, false

@@ -60,7 +60,7 @@ func (r *reader) quantity(o owner, n *node, f *Field) (*quantity.Expr, quantity.
 	}
 	switch n.kind {
 	case kindInteger, kindFloat:
-		x := n.number()
+		x := n.num
 		if math.IsNaN(x) || math.IsInf(x, 0) {
 			r.at(n.span, Diagnostic{Code: "not-finite", Thing: o.thing(), Text: label(f) + n.text + " is not a number a case can use"})
 			return nil, none, false
@@ -76,7 +76,7 @@ func (r *reader) quantity(o owner, n *node, f *Field) (*quantity.Expr, quantity.
 		if strings.HasPrefix(strings.TrimLeft(n.text, " \t"), "=") {
 			return r.expression(o, n, f)
 		}
-		v, err := quantity.Parse(n.text)
+		v, err := r.parse(n.text)
 		if err != nil {
 			r.syntax(o, n, f, err)
 			return nil, none, false
@@ -85,6 +85,18 @@ func (r *reader) quantity(o owner, n *node, f *Field) (*quantity.Expr, quantity.
 	}
 	r.wrongType(o, n, f, wanted(f))
 	return nil, none, false
+}
+
+// parse reads a quantity. Many in a case are written alike: each text is read once.
+func (r *reader) parse(text string) (quantity.Value, error) {
+	if v, ok := r.parsed[text]; ok {
+		return v, nil
+	}
+	v, err := quantity.Parse(text)
+	if err == nil {
+		r.parsed[text] = v
+	}
+	return v, err
 }
 
 // expression compiles "= a + b".

@@ -109,7 +109,10 @@ func (r *reader) ambiguous(o owner, n *node, name string, list []*Element) {
 	}
 	d := Diagnostic{Code: "ambiguous", Thing: o.thing(), Found: name,
 		Text: fmt.Sprintf("%s is a name in %s and in %s", quoted(name), list[0].domain, list[1].domain), Hint: "write " + strings.Join(words, " or ")}
-	at := n.part(strings.LastIndex(n.text, name), len(name))
+	at := n.span
+	if name != n.text {
+		at = n.part(strings.LastIndex(n.text, name), len(name))
+	}
 	r.at(at, d)
 }
 

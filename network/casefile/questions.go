@@ -47,9 +47,11 @@ type Shown struct {
 
 // AskTransfer names an input and an output.
 type AskTransfer struct {
-	From string
-	To   Shown
-	Ref  network.Ref
+	From     string
+	To       Shown
+	About    Slot // s, where HasAbout; else the network just before t = 0
+	HasAbout bool
+	Ref      network.Ref
 }
 
 // AskTable is one [[table]]. Either Times is given or Every, with From and To,

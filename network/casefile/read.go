@@ -3,7 +3,7 @@ package casefile
 import (
 	"fmt"
 	"os"
-	"sort"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -21,7 +21,8 @@ type reader struct {
 	diags      []Diagnostic
 	silent     bool // errors beyond maxDiagnostics are not listed
 	givenIndex map[string]int
-	known      []quantity.Value // of the given, as written
+	known      []quantity.Value          // of the given, as written
+	parsed     map[string]quantity.Value // by text
 	forms      map[*Field]*waveFields
 	blamed     map[string]bool // names that a faulty part may have meant: faults that follow are not reported
 	second     map[string]bool // table.name of elements whose name is taken
@@ -52,11 +53,12 @@ func Read(name string, src []byte, fsys *os.Root, voc ...Vocabulary) (*Case, []D
 		r.src.text = string(src)
 	}
 	r.c = &Case{File: name, src: r.src, voc: voc, nodes: map[string]network.NodeID{}}
-	root, faults, whole := scan(r.src)
+	root, faults := r.src.load()
 	r.diags = faults
-	if whole {
+	if faults == nil {
 		keys := r.src.keys
-		r.c.slots, r.c.refs, r.c.byName = make([]slot, 0, keys/2), make([]place, 0, keys/4), make(map[elementName]*Element, keys/4)
+		r.c.slots, r.c.refs, r.c.byName = make([]slot, 0, keys/4), make([]place, 0, keys/4), make(map[elementName]*Element, keys/4)
+		r.parsed = make(map[string]quantity.Value, keys/8)
 		r.read(root)
 	}
 	inFileOrder(r.diags)
@@ -92,7 +94,7 @@ func (r *reader) read(root *node) {
 			r.unknownTop(k)
 		}
 	}
-	sort.SliceStable(r.c.Elements, func(i, j int) bool { return r.c.Elements[i].header.at < r.c.Elements[j].header.at })
+	slices.SortStableFunc(r.c.Elements, func(a, b *Element) int { return int(a.header.at) - int(b.header.at) })
 	r.references()
 	r.build()
 	r.questions(asked)
@@ -229,7 +231,10 @@ func (r *reader) topWords() []string {
 
 // missing reports whether a name that is not found may stand in something that
 // could not be read: then its absence is not a fault of its own.
-func (r *reader) missing(name string) bool { return r.later || r.lost[name] }
+func (r *reader) missing(name string) bool {
+	_, bare := r.c.domainOf(name)
+	return r.later || r.lost[bare]
+}
 
 // lose notes the names of the parts in a table that cannot be read.
 func (r *reader) lose(n *node) {

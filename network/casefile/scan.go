@@ -3,39 +3,51 @@ package casefile
 import (
 	"fmt"
 	"strings"
-	"unicode/utf8"
 )
 
-// What a case may hold at most. All is checked before memory is taken for it.
+// What a case may hold at most. All is checked before the TOML library sees it,
+// which takes minutes, gigabytes or the whole stack for texts made to that end.
 const (
-	maxBytes  = 1 << 20 // of the file
-	maxDepth  = 32      // of nested lists and tables
-	maxParts  = 16      // of a dotted key
-	maxKeys   = 50_000
-	maxValues = 300_000
-	maxFaults = 20 // of syntax, after which scanning ends
+	maxBytes  = 1 << 20  // of the file
+	maxDepth  = 32       // of nested lists and tables
+	maxParts  = 16       // of a dotted key
+	maxKeys   = 50_000   // parts of keys and headers
+	maxValues = 300_000  // of all kinds
+	maxSpelt  = 1000     // keys with escapes, each decoded by itself
+	maxPaths  = 16 << 20 // bytes of all full names: the library spells out each
+	maxFaults = 20       // of syntax, after which reading ends
 )
 
-// A scanner reads TOML into a tree in which every key and value knows its
-// place. It goes through the text once, looks ahead no further than the end of
-// a line, and takes time and memory in proportion to the text.
+// A scanner goes through the text once and notes where every key and value
+// stands: a tree without values, which the TOML library fills (decode.go). It
+// knows as much of TOML as it takes to skip over strings, comments and brackets;
+// what it skips it does not judge. It holds the bounds above, and takes time and
+// memory in proportion to the text.
 //
-// It reads TOML 1.0 with line breaks and a last comma allowed inside { }, as the
-// TOML library does, with which the tests compare it. The library itself gives no
-// place for a value, takes about as long as all of Read does here, and can be made
-// to take minutes or to overflow the stack.
+// Where the text is no TOML the scanner sticks. What it was reading then is in
+// stage, stmt, val and opens, from which syntax.go tells what was meant.
 type scanner struct {
-	src    *source
-	text   string
-	pos    int
-	depth  int
+	src   *source
+	text  string // up to where to scan
+	pos   int
+	bound *Diagnostic // a bound that is broken
+	root  *node
+	cur   *members // the table that the last header opened
+	twice []twice
+
+	stage stage
+	stmt  int             // where the statement begins
+	val   int             // where the last value begins
+	done  int             // where the last value that is complete ends
+	quote int             // where the string begins that is not closed, or -1
+	opens [maxDepth]int32 // where the brackets begin that are not closed
+	depth int             // how many they are
+
 	keys   int
+	spelt  int // keys with escapes
 	values int
-	root   *node
-	cur    *members // the table that the last header opened
-	faults []Diagnostic
-	braces bool // the value being read stands in { }, not in a list
-	broken bool // a fault of syntax: the tree is not whole
+	paths  int
+	path   int // bytes of the full name of the table being read
 	slab   []node
 	list   []*node // the items of the arrays being read
 	items  []*node // slabs, like slab, of what is kept
@@ -44,94 +56,97 @@ type scanner struct {
 	parts  []key // the parts of the key being read
 }
 
-// scan reads src. The tree is nil where the text breaks the bounds; whole is
-// false where something in it could not be read.
-func scan(src *source) (root *node, faults []Diagnostic, whole bool) {
-	s := &scanner{src: src, text: src.text}
-	if d, ok := src.bounded(); !ok {
-		return nil, []Diagnostic{d}, false
-	}
-	if strings.HasPrefix(s.text, bom) {
-		s.pos = len(bom)
-	}
-	s.root = s.newNode(kindTable, 0)
+// stage is what a scanner is reading.
+type stage uint8
+
+const (
+	inNothing stage = iota
+	inHeader
+	inKey
+	inValue
+	afterHeader
+	afterValue
+)
+
+// A twice is a name stated again: where, and where it was first.
+type twice struct {
+	name    string
+	at      span
+	first   span
+	through bool // a table is meant where the first is none
+}
+
+func newScanner(src *source, from, to int) *scanner {
+	s := &scanner{src: src, text: src.text[:to], pos: from, stmt: from, quote: -1}
+	s.root = s.newNode(kindTable, from)
 	s.root.table = &members{made: byHeader}
 	s.cur = s.root.table
-	for s.pos < len(s.text) && len(s.faults) < maxFaults {
-		from := s.pos
+	return s
+}
+
+// run scans to the end; false where the scanner sticks or breaks a bound.
+func (s *scanner) run() bool {
+	for s.pos < len(s.text) {
 		if !s.statement() {
-			s.recover(from)
+			return false
 		}
 	}
-	s.broken = s.broken || s.pos < len(s.text) // too many faults to read on
-	src.keys = s.keys
-	return s.root, s.faults, !s.broken
+	return true
 }
 
-// bounded checks what must hold before anything is read.
-func (s *source) bounded() (Diagnostic, bool) {
-	if len(s.text) > maxBytes {
-		d := Diagnostic{File: s.file, Code: "too-large",
-			Text: fmt.Sprintf("the file has %d bytes, more than the %d a case may have", len(s.text), maxBytes)}
-		return d, false
+// statement reads one header, one key with its value, or an empty line.
+func (s *scanner) statement() bool {
+	s.stage = inNothing
+	s.blanks()
+	if s.pos == len(s.text) {
+		return true
 	}
-	if strings.HasPrefix(s.text, "\xff\xfe") || strings.HasPrefix(s.text, "\xfe\xff") {
-		d := Diagnostic{Code: "not-utf8", Text: "the file is UTF-16", Hint: "save it as UTF-8"}
-		return s.place(d, span{0, 1}), false
-	}
-	if utf8.ValidString(s.text) {
-		return Diagnostic{}, true
-	}
-	at := 0
-	for at < len(s.text) {
-		r, n := utf8.DecodeRuneInString(s.text[at:])
-		if r == utf8.RuneError && n == 1 {
-			break
+	s.stmt = s.pos
+	switch s.text[s.pos] {
+	case '#', '\n', '\r':
+		return s.lineEnd()
+	case '[':
+		s.stage = inHeader
+		if !s.header() {
+			return false
 		}
-		at += n
+		s.stage = afterHeader
+		return s.lineEnd()
 	}
-	d := Diagnostic{Code: "not-utf8", Text: fmt.Sprintf("byte 0x%02x is not UTF-8", s.text[at]), Hint: "save the file as UTF-8"}
-	return s.place(d, span{int32(at), int32(at + 1)}), false
+	if !s.pair(s.cur, s.path) {
+		return false
+	}
+	s.stage = afterValue
+	return s.lineEnd()
 }
 
-// fault notes a fault of syntax and returns false.
-func (s *scanner) fault(d Diagnostic, from, to int) bool {
-	s.broken = true
-	s.note(d, span{int32(from), int32(to)})
+// blanks skips spaces and tabs.
+func (s *scanner) blanks() {
+	for s.pos < len(s.text) && (s.text[s.pos] == ' ' || s.text[s.pos] == '\t') {
+		s.pos++
+	}
+}
+
+// lineEnd skips what may stand before the end of a line: a comment.
+func (s *scanner) lineEnd() bool {
+	s.blanks()
+	if s.pos == len(s.text) {
+		return true
+	}
+	switch s.text[s.pos] {
+	case '#':
+		s.skipLine()
+		return true
+	case '\n':
+		s.pos++
+		return true
+	case '\r':
+		if strings.HasPrefix(s.text[s.pos:], "\r\n") {
+			s.pos += 2
+			return true
+		}
+	}
 	return false
-}
-
-// note adds a diagnostic that leaves the tree whole.
-func (s *scanner) note(d Diagnostic, at span) {
-	if d.Code == "" {
-		d.Code = "syntax"
-	}
-	s.faults = append(s.faults, s.src.place(d, at))
-}
-
-// recover goes to the next line that may begin a statement: the line in which
-// the fault was found, where the statement began before it, or the one after.
-func (s *scanner) recover(from int) {
-	at := min(s.pos, len(s.text))
-	s.depth, s.braces = 0, false
-	if k := strings.LastIndexByte(s.text[:at], '\n') + 1; k > from {
-		s.pos = k
-	} else {
-		s.pos = at
-		s.skipLine()
-		return
-	}
-	for s.pos < len(s.text) { // inside a list, a line need not begin anything
-		line := s.pos
-		s.blanks()
-		rest := s.text[s.pos:min(len(s.text), s.pos+200)]
-		rest, _, _ = strings.Cut(rest, "\n")
-		if s.begins() && (rest[0] == '[' || strings.Contains(rest, "=")) {
-			s.pos = line
-			return
-		}
-		s.skipLine()
-	}
 }
 
 // skipLine goes behind the next line end.
@@ -143,87 +158,19 @@ func (s *scanner) skipLine() {
 	}
 }
 
-// statement reads one header, one key with its value, or an empty line. On a
-// fault s.pos is where it was found.
-func (s *scanner) statement() bool {
-	s.blanks()
-	if s.pos == len(s.text) {
-		return true
-	}
-	switch s.text[s.pos] {
-	case '#', '\n', '\r':
-		return s.lineEnd("")
-	case '[':
-		return s.header() && s.lineEnd("after the header")
-	}
-	return s.pair(s.cur) && s.lineEnd("after the value")
+// tooMany notes a bound that is broken and ends the scan.
+func (s *scanner) tooMany(code, text string, at, end int) bool {
+	d := s.src.place(Diagnostic{Code: code, Text: text}, span{int32(at), int32(end)})
+	s.bound = &d
+	return false
 }
 
-// blanks skips spaces and tabs.
-func (s *scanner) blanks() {
-	for s.pos < len(s.text) && (s.text[s.pos] == ' ' || s.text[s.pos] == '\t') {
-		s.pos++
-	}
-}
-
-// lineEnd reads what may stand before the end of a line: a comment.
-func (s *scanner) lineEnd(where string) bool {
-	s.blanks()
-	if s.pos == len(s.text) {
-		return true
-	}
-	switch s.text[s.pos] {
-	case '#':
-		return s.comment()
-	case '\n':
-		s.pos++
-		return true
-	case '\r':
-		if strings.HasPrefix(s.text[s.pos:], "\r\n") {
-			s.pos += 2
-			return true
-		}
-		return s.fault(Diagnostic{Text: "a carriage return that ends no line"}, s.pos, s.pos+1)
-	}
-	end := s.restOfLine(s.pos)
-	return s.fault(Diagnostic{Text: "unexpected " + quoted(s.text[s.pos:end]) + " " + where}, s.pos, end)
-}
-
-// restOfLine returns where the line ends, without a comment and spaces before it.
-func (s *scanner) restOfLine(from int) int {
-	line := s.text[from:]
-	if k := strings.IndexAny(line, "#\n"); k >= 0 {
-		line = line[:k]
-	}
-	return from + len(strings.TrimRight(line, " \t\r"))
-}
-
-// comment reads a comment with its line end.
-func (s *scanner) comment() bool {
-	from := s.pos
-	s.skipLine()
-	for i := from; i < s.pos; i++ {
-		if c := s.text[i]; control(c) && !(c == '\n' || c == '\r' && i+1 < s.pos && s.text[i+1] == '\n') {
-			s.pos = i
-			return s.fault(controlFault(c), i, i+1)
-		}
+// weigh adds up what the library spells out in full for a key of some parts.
+func (s *scanner) weigh(path, parts int) bool {
+	if s.paths += path * parts; s.paths > maxPaths {
+		return s.tooMany("too-many", fmt.Sprintf("the full names of all keys have more than %d bytes together", maxPaths), s.stmt, s.stmt+1)
 	}
 	return true
-}
-
-// control reports a character that TOML allows nowhere; line ends are looked at
-// by whoever reads lines.
-func control(c byte) bool { return c < ' ' && c != '\t' || c == 0x7f }
-
-func controlFault(c byte) Diagnostic {
-	return Diagnostic{Text: fmt.Sprintf("a control character, 0x%02x", c), Hint: "delete it"}
-}
-
-// tooMany ends the scan.
-func (s *scanner) tooMany(what string, most, at int) bool {
-	s.fault(Diagnostic{Code: "too-many", Text: fmt.Sprintf("more than %d %s", most, what)}, at, at+1)
-	s.pos = len(s.text)
-	return false
 }
 
 // newMembers makes a table with room for the keys most have.

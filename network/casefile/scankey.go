@@ -3,7 +3,6 @@ package casefile
 import (
 	"fmt"
 	"strings"
-	"unicode/utf8"
 )
 
 // header reads [a.b] or [[a]] and opens that table.
@@ -11,53 +10,31 @@ func (s *scanner) header() bool {
 	from := s.pos
 	s.pos++
 	double := s.pos < len(s.text) && s.text[s.pos] == '['
-	if double {
-		s.pos++
-	}
-	if !s.dotted("a table") {
-		return s.nowhere()
-	}
 	closing := "]"
 	if double {
+		s.pos++
 		closing = "]]"
 	}
-	if !strings.HasPrefix(s.text[s.pos:], closing) {
-		end := s.restOfLine(s.pos)
-		d := Diagnostic{Text: `expected "` + closing + `" at the end of the table's name`}
-		at := s.pos
-		switch {
-		case s.bareWords(s.pos, end):
-			d.Hint = "a name with a space is written in quotes"
-		case end <= s.pos || s.text[s.pos:end] == "]":
-			at, d.Fix = from, strings.TrimRight(s.text[from:s.pos], " \t")+closing
-		}
-		s.fault(d, at, max(end, s.pos+1))
-		return s.nowhere()
+	if !s.dotted(0) || !strings.HasPrefix(s.text[s.pos:], closing) {
+		return false
 	}
 	s.pos += len(closing)
+	s.path = pathOf(s.parts)
 	s.open(double, span{int32(from), int32(s.pos)})
 	return true
 }
 
-// nowhere lets the keys after a header at fault go to a table nobody reads.
-func (s *scanner) nowhere() bool {
-	s.cur = &members{made: byBraces}
-	return false
-}
-
-// bareWords reports whether the text between holds characters of a name.
-func (s *scanner) bareWords(from, to int) bool { return from < to && bare(s.text[from]) }
-
-// dotted reads the parts of a key into s.parts, up to what stands after it.
-func (s *scanner) dotted(what string) bool {
+// dotted reads the parts of a key into s.parts, up to what stands after it; path
+// is the length of the name of the table it stands in.
+func (s *scanner) dotted(path int) bool {
 	s.parts = s.parts[:0]
 	from := s.pos
 	for {
 		s.blanks()
 		if len(s.parts) == maxParts {
-			return s.fault(Diagnostic{Code: "too-many-parts", Text: fmt.Sprintf("a key of more than %d parts", maxParts)}, from, s.pos)
+			return s.tooMany("too-many-parts", fmt.Sprintf("a key of more than %d parts", maxParts), from, s.pos)
 		}
-		if !s.part(what) {
+		if !s.part() {
 			return false
 		}
 		s.blanks()
@@ -67,43 +44,49 @@ func (s *scanner) dotted(what string) bool {
 		s.pos++
 	}
 	if s.keys += len(s.parts); s.keys > maxKeys {
-		return s.tooMany("keys", maxKeys, from)
+		return s.tooMany("too-many", fmt.Sprintf("more than %d keys", maxKeys), from, from+1)
 	}
-	return true
+	return s.weigh(path+pathOf(s.parts), len(s.parts))
+}
+
+// pathOf is what the parts of a key add to the length of a full name.
+func pathOf(parts []key) int {
+	const each = 8 // what a part costs however short it is
+	n := 0
+	for i := range parts {
+		n += each + len(parts[i].name)
+	}
+	return n
 }
 
 // part reads one part of a key.
-func (s *scanner) part(what string) bool {
+func (s *scanner) part() bool {
 	from := s.pos
 	if from == len(s.text) {
-		return s.fault(Diagnostic{Text: "the file ends where the name of " + what + " is expected"}, max(0, from-1), from)
+		return false
 	}
-	switch c := s.text[from]; {
-	case c == '"' || c == '\'':
-		if strings.HasPrefix(s.text[from:], `"""`) || strings.HasPrefix(s.text[from:], "'''") {
-			return s.fault(Diagnostic{Text: "a name in triple quotes"}, from, from+3)
-		}
-		n := s.quotedString(c)
-		if n == nil {
+	if c := s.text[from]; c == '"' || c == '\'' {
+		if !s.quoted(c) {
 			return false
 		}
-		s.parts = append(s.parts, key{span: n.span, name: n.text})
-		return true
-	case bare(c):
-		for s.pos < len(s.text) && bare(s.text[s.pos]) {
-			s.pos++
+		escapes := c == '"' && strings.IndexByte(s.text[from:s.pos], '\\') >= 0
+		if escapes {
+			s.spelt++
 		}
-		s.parts = append(s.parts, key{span: span{int32(from), int32(s.pos)}, name: s.text[from:s.pos]})
+		if s.spelt > maxSpelt {
+			return s.tooMany("too-many", fmt.Sprintf("more than %d keys with escapes", maxSpelt), from, s.pos)
+		}
+		s.parts = append(s.parts, key{span: span{int32(from), int32(s.pos)}, name: quotedKey(s.text[from:s.pos], escapes)})
 		return true
 	}
-	_, n := utf8.DecodeRuneInString(s.text[from:])
-	switch found := s.text[from : from+n]; found {
-	case "=", "]", ".", "\n", "\r":
-		return s.fault(Diagnostic{Text: "the name of " + what + " is missing"}, from, from+n)
-	default:
-		d := Diagnostic{Text: quoted(found) + " cannot stand in a name without quotes"}
-		return s.fault(d, from, from+n)
+	for s.pos < len(s.text) && bare(s.text[s.pos]) {
+		s.pos++
 	}
+	if s.pos == from {
+		return false
+	}
+	s.parts = append(s.parts, key{span: span{int32(from), int32(s.pos)}, name: s.text[from:s.pos]})
+	return true
 }
 
 // bare reports a character that needs no quotes in a key.
@@ -135,10 +118,13 @@ func (s *scanner) open(double bool, at span) {
 		k.value.span, k.span = at, p.span // the header is where a user looks for the table
 		s.cur = k.value.table
 	default:
-		s.twice(p, k)
+		s.again(p, k)
 		s.nowhere()
 	}
 }
+
+// nowhere lets the keys after a header at fault go to a table nobody reads.
+func (s *scanner) nowhere() { s.cur = &members{made: byBraces} }
 
 // openItem adds a table to an array of tables.
 func (s *scanner) openItem(m *members, k *key, p key, at span) {
@@ -148,7 +134,7 @@ func (s *scanner) openItem(m *members, k *key, p key, at span) {
 		m.add(p)
 		k = m.find(p.name)
 	} else if !k.value.open {
-		s.twice(p, k)
+		s.again(p, k)
 		s.nowhere()
 		return
 	}
@@ -159,23 +145,21 @@ func (s *scanner) openItem(m *members, k *key, p key, at span) {
 	s.cur = item.table
 }
 
-// into goes one table down, making it where it is not there; nil after a fault.
+// into goes one table down, making it where it is not there; nil where the name
+// stands for something else.
 func (s *scanner) into(m *members, p key, made origin) *members {
 	k := m.find(p.name)
-	if k == nil {
+	switch {
+	case k == nil:
 		return s.newTable(m, p, made, p.span)
+	case k.value.open:
+		return k.value.items[len(k.value.items)-1].table
+	case k.value.kind == kindTable:
+		return k.value.table
 	}
-	switch v := k.value; {
-	case v.open:
-		return v.items[len(v.items)-1].table
-	case v.kind == kindTable && v.table.made != byBraces && (made == byPath || v.table.made == byDots || v.table.made == byPath):
-		return v.table
-	case v.kind == kindTable:
-		s.note(Diagnostic{Code: "defined-twice", Text: fmt.Sprintf("table %s is complete on line %d; nothing can be added to it here",
-			quoted(p.name), s.src.place(Diagnostic{}, k.span).Line)}, p.span)
-	default:
-		s.note(Diagnostic{Code: "defined-twice", Text: fmt.Sprintf("%s is %s on line %d, not a table",
-			quoted(p.name), v.kind.a(), s.src.place(Diagnostic{}, k.span).Line)}, p.span)
+	if n := len(s.twice); n == 0 || !s.twice[n-1].through || s.twice[n-1].first != k.span { // once for all keys below
+		s.again(p, k)
+		s.twice[len(s.twice)-1].through = true
 	}
 	return nil
 }
@@ -188,25 +172,23 @@ func (s *scanner) newTable(m *members, p key, made origin, at span) *members {
 	return p.value.table
 }
 
-// twice reports a name given again; what follows it goes nowhere.
-func (s *scanner) twice(p key, first *key) {
-	s.note(Diagnostic{Code: "defined-twice", Text: fmt.Sprintf("%s is defined twice, first on line %d",
-		quoted(p.name), s.src.place(Diagnostic{}, first.span).Line)}, p.span)
+// again notes a name stated twice.
+func (s *scanner) again(p key, first *key) {
+	s.twice = append(s.twice, twice{name: p.name, at: p.span, first: first.span})
 }
 
-// pair reads key = value into m.
-func (s *scanner) pair(m *members) bool {
-	if !s.dotted("a key") {
+// pair reads key = value into m; path is the length of the name of that table.
+func (s *scanner) pair(m *members, path int) bool {
+	s.stage = inKey
+	if !s.dotted(path) || s.pos == len(s.text) || s.text[s.pos] != '=' {
 		return false
-	}
-	if s.pos == len(s.text) || s.text[s.pos] != '=' {
-		return s.noEquals()
 	}
 	var few [maxParts]key // reading the value reuses s.parts
 	n := copy(few[:], s.parts)
+	s.stage = inValue
 	s.pos++
 	s.blanks()
-	v := s.value()
+	v := s.value(path + pathOf(few[:n]))
 	if v == nil {
 		return false
 	}
@@ -217,24 +199,10 @@ func (s *scanner) pair(m *members) bool {
 	}
 	p := few[n-1]
 	if k := m.find(p.name); k != nil {
-		s.twice(p, k)
+		s.again(p, k)
 		return true
 	}
 	p.value = v
 	m.add(p)
 	return true
-}
-
-// noEquals reports a key that no = follows.
-func (s *scanner) noEquals() bool {
-	last := s.parts[len(s.parts)-1]
-	d := Diagnostic{Text: "expected \"=\" after " + quoted(last.name)}
-	if s.pos < len(s.text) && s.text[s.pos] == ':' {
-		d.Fix = "="
-		return s.fault(d, s.pos, s.pos+1)
-	}
-	if end := s.restOfLine(s.pos); s.bareWords(s.pos, end) {
-		d.Hint = "a name with a space is written in quotes"
-	}
-	return s.fault(d, int(last.at), int(last.end))
 }

@@ -3,52 +3,53 @@ package casefile
 import (
 	"fmt"
 	"strings"
-	"unicode/utf8"
 )
 
-// value reads one value; nil after a fault.
-func (s *scanner) value() *node {
+// value skips over one value and notes its place; nil where the scanner sticks.
+// path is the length of the full name of its key.
+func (s *scanner) value(path int) *node {
 	if s.values >= maxValues {
-		s.tooMany("values", maxValues, s.pos)
+		s.tooMany("too-many", fmt.Sprintf("more than %d values", maxValues), s.pos, s.pos+1)
 		return nil
 	}
-	from := s.pos
-	if from == len(s.text) {
-		s.fault(Diagnostic{Text: "the file ends where a value is expected"}, max(0, from-1), from)
+	s.val = s.pos
+	if s.pos == len(s.text) {
 		return nil
 	}
-	switch c := s.text[from]; c {
+	switch c := s.text[s.pos]; c {
 	case '"', '\'':
-		if strings.HasPrefix(s.text[from:], `"""`) || strings.HasPrefix(s.text[from:], "'''") {
-			return s.longString(c)
-		}
-		return s.quotedString(c)
+		return s.str(c)
 	case '[':
-		return s.nested(s.array)
+		return s.nested(s.array, path)
 	case '{':
-		return s.nested(s.inline)
-	case '\n', '\r', '#':
-		s.fault(Diagnostic{Text: "a value is missing"}, max(0, from-1), from)
-		return nil
+		return s.nested(s.inline, path)
 	}
 	return s.plain()
 }
 
 // nested reads a list or a table, counting how deep it lies.
-func (s *scanner) nested(read func() *node) *node {
+func (s *scanner) nested(read func(path int) *node, path int) *node {
 	if s.depth == maxDepth {
-		s.fault(Diagnostic{Code: "too-deep", Text: fmt.Sprintf("lists and tables nested more than %d deep", maxDepth)}, s.pos, s.pos+1)
-		s.skipLine() // what nests deeper on this line would be reported again and again
+		s.tooMany("too-deep", fmt.Sprintf("lists and tables nested more than %d deep", maxDepth), s.pos, s.pos+1)
 		return nil
 	}
+	if !s.weigh(path, 1) {
+		return nil
+	}
+	s.opens[s.depth] = int32(s.pos)
 	s.depth++
-	n := read()
+	n := read(path)
+	if n == nil {
+		return nil
+	}
 	s.depth--
+	n.end = int32(s.pos)
+	s.done = s.pos
 	return n
 }
 
 // gap skips blanks, line ends and comments inside brackets.
-func (s *scanner) gap() bool {
+func (s *scanner) gap() {
 	for s.pos < len(s.text) {
 		switch c := s.text[s.pos]; {
 		case c == ' ' || c == '\t' || c == '\n':
@@ -56,14 +57,40 @@ func (s *scanner) gap() bool {
 		case c == '\r' && strings.HasPrefix(s.text[s.pos:], "\r\n"):
 			s.pos += 2
 		case c == '#':
-			if !s.comment() {
-				return false
-			}
+			s.skipLine()
 		default:
-			return true
+			return
 		}
 	}
-	return true
+}
+
+// array reads […].
+func (s *scanner) array(path int) *node {
+	n := s.newNode(kindArray, s.pos)
+	s.pos++
+	from := len(s.list)
+	for {
+		s.stage = inValue
+		s.gap()
+		if s.closes(']') {
+			break
+		}
+		v := s.value(path)
+		if v == nil {
+			return nil
+		}
+		s.list = append(s.list, v)
+		s.stage = afterValue
+		s.gap()
+		if s.closes(']') {
+			break
+		}
+		if !s.closes(',') {
+			return nil
+		}
+	}
+	n.items = s.take(from)
+	return n
 }
 
 // take makes the items of an array of what has been gathered in s.list.
@@ -78,108 +105,132 @@ func (s *scanner) take(from int) []*node {
 	items := s.items[:n:n]
 	s.items = s.items[n:]
 	copy(items, s.list[from:])
+	s.list = s.list[:from]
 	return items
 }
 
-// array reads […].
-func (s *scanner) array() *node {
-	n := s.newNode(kindArray, s.pos)
-	s.pos++
-	outer, from := s.braces, len(s.list)
-	s.braces = false
-	defer func() { s.braces, s.list = outer, s.list[:from] }()
-	for {
-		if !s.gap() {
-			return nil
-		}
-		if s.closes(n, ']') {
-			n.items = s.take(from)
-			return n
-		}
-		v := s.value()
-		if v == nil {
-			return nil
-		}
-		s.list = append(s.list, v)
-		end := s.pos
-		if !s.gap() {
-			return nil
-		}
-		if s.closes(n, ']') {
-			n.items = s.take(from)
-			return n
-		}
-		if !s.comma(n, end, "list", "]") {
-			return nil
-		}
-	}
-}
-
 // inline reads {…}.
-func (s *scanner) inline() *node {
+func (s *scanner) inline(path int) *node {
 	n := s.newNode(kindTable, s.pos)
-	n.table = s.newMembers(byHeader)
-	outer := s.braces
-	defer func() { s.braces = outer }()
+	n.table = s.newMembers(byBraces)
 	s.pos++
 	for {
-		if !s.gap() {
+		s.stage = inKey
+		s.parts = s.parts[:0]
+		s.gap()
+		if s.closes('}') {
+			return n
+		}
+		if !s.pair(n.table, path) {
 			return nil
 		}
-		if s.closes(n, '}') {
-			break
+		s.stage = afterValue
+		s.gap()
+		if s.closes('}') {
+			return n
 		}
-		s.braces = true
-		if !s.pair(n.table) {
-			return nil
-		}
-		end := s.pos
-		if !s.gap() {
-			return nil
-		}
-		if s.closes(n, '}') {
-			break
-		}
-		if !s.comma(n, end, "table", "}") {
+		if !s.closes(',') {
 			return nil
 		}
 	}
-	n.table.made = byBraces
-	return n
 }
 
-// closes reads the closing bracket where it is next.
-func (s *scanner) closes(n *node, bracket byte) bool {
-	if s.pos == len(s.text) || s.text[s.pos] != bracket {
+// closes reads a bracket or comma where it is next.
+func (s *scanner) closes(c byte) bool {
+	if s.pos == len(s.text) || s.text[s.pos] != c {
 		return false
 	}
 	s.pos++
-	n.end = int32(s.pos)
 	return true
 }
 
-// comma reads the comma between items; end is where the last item ends.
-func (s *scanner) comma(n *node, end int, what, closing string) bool {
-	if s.pos < len(s.text) && s.text[s.pos] == ',' {
+// plain skips over a value without quotes: a number, a word, a date.
+func (s *scanner) plain() *node {
+	from := s.pos
+	s.word()
+	if day := s.text[from:s.pos]; len(day) == 10 && day[4] == '-' && day[7] == '-' && s.pos+3 < len(s.text) &&
+		s.text[s.pos] == ' ' && digit(s.text[s.pos+1]) && digit(s.text[s.pos+2]) && s.text[s.pos+3] == ':' {
+		s.pos++ // a date and a time
+		s.word()
+	}
+	if s.pos == from {
+		return nil
+	}
+	return s.scalar(from)
+}
+
+// word skips over the characters of a number, a date, true, false, inf or nan,
+// and of what was meant as a word.
+func (s *scanner) word() {
+	for s.pos < len(s.text) {
+		c := s.text[s.pos]
+		if !(bare(c) || c == '+' || c == '.' || c == ':') {
+			return
+		}
 		s.pos++
-		return true
 	}
-	if one := s.text[n.at:end]; !strings.Contains(one, "\n") && strings.Contains(s.text[end:s.pos], "\n") && s.begins() {
-		// what stands on the next line is not part of it: the bracket is missing here
-		return s.fault(Diagnostic{Code: "open-bracket", Text: "the " + what + " is not closed by " + closing, Fix: one + closing}, int(n.at), end)
+}
+
+func digit(c byte) bool { return c >= '0' && c <= '9' }
+
+// scalar makes the node of a value that has been skipped.
+func (s *scanner) scalar(from int) *node {
+	n := s.newNode(kindString, from)
+	n.end = int32(s.pos)
+	s.done = s.pos
+	return n
+}
+
+// str skips over a string.
+func (s *scanner) str(quote byte) *node {
+	from := s.pos
+	ok := false
+	if strings.HasPrefix(s.text[from:], `"""`) || strings.HasPrefix(s.text[from:], "'''") {
+		ok = s.long(quote)
+	} else {
+		ok = s.quoted(quote)
 	}
-	begun := s.src.place(Diagnostic{}, span{n.at, n.at + 1}).Line
-	if s.pos == len(s.text) {
-		return s.fault(Diagnostic{Code: "open-bracket", Text: "the " + what + " begun here is never closed by " + closing}, int(n.at), int(n.at)+1)
+	if !ok {
+		return nil
 	}
-	_, size := utf8.DecodeRuneInString(s.text[s.pos:])
-	found := s.text[s.pos : s.pos+size]
-	d := Diagnostic{Text: fmt.Sprintf(`expected "," or %q, found %s`, closing, quoted(found))}
-	if strings.Contains(`"'[{`, found) || digit(found[0]) {
-		d.Text = "a comma is missing before this"
+	return s.scalar(from)
+}
+
+// quoted skips over "…" or '…' on one line.
+func (s *scanner) quoted(quote byte) bool {
+	from := s.pos
+	for i := from + 1; i < len(s.text); i++ {
+		switch c := s.text[i]; {
+		case c == quote:
+			s.pos = i + 1
+			return true
+		case c == '\n':
+			s.pos, s.quote = i, from
+			return false
+		case c == '\\' && quote == '"' && i+1 < len(s.text) && s.text[i+1] != '\n':
+			i++
+		}
 	}
-	if here := s.src.place(Diagnostic{}, span{int32(s.pos), int32(s.pos + 1)}).Line; here != begun {
-		d.Text += fmt.Sprintf(" in the %s begun on line %d", what, begun)
+	s.pos, s.quote = len(s.text), from
+	return false
+}
+
+// long skips over """…""" or ”'…”'.
+func (s *scanner) long(quote byte) bool {
+	from := s.pos
+	marks := s.text[from : from+3]
+	for i := from + 3; i < len(s.text); i++ {
+		switch c := s.text[i]; {
+		case c == '\\' && quote == '"':
+			i++
+		case c == quote && strings.HasPrefix(s.text[i:], marks):
+			s.pos = i + 3
+			for more := 0; more < 2 && s.pos < len(s.text) && s.text[s.pos] == quote; more++ {
+				s.pos++ // one or two quotes may stand before the closing three
+			}
+			return true
+		}
 	}
-	return s.fault(d, s.pos, s.pos+size)
+	s.pos, s.quote = len(s.text), from
+	return false
 }

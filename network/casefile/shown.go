@@ -203,7 +203,12 @@ func (r *reader) noNode(o owner, n *node, name string, e *Element) {
 	}
 	d := Diagnostic{Code: "unknown-name", Thing: o.thing(), Text: "node " + quoted(name) + " is not defined", Found: name, Want: "a node"}
 	names := r.nodeNames()
-	if near, ok := quantity.Nearest(name, names); ok {
+	near, ok := quantity.Nearest(name, names)
+	if domain, rest := r.c.domainOf(name); domain != "" && !ok {
+		near, ok = quantity.Nearest(rest, names)
+		near = domain + ":" + near
+	}
+	if ok {
 		d.Fix = fix(near)
 	} else {
 		d.Hint = "the nodes are" + strings.TrimPrefix(listed(names), ":")

@@ -33,58 +33,69 @@ func (r *reader) trial() {
 	}
 }
 
-// halfStarted reports a case in which some nodes state a start and others that
-// store, or lines whose flow has inertia, do not, and [run] start does not say
-// what the others have.
+// A startedness is which parts of one domain state a start: nodes that store, and
+// lines whose flow has inertia.
+type startedness struct {
+	with    network.Ref // the first that does
+	without []string
+}
+
+// halfStarted reports a domain in which some parts state a start and others do
+// not, and [run] start does not say what the others have.
 func (r *reader) halfStarted(p *network.Params) {
-	with := -1
-	var without []string
-	for id, name := range r.c.net.Nodes() {
-		node := r.c.net.Node(network.NodeID(id))
+	domains := map[string]*startedness{}
+	var order []*startedness
+	note := func(name string, ref network.Ref, has bool) {
+		domain := ""
+		if ref >= 0 && r.c.refs[ref].e != nil {
+			domain = r.c.refs[ref].e.domain
+		}
+		s := domains[domain]
+		if s == nil {
+			s = &startedness{with: network.NoRef}
+			domains[domain], order = s, append(order, s)
+		}
 		switch {
-		case p.HasStart[id] && with < 0:
-			with = id
-		case p.HasStart[id] || node.Held || node.Massless:
-		default:
-			without = append(without, r.partOf(name))
+		case !has:
+			s.without = append(s.without, r.partOf(name))
+		case s.with == network.NoRef:
+			s.with = ref
 		}
 	}
-	for id, b := range r.inertances() {
-		if !p.HasStartFlow[id] {
-			without = append(without, r.partOf(b.Name))
+	for id, name := range r.c.net.Nodes() {
+		if node := r.c.net.Node(network.NodeID(id)); !node.Held && !node.Massless {
+			note(name, node.Ref, p.HasStart[id])
 		}
 	}
-	if with < 0 || without == nil {
-		return
+	for _, b := range r.c.net.Branches() {
+		if b.Kind == network.InertanceBranch {
+			note(b.Name, b.Ref, p.HasStartFlow[b.Index])
+		}
 	}
-	without = distinct(without)
+	for _, s := range order {
+		if s.with != network.NoRef && s.without != nil {
+			r.halfStart(s)
+		}
+	}
+}
+
+func (r *reader) halfStart(s *startedness) {
+	without := distinct(s.without)
 	const most = 8
 	names := strings.Join(without[:min(len(without), most)], ", ")
 	if len(without) > most {
 		names += fmt.Sprintf(" and %d more", len(without)-most)
 	}
-	ref := r.c.net.Node(network.NodeID(with)).Ref
-	d := r.c.Diagnose(ref, "half-started", "it states a start, but "+names+" do not", `state start for all, or [run] start = "steady" or a level for the rest`)
+	d := r.c.Diagnose(s.with, "half-started", "it states a start, but "+names+" do not", `state start for all, or [run] start = "steady" or a level for the rest`)
 	if len(without) == 1 {
 		d.Text = "it states a start, but " + names + " does not"
 	}
-	if e := r.c.refs[ref].e; e != nil {
+	if e := r.c.refs[s.with].e; e != nil {
 		if x := e.find("start"); x != nil {
 			d = r.c.src.place(d, x.n.span)
 		}
 	}
 	r.report(d)
-}
-
-// inertances lists the branches whose flow is a state, by InertanceID.
-func (r *reader) inertances() []network.BranchView {
-	var list []network.BranchView
-	for _, b := range r.c.net.Branches() {
-		if b.Kind == network.InertanceBranch {
-			list = append(list, b)
-		}
-	}
-	return list
 }
 
 // partOf names the part a node belongs to: a node of its own, or the part it

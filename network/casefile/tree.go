@@ -37,6 +37,7 @@ type node struct {
 	open  bool     // an array made by [[…]], to which more may be added
 	inner int32    // where the text of a string begins
 	text  string   // strings: as meant; numbers, words and dates: as written
+	num   float64  // numbers
 	items []*node  // arrays
 	table *members // tables
 }

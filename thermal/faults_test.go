@@ -53,6 +53,12 @@ times = ["0 s", "1 s"]
 		{"about without slope", "[thermal.source.x]\ninto = \"body\"\ndrive = \"1 W\"\nabout = \"20 °C\"", "missing-key: "},
 		{"into and out", "[thermal.source.x]\ninto = \"body\"\nout_of = \"body\"\ndrive = \"1 W\"", "stated-twice: "},
 		{"into a held node", "[thermal.source.x]\ninto = \"air\"\ndrive = \"1 W\"", "is held: this source changes nothing"},
+		{"scale that is no stairs", "[thermal.resistance.x]\nbetween = [\"body\", \"air\"]\nvalue = \"1 K/W\"\nscale = { points = [[\"0 s\", 1], [\"1 s\", 0]] }",
+			"scale is stated as points; expected a number, step, stairs or pulse"},
+		{"scale below 0", "[thermal.resistance.x]\nbetween = [\"body\", \"air\"]\nvalue = \"1 K/W\"\nscale = -1", "scale is -1"},
+		{"per_kelvin of a sine", "[thermal.source.x]\ninto = \"body\"\ndrive = { sine = { mean = \"1 W\", amplitude = \"1 W\", period = \"1 s\" } }\nper_kelvin = \"1 %/K\"\nat = \"20 °C\"",
+			"drive is stated as sine; expected a number, step, stairs or pulse"},
+		{"per_kelvin alone", "[thermal.source.x]\ninto = \"body\"\ndrive = \"1 W\"\nper_kelvin = \"1 %/K\"", "per_kelvin needs at beside it"},
 		{"degrees for a slope", "[thermal.source.x]\ninto = \"body\"\ndrive = \"20 °C\"", "dimension: "},
 	} {
 		if got := faults(t, base+c.text+"\n"); !strings.Contains(got, c.want) {
@@ -71,10 +77,8 @@ func TestWordsNotBuiltAreRefused(t *testing.T) {
 		{"natural", "[thermal.resistance.x]\nbetween = [\"a\", \"b\"]\nfilm = { natural = \"vertical plate\", height = \"1 m\", area = \"1 m²\" }"},
 		{"forced", "[thermal.resistance.x]\nbetween = [\"a\", \"b\"]\nfilm = { forced = \"plate\", length = \"1 m\", area = \"1 m²\", speed = \"1 m/s\", fluid = \"air\" }"},
 		{"exact", "[thermal.wall.x]\nbetween = [\"a\", \"b\"]\nlayers = [{ material = \"copper\", thickness = \"1 cm\", area = \"1 m²\" }]\nexact = true"},
-		{"per_kelvin", "[thermal.source.x]\ninto = \"a\"\ndrive = \"1 W\"\nper_kelvin = \"0.4 %/K\""},
 		{"doubles_every", "[thermal.source.x]\ninto = \"a\"\ndrive = \"1 W\"\ndoubles_every = \"10 K\""},
 		{"melts", "[thermal.node.x]\nlump = { material = \"copper\", mass = \"1 kg\", melts = { at = \"60 °C\" } }"},
-		{"scale", "[thermal.resistance.x]\nbetween = [\"a\", \"b\"]\nvalue = \"1 K/W\"\nscale = 0.5"},
 		{"at_rise", "[thermal.resistance.x]\nbetween = [\"a\", \"b\"]\nvalue = \"1 K/W\"\nat_rise = \"10 K\""},
 		{"emissivity", "[material.x]\nemissivity = 0.9"},
 		{"air", "[air]\naltitude = \"1 km\""},

@@ -7,23 +7,24 @@ import (
 
 // Dimensions: exponents of kg, m, s, K, A.
 var (
-	dimless      = quantity.Dim{}
-	length       = quantity.Dim{0, 1, 0, 0, 0}
-	area         = quantity.Dim{0, 2, 0, 0, 0}
-	volume       = quantity.Dim{0, 3, 0, 0, 0}
-	mass         = quantity.Dim{1, 0, 0, 0, 0}
-	duration     = quantity.Dim{0, 0, 1, 0, 0}
-	temperature  = quantity.Dim{0, 0, 0, 1, 0}
-	power        = quantity.Dim{1, 2, -3, 0, 0}
-	resistance   = quantity.Dim{-1, -2, 3, 1, 0}
-	conductance  = quantity.Dim{1, 2, -3, -1, 0}
-	capacitance  = quantity.Dim{1, 2, -2, -1, 0}
-	conductivity = quantity.Dim{1, 1, -3, -1, 0}
-	coefficient  = quantity.Dim{1, 0, -3, -1, 0}
-	density      = quantity.Dim{1, -3, 0, 0, 0}
-	specificHeat = quantity.Dim{0, 2, -2, -1, 0}
-	volumeFlow   = quantity.Dim{0, 3, -1, 0, 0}
-	massFlow     = quantity.Dim{1, 0, -1, 0, 0}
+	dimless       = quantity.Dim{}
+	length        = quantity.Dim{0, 1, 0, 0, 0}
+	area          = quantity.Dim{0, 2, 0, 0, 0}
+	volume        = quantity.Dim{0, 3, 0, 0, 0}
+	mass          = quantity.Dim{1, 0, 0, 0, 0}
+	duration      = quantity.Dim{0, 0, 1, 0, 0}
+	temperature   = quantity.Dim{0, 0, 0, 1, 0}
+	power         = quantity.Dim{1, 2, -3, 0, 0}
+	resistance    = quantity.Dim{-1, -2, 3, 1, 0}
+	conductance   = quantity.Dim{1, 2, -3, -1, 0}
+	capacitance   = quantity.Dim{1, 2, -2, -1, 0}
+	conductivity  = quantity.Dim{1, 1, -3, -1, 0}
+	coefficient   = quantity.Dim{1, 0, -3, -1, 0}
+	inverseKelvin = quantity.Dim{0, 0, 0, -1, 0}
+	density       = quantity.Dim{1, -3, 0, 0, 0}
+	specificHeat  = quantity.Dim{0, 2, -2, -1, 0}
+	volumeFlow    = quantity.Dim{0, 3, -1, 0, 0}
+	massFlow      = quantity.Dim{1, 0, -1, 0, 0}
 )
 
 // positive is a key that holds a number above zero.

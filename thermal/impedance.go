@@ -27,6 +27,7 @@ func impedanceTable() casefile.Table {
 				"terms R·(1 − exp(−t/τ)) of the impedance at the first end, as [R, τ]; built as the ladder equal to them"),
 			pairs("cauer", positive("", capacitance, ""), positive("R", resistance, "R"),
 				"cells [C, R] of a ladder; the first C lies at the first end, the last R ends at the second"),
+			scaleField(),
 		},
 		Build:  buildImpedance,
 		Derive: deriveImpedance,
@@ -39,7 +40,8 @@ func buildImpedance(e *casefile.Element, c *casefile.Case, b *network.Builder) (
 	}
 	cells := ladderOf(e)
 	hot, far, faults := ends(e, c)
-	if faults != nil {
+	scale, wrong := scalingOf(e, c, b)
+	if faults = append(faults, wrong...); faults != nil {
 		return nil, faults
 	}
 	n := cells.count()
@@ -59,9 +61,10 @@ func buildImpedance(e *casefile.Element, c *casefile.Case, b *network.Builder) (
 		if !l.within(1e-90, 1e90) {
 			return e.Fault("foster", "time constants so close together that no ladder of double precision is equal to them", "", "")
 		}
+		factor := scale.factor(v, p)
 		for i := range l.n {
 			p.C[capacities[i]] = l.c[i]
-			p.G[resistances[i]] = 1 / l.r[i]
+			p.G[resistances[i]] = factor / l.r[i]
 		}
 		return nil
 	}, nil

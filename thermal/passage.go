@@ -75,7 +75,7 @@ func isPassageOf(p *casefile.Element, stream string) bool {
 // set shares the stream's capacity rate between what passes unchanged and what
 // takes the temperature of the plate.
 func (q *passing) set(v casefile.Values, p *network.Params, w float64, plain []network.OneWayID) {
-	ntu := q.ua.value(v) / w
+	ntu := q.ua.value(v) / w // of a stream at rest infinite: it takes nothing along
 	p.W[plain[q.stretch]] = w * math.Exp(-ntu)
 	taken := -w * math.Expm1(-ntu)
 	p.W[q.toPlate] = taken

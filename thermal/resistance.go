@@ -37,6 +37,7 @@ func resistanceTable() casefile.Table {
 			{Name: "film", Type: casefile.Group, Help: "convection at a surface: 1/(h·A·η)",
 				Fields: []casefile.Field{required(positive("coefficient", coefficient, "h")), required(positive("area", area, "A")),
 					{Name: "efficiency", Type: casefile.Number, Dim: dimless, HasMin: true, MinOpen: true, HasMax: true, Max: 1, Help: "η of a finned surface; 1 unless stated"}}},
+			scaleField(),
 		},
 		Build:  buildResistance,
 		Derive: deriveResistance,
@@ -46,12 +47,13 @@ func resistanceTable() casefile.Table {
 func buildResistance(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	from, to, faults := ends(e, c)
 	l, more := conductanceLaw(e, c)
-	if faults = append(faults, more...); faults != nil {
+	scale, wrong := scalingOf(e, c, b)
+	if faults = append(append(faults, more...), wrong...); faults != nil {
 		return nil, faults
 	}
 	id := b.Resistance(e.FullName(), from, to, e.Ref)
 	return func(v casefile.Values, p *network.Params) error {
-		p.G[id] = l.value(v)
+		p.G[id] = l.value(v) * scale.factor(v, p)
 		return nil
 	}, nil
 }

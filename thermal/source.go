@@ -9,7 +9,7 @@ import (
 )
 
 // sourceTable is [thermal.source.NAME]: heat put into a node or taken out of
-// it, drive + slope·(T − about).
+// it, drive + slope·(T − about), or drive·(1 + per_kelvin·(T − at)).
 func sourceTable() casefile.Table {
 	into := nodeName("into", "the node it heats")
 	outOf := nodeName("out_of", "the node it cools")
@@ -27,6 +27,8 @@ func sourceTable() casefile.Table {
 			{Name: "about", Type: casefile.Number, Dim: temperature, Kind: quantity.Level, HasMin: true, MinOpen: true,
 				With: []string{"slope"}, Help: "temperature at which the slope adds nothing"},
 			follows,
+			{Name: "per_kelvin", Type: casefile.Number, Dim: inverseKelvin, With: []string{"at"}, Help: "share by which the drive grows for each kelvin of its node above at"},
+			with(level("at", "temperature at which the drive is what is stated"), "per_kelvin"),
 		},
 		Build:  buildSource,
 		Derive: deriveSource,
@@ -65,7 +67,29 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 			return nil
 		})
 	}
+	if e.Has("per_kelvin") {
+		set, faults := perKelvinOf(e, c, b, node, on, sign)
+		if faults != nil {
+			return nil, faults
+		}
+		setters = append(setters, set)
+	}
 	return together(setters), intoHeld(e, c, end)
+}
+
+// perKelvinOf builds drive·(1 + α·(T − at)) as a feedback α·drive beside the drive: one
+// that switches with it, and so must change in steps.
+func perKelvinOf(e *casefile.Element, c *casefile.Case, b *network.Builder, node, on network.NodeID, sign float64) (casefile.Setter, []casefile.Diagnostic) {
+	if d := notInSteps(e, c, "drive", "with per_kelvin it switches a feedback, and the network must be linear between its changes"); d != nil {
+		return nil, d
+	}
+	fb, id := b.Feedback(e.FullName()+" per kelvin", node, on, e.Ref), b.Switch(e.FullName(), e.Ref)
+	drive, alpha, at := e.Wave("drive"), e.Num("per_kelvin"), e.Num("at")
+	return func(v casefile.Values, p *network.Params) error {
+		p.Switch[id] = v.Wave[drive]
+		p.K[fb], p.About[fb] = sign*v.Num[alpha]*p.Now[id], v.Num[at]
+		return nil
+	}, nil
 }
 
 // intoHeld warns of heat that changes nothing.
@@ -80,16 +104,24 @@ func intoHeld(e *casefile.Element, c *casefile.Case, end string) []casefile.Diag
 }
 
 func deriveSource(e *casefile.Element, c *casefile.Case, v casefile.Values) []casefile.Derivation {
+	var list []casefile.Derivation
+	if e.Has("per_kelvin") {
+		alpha, at := typed(e, "per_kelvin"), typed(e, "at")
+		list = append(list, casefile.Derivation{
+			Quantity: "share per kelvin of " + e.Name, Formula: "drive·(1 + α·(T − at))", Numbers: alpha.text + " at " + at.text,
+			Source: sources(alpha, at), SI: alpha.at(v), Dim: inverseKelvin,
+		})
+	}
 	if !e.Has("slope") {
-		return nil
+		return list
 	}
 	slope, about := typed(e, "slope"), typed(e, "about")
 	on := e.NameOf("follows")
 	if on == "" {
 		on = e.NameOf("into") + e.NameOf("out_of") // one of them is ""
 	}
-	return []casefile.Derivation{{
+	return append(list, casefile.Derivation{
 		Quantity: "slope of " + e.Name, Formula: "drive + slope·(" + on + " − about)", Numbers: slope.text + " about " + about.text,
 		Source: sources(slope, about), SI: slope.at(v), Dim: conductance,
-	}}
+	})
 }

@@ -27,6 +27,7 @@ func streamTable() casefile.Table {
 			{Name: "fluid", Type: casefile.Name, Structural: true, Help: "an own material or a liquid or gas of the handbook"},
 			flow,
 			with(level("flow_at", "temperature at which the flow is meant: must be stated for a gas; 20 °C for a liquid unless stated"), "fluid"),
+			scaleField(),
 		},
 		Build:  buildStream,
 		Derive: deriveStream,
@@ -36,7 +37,8 @@ func streamTable() casefile.Table {
 func buildStream(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	rate, faults := rateLaw(e, c)
 	nodes, more := pathNodes(e, c)
-	faults = append(append(faults, more...), solidsInPath(e, c)...)
+	scale, wrong := scalingOf(e, c, b)
+	faults = append(append(append(faults, more...), solidsInPath(e, c)...), wrong...)
 	if faults != nil {
 		return nil, faults
 	}
@@ -51,7 +53,7 @@ func buildStream(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 	}
 	along := passagesOf(e, c, b, nodes)
 	return func(v casefile.Values, p *network.Params) error {
-		w := rate.value(v)
+		w := rate.value(v) * scale.factor(v, p)
 		for _, id := range plain {
 			p.W[id] = w
 		}

@@ -12,6 +12,7 @@
 //	      q = (T_a − T_b)/R                        resistance R, K/W
 //	      q = w (T_up − T_down)                    stream of capacity rate w, W/K, into the node downstream
 //	      q = drive(t) + slope·(T_on − about)      source, W
+//	      q = drive(t)·(1 + α·(T_on − at))         source whose drive changes with temperature, α in 1/K
 //
 // with R of a layer t/(kA), of a shell ln(r_o/r_i)/(2πkL), of a contact 1/(hA), of
 // a film 1/(hAη); C of a lump ρVc(1 + extra); a passage, in which a stream warms
@@ -21,7 +22,7 @@
 //
 // # Not modelled
 //
-// Everything here is linear: films, conductivities and capacities that depend on
+// Everything here is linear, with numbers that stay or change in steps (scale): films, conductivities and capacities that depend on
 // temperature, radiation, melting and controlled heaters are words of the
 // vocabulary that casefile refuses by name. The heat a lump conducts inside itself,
 // heat stored in a stream between its nodes, and the travel time of a stream are
@@ -49,12 +50,11 @@ func Vocabulary() []casefile.Vocabulary {
 				"exchanger", "heater", "surface",
 				"node.lump.melts",
 				"resistance.radiation", "resistance.fins", "resistance.spreading", "resistance.at_rise", "resistance.exponent",
-				"resistance.points", "resistance.scale",
+				"resistance.points",
 				"resistance.film.natural", "resistance.film.forced", "resistance.film.height", "resistance.film.length",
 				"resistance.film.diameter", "resistance.film.gap", "resistance.film.speed", "resistance.film.fluid",
 				"wall.exact",
-				"stream.scale",
-				"source.per_kelvin", "source.at", "source.doubles_every", "source.points",
+				"source.doubles_every", "source.points",
 			},
 			Check: check,
 		},

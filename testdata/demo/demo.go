@@ -6,7 +6,7 @@ package demo
 import "embed"
 
 // Cases are the files, each a case: servo-drive.toml, the one shown first,
-// curing-oven.toml and wash-tank.toml.
+// curing-oven.toml, wash-tank.toml and wash-line.toml.
 //
 //go:embed *.toml
 var Cases embed.FS

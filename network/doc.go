@@ -44,5 +44,5 @@
 //
 // Not modelled here: inertances, a capacity between two nodes, the flow that the
 // holder of a held node supplies to that node's own capacity, parameters that
-// change with time or level, delays.
+// change with level, or with time otherwise than in steps (Switch), delays.
 package network

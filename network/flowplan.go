@@ -31,7 +31,7 @@ type flowPlan struct {
 // level no resistance determines.
 func (pl *plan) joint(m int) bool { return pl.flows != nil && pl.flows.joint[m] }
 
-func newFlowPlan(g *graph, pl *plan) *flowPlan {
+func newFlowPlan(g *graph, pl *plan, joints [][]NodeID) *flowPlan {
 	if len(g.inertances) == 0 {
 		return nil
 	}
@@ -39,18 +39,12 @@ func newFlowPlan(g *graph, pl *plan) *flowPlan {
 	for i := range f.group {
 		f.group[i] = -1
 	}
-	joints := g.joints()
 	for k, nodes := range joints {
 		for _, n := range nodes {
 			f.group[n] = k
 		}
-	}
-	f.rep = make([]int32, len(joints))
-	for m := range pl.massless {
-		if f.group[pl.order[m]] >= 0 && pl.start[m+1] == pl.upper[m] {
-			f.joint[m] = true
-			f.rep[f.group[pl.order[m]]] = int32(m)
-		}
+		m := pl.pos[nodes[0]]
+		f.joint[m], f.rep = true, append(f.rep, m)
 	}
 	for _, b := range g.inertances {
 		f.ends = append(f.ends, [2]int{f.group[b.from], f.group[b.to]})

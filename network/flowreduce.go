@@ -1,6 +1,8 @@
 package network
 
 import (
+	"math"
+
 	"lagbook/laplace"
 	"lagbook/laplace/matrix"
 )
@@ -28,6 +30,7 @@ func (r *Reduction) realiseFlows(p *Params) {
 		f.fillOutput(&r.weights[m], r.Realisation.Output[m], r.Realisation.D[m])
 	}
 	f.kickInputs(&r.Realisation)
+	r.Realisation.Rounded = f.rounded(r.weights)
 	if r.HasImbalance {
 		copy(r.Realisation.B[len(g.inputs)], r.start.Imbalance)
 	}
@@ -81,14 +84,7 @@ func (f *flows) fillStores(r *Reduction) {
 	N := real.Balance.N
 	brought := make([]float64, pl.free)
 	for b, v := range f.n.g.inertances {
-		clear(brought)
-		if at := pl.pos[v.to]; int(at) < pl.free {
-			brought[at]++
-		}
-		if at := pl.pos[v.from]; int(at) < pl.free {
-			brought[at]--
-		}
-		r.e.forward(pl, brought, pl.massless)
+		f.bring(r.e, b, v, brought)
 		for i, k := range brought[pl.massless:] {
 			if k == 0 {
 				continue
@@ -101,6 +97,26 @@ func (f *flows) fillStores(r *Reduction) {
 			}
 		}
 	}
+}
+
+// bring writes what a unit of the flow of inertance b brings to the stores. Where
+// nothing acts one way only that is what its drop takes of them.
+func (f *flows) bring(e *exchange, b int, v branch, brought []float64) {
+	g, pl := &f.n.g, f.n.plan
+	clear(brought)
+	if len(g.oneWays)+len(g.feedbacks) == 0 {
+		for m := pl.massless; m < pl.free; m++ {
+			brought[m] = -f.drop[b].at[m]
+		}
+		return
+	}
+	if at := pl.pos[v.to]; int(at) < pl.free {
+		brought[at]++
+	}
+	if at := pl.pos[v.from]; int(at) < pl.free {
+		brought[at]--
+	}
+	e.forward(pl, brought, pl.massless)
 }
 
 // fillLoops writes the equations of the free flows, Nᵀ (drop − LR i).
@@ -173,18 +189,57 @@ func (f *flows) fillOutput(w *weights, states, direct []float64) {
 // kickInputs turns weights and equations of the free flows into those of the states,
 // j = state − kick q.
 func (f *flows) kickInputs(r *laplace.Realisation) {
-	N, first := r.Balance.N, f.n.plan.stores
+	for q := range f.n.g.inputs {
+		if !f.kicked(q) {
+			continue
+		}
+		for i := range r.Balance.N {
+			r.B[q][i] = f.less(r.B[q][i], r.K[i*r.Balance.N:(i+1)*r.Balance.N], q)
+		}
+		for m := range r.Output {
+			r.D[m][q] = f.less(r.D[m][q], r.Output[m], q)
+		}
+	}
+}
+
+func (f *flows) kicked(q int) bool {
+	for _, kicks := range f.kick {
+		if kicks[q] != 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// less returns x less what the kick of input q takes off the free flows, weighed; a
+// result that is rounding of what cancels is 0.
+func (f *flows) less(x float64, weights []float64, q int) float64 {
+	size := math.Abs(x)
 	for c, kicks := range f.kick {
-		for q, k := range kicks {
-			if k == 0 {
-				continue
-			}
-			for i := range N {
-				r.B[q][i] -= r.K[i*N+first+c] * k
-			}
-			for m := range r.Output {
-				r.D[m][q] -= r.Output[m][first+c] * k
+		v := weights[f.n.plan.stores+c] * kicks[q]
+		x -= v
+		size += math.Abs(v)
+	}
+	if math.Abs(x) <= weightNoise*size {
+		return 0
+	}
+	return x
+}
+
+// rounded tells whether a source leads into a joint, a joint's level or a sum of flows
+// is shown: rounded numbers then stand where exact ones would cancel.
+func (f *flows) rounded(outs []weights) bool {
+	for _, row := range f.kick {
+		for _, k := range row {
+			if k != 0 {
+				return true
 			}
 		}
 	}
+	for _, w := range outs {
+		if w.rounded {
+			return true
+		}
+	}
+	return false
 }

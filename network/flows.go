@@ -25,7 +25,7 @@ func (n *Network) newFlows(e *exchange, p *Params) (*flows, error) {
 	}
 	f := &flows{n: n, p: p, plan: n.plan.flows}
 	for _, b := range n.g.inertances {
-		w := e.weightsOf(n.plan, &n.g, p, &Output{Terms: []Term{{b.from, 1}, {b.to, -1}}})
+		w := e.dropOf(n.plan, b)
 		for _, m := range f.plan.rep {
 			w.at[m] = 0
 		}
@@ -38,6 +38,17 @@ func (n *Network) newFlows(e *exchange, p *Params) (*flows, error) {
 		}
 	}
 	return f, f.findKick()
+}
+
+// dropOf weighs the level at from less that at to.
+func (e *exchange) dropOf(pl *plan, b branch) weights {
+	w := weights{at: make([]float64, len(pl.order)), flow: make([]float64, pl.massless), size: make([]float64, len(pl.order))}
+	w.add(pl, b.from, 1)
+	w.add(pl, b.to, -1)
+	e.expandDifference(pl, &w, int(max(pl.pos[b.from], pl.pos[b.to])))
+	e.gather(pl, w.flow)
+	w.clean()
+	return w
 }
 
 // joints is the balance of Σ ±i' with the other nodes as the reference.
@@ -72,6 +83,7 @@ func (f *flows) settle(w *weights) {
 		some = some || share[k] != 0
 	}
 	if some {
+		w.rounded = true
 		f.settleJoints(w, f.star.SolveTransposed(share))
 	}
 	for b, v := range f.n.g.inertances {

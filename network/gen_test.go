@@ -27,6 +27,7 @@ type spec struct {
 	streams   []wire    // value: rate
 	feedbacks []wire    // from: on, to: into; value: gain
 	sources   []int     // nodes
+	switches  int
 }
 
 type wire struct {
@@ -66,6 +67,9 @@ func (s *spec) build(t interface{ Fatal(...any) }) *built {
 	}
 	for _, n := range s.sources {
 		m.source = append(m.source, b.Source("", m.nodes[n], 1, network.NoRef))
+	}
+	for range s.switches {
+		b.Switch("", network.NoRef)
 	}
 	var err error
 	if m.net, err = b.Build(); err != nil {

@@ -190,7 +190,7 @@ func (n *Network) checkPivot(p *Params, m int, pivot, size float64) *Fault {
 	if len(ids) == 0 {
 		id := []NodeID{pl.order[m]}
 		return &Fault{Undetermined, id, n.g.refsOf(id), n.g.named(id) +
-			": has no capacity, and with streams at rest nothing determines its level"}
+			": has no capacity, and " + atRest(p) + " nothing determines its level"}
 	}
 	refs = append(refs, n.g.refsOf(ids)...)
 	if math.Abs(pivot) <= pivotTol*terms*size {

@@ -13,18 +13,21 @@ const (
 	ResistanceFlow FlowKind = iota
 	InertanceFlow           // a state of its own
 	SupplyFlow              // what the driver of a held node delivers into it
+	SourceFlow              // what a source delivers: its own waveform
 )
 
 // A FlowTerm is a flow times Sign: G·(x_from − x_to) of a resistance, the flow of
 // an inertance from its first-named end to its second, or what must be delivered
 // into a held node to hold it: the sum of what branches take out of it, less what
-// sources bring, plus C·x' where it has a capacity C. Only the field that belongs
+// sources bring, plus C·x' where it has a capacity C; or what a source delivers,
+// whichever way it leads. Only the field that belongs
 // to Kind is read.
 type FlowTerm struct {
 	Kind       FlowKind
 	Resistance ResistanceID
 	Inertance  InertanceID
-	Node       NodeID // held
+	Node       NodeID  // held
+	Input      InputID // a source
 	Sign       float64
 }
 
@@ -62,6 +65,11 @@ func (n *Network) SupplyOf(id NodeID) Output {
 	return Output{Name: "supply of " + n.Name(id), Flow: &FlowTerm{Kind: SupplyFlow, Node: id, Sign: 1}}
 }
 
+// SourceFlowOf returns the output that shows what a source delivers.
+func (n *Network) SourceFlowOf(id InputID) Output {
+	return Output{Name: n.g.inputs[id].name, Flow: &FlowTerm{Kind: SourceFlow, Input: id, Sign: 1}}
+}
+
 // checkOutputs panics where an output names what the network does not have.
 func (g *graph) checkOutputs(outs []Output) {
 	for _, o := range outs {
@@ -84,5 +92,7 @@ func (g *graph) checkFlow(f *FlowTerm) {
 		panic("network: output names an inertance of another network")
 	case f.Kind == SupplyFlow && (f.Node < 0 || int(f.Node) >= len(g.nodes) || !g.isHeld(f.Node)):
 		panic("network: output names the supply of a node that is not held")
+	case f.Kind == SourceFlow && (f.Input < 0 || int(f.Input) >= len(g.inputs) || g.inputs[f.Input].held):
+		panic("network: output names what is not a source of the network")
 	}
 }

@@ -28,7 +28,8 @@ type Params struct {
 	Switch       []laplace.Waveform // by SwitchID; piecewise constant
 	Now          []float64          // by SwitchID; the value for which the numbers above are set, just before t = 0 unless Turn says otherwise
 	// Turn returns the numbers for other values of the switches, in parameters of their
-	// own: nothing but C, G, W, K and About may differ. nil where no switch moves.
+	// own: of them C, G, W, K and About count, everything else is that of p. nil where no
+	// switch moves.
 	Turn func(now []float64) (*Params, error)
 }
 

@@ -36,7 +36,13 @@ const none int32 = -1
 func newPlan(g *graph) *plan {
 	pl := &plan{pos: make([]int32, len(g.nodes)), island: make([]int, len(g.nodes))}
 	e := newOrdering(g)
-	e.eliminate(func(n NodeID) bool { return g.isMassless(n) })
+	joints := g.joints()
+	last := make(map[NodeID]bool, len(joints)) // those that stand for a joint
+	for _, nodes := range joints {
+		last[nodes[0]] = true
+	}
+	e.eliminate(func(n NodeID) bool { return g.isMassless(n) && !last[n] })
+	e.eliminate(g.isMassless)
 	pl.massless = len(e.order)
 	e.eliminate(func(n NodeID) bool { return !g.isHeld(n) })
 	pl.free = len(e.order)
@@ -53,7 +59,7 @@ func newPlan(g *graph) *plan {
 	pl.layOut(e)
 	pl.findSlots(g)
 	pl.findIslands(g)
-	pl.flows = newFlowPlan(g, pl)
+	pl.flows = newFlowPlan(g, pl, joints)
 	return pl
 }
 

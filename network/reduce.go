@@ -119,6 +119,9 @@ func (r *Reduction) realise(p *Params) {
 	}
 	r.fillDirect(&s)
 	r.fillRate()
+	for _, w := range r.weights {
+		r.Realisation.Rounded = r.Realisation.Rounded || w.rounded
+	}
 }
 
 // fillInputs writes the flow into each store per unit of each input.

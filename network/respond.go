@@ -43,7 +43,7 @@ func (r *Reduction) deviations(p *Params) (*deviations, error) {
 	if faults := r.net.checkWaves(p); len(faults) > 0 {
 		return nil, &ParamFault{List: faults}
 	}
-	start, err := r.net.startOf(p, r.e, r.flows)
+	start, err := r.reference(p)
 	if err != nil {
 		return nil, err
 	}

@@ -10,6 +10,10 @@ func (n *Network) outputWeights(e *exchange, p *Params, o *Output, f *flows) wei
 	case o.Flow.Kind == InertanceFlow:
 		w = n.noWeights()
 		w.carry(n, o.Flow.Inertance, o.Flow.Sign)
+	case o.Flow.Kind == SourceFlow:
+		w = n.noWeights()
+		w.direct = make([]float64, len(n.g.inputs))
+		w.direct[o.Flow.Input] = o.Flow.Sign
 	default:
 		w = n.supply(e, p, o.Flow)
 	}
@@ -47,6 +51,7 @@ func (w *weights) plus(k float64, v *weights) {
 // streams and feedbacks bring, and C·u' of its own capacity.
 func (n *Network) supply(e *exchange, p *Params, t *FlowTerm) weights {
 	g, w, at := &n.g, n.noWeights(), t.Node
+	w.rounded = true
 	add := func(sign float64, o Output) {
 		v := e.weightsOf(n.plan, g, p, &o)
 		w.plus(sign*t.Sign, &v)

@@ -91,6 +91,25 @@ func (d *deviations) schedule() (*laplace.Schedule, []laplace.Waveform) {
 	return &laplace.Schedule{Waves: d.p.Switch, Pick: d.phase}, u
 }
 
+// reference returns the state that a response is a deviation from: the start or, where
+// that is the cycle of a network that switches, and the network just before t = 0 has no
+// steady state of its own, one level for all.
+func (r *Reduction) reference(p *Params) (*StartState, error) {
+	start, err := r.net.startOf(p, r.e, r.flows)
+	if err == nil || !p.StartCycle || !p.Turns() || !errors.As(err, new(*NoSteady)) {
+		return start, err
+	}
+	level := p.Clone()
+	level.HasAllStart = true
+	for k, in := range r.net.g.inputs {
+		if in.held {
+			level.AllStart = p.Wave[k].Before
+			break
+		}
+	}
+	return r.net.startOf(level, r.e, r.flows)
+}
+
 // phase reduces the network for the values given of its switches.
 func (d *deviations) phase(now []float64) (laplace.Kind, error) {
 	if slices.Equal(now, d.p.Now) {
@@ -101,7 +120,7 @@ func (d *deviations) phase(now []float64) (laplace.Kind, error) {
 		return laplace.Kind{}, err
 	}
 	p = p.Clone()
-	p.HasAllStart, p.StartCycle = false, false
+	p.HasAllStart, p.StartCycle, p.Wave = false, false, d.p.Wave
 	for _, id := range d.r.States {
 		p.Start[id], p.HasStart[id] = d.start.Levels[id], true
 	}
@@ -127,6 +146,14 @@ func (r *Reduction) kind(imbalance, base []float64) (laplace.Kind, error) {
 	x.Rate = withNone(r.Realisation.Rate, inputs)
 	s, err := laplace.NewCarrying(x)
 	return laplace.Kind{System: s, Base: base}, err
+}
+
+// atRest says why a node that has branches may have none that counts.
+func atRest(p *Params) string {
+	if len(p.Switch) > 0 {
+		return "with branches open or streams at rest"
+	}
+	return "with streams at rest"
 }
 
 // atSwitch says in the text of a fault when the numbers came about that are at fault.

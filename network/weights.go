@@ -1,5 +1,7 @@
 package network
 
+import "math"
+
 // Weights are a linear functional of the network: the sum of at[i]·x_i over
 // stores and held nodes (by position) and of flow[m]·f_m over massless nodes,
 // f_m being what sources bring into m.
@@ -8,8 +10,11 @@ type weights struct {
 	flow []float64 // by position < massless
 	sum  float64   // of the coefficients it was made of: the level it takes where all levels are equal
 
+	size []float64 // by position, of what at was added up from; nil where nobody asks
+
 	inert    []float64 // of the flow of each inertance; nil: none
 	direct   []float64 // of each input, on top of what at and flow say; nil: none
+	rounded  bool      // made of quotients or sums that may have to cancel exactly
 	rate     []float64 // of the derivative of each input; nil: none
 	constant float64
 }
@@ -55,7 +60,7 @@ func (e *exchange) expand(pl *plan, w *weights, first int) {
 		w.at[m] = 0
 		w.flow[m] = t
 		for s := pl.upper[m]; s < pl.start[m+1]; s++ {
-			w.at[pl.col[s]] += t * e.val[s]
+			w.put(int(pl.col[s]), t*e.val[s])
 		}
 	}
 }
@@ -78,7 +83,7 @@ func (e *exchange) expandDifference(pl *plan, w *weights, b int) {
 		own -= t * e.leak[m]
 		for s := pl.upper[m]; s < pl.start[m+1]; s++ {
 			if j := int(pl.col[s]); j != b {
-				w.at[j] += t * e.val[s]
+				w.put(j, t*e.val[s])
 			}
 		}
 	}
@@ -114,7 +119,11 @@ func (e *exchange) splitDifference(pl *plan, w *weights, b int, own float64) {
 	shareBefore, coefBefore := lambda, 0.0
 	for j := b + 1; j < n; j++ {
 		c, v := w.at[j], share[j]
-		w.at[j] = c*(shareBefore+shareAfter[j+1]) - v*(coefBefore+coefAfter[j+1]) + own*v
+		plus, minus := c*(shareBefore+shareAfter[j+1]), v*(coefBefore+coefAfter[j+1])
+		w.at[j] = plus - minus + own*v
+		if w.size != nil {
+			w.size[j] = math.Abs(plus) + math.Abs(minus) + math.Abs(own*v)
+		}
 		shareBefore += v
 		coefBefore += c
 	}
@@ -131,6 +140,26 @@ func (e *exchange) gather(pl *plan, flow []float64) {
 		for s := pl.start[m]; s < pl.upper[m]; s++ {
 			l := pl.col[s]
 			flow[l] += e.val[s] * flow[m] / e.pivot[l]
+		}
+	}
+}
+
+// put adds x to the weight at position i.
+func (w *weights) put(i int, x float64) {
+	w.at[i] += x
+	if w.size != nil {
+		w.size[i] += math.Abs(x)
+	}
+}
+
+// weightNoise is the part of what a weight was added up from below which it is rounding.
+const weightNoise = 0x1p-49
+
+// clean makes weights that are rounding of what cancels in them exactly 0.
+func (w *weights) clean() {
+	for i, c := range w.at {
+		if math.Abs(c) <= weightNoise*w.size[i] {
+			w.at[i] = 0
 		}
 	}
 }

@@ -75,6 +75,7 @@ type Zero struct {
 type Transfer struct {
 	Input          string         `json:"input"`
 	Output         string         `json:"output"`
+	About          string         `json:"about,omitempty"` // of a network that switches: start, or a time
 	Unit           string         `json:"unit"`
 	Gain           *float64       `json:"gain,omitempty"`
 	Form           string         `json:"form"`

@@ -148,7 +148,7 @@ func (m *Model) checkInputs() []CheckInput {
 		c.Wave = waveWords(m.par.Wave[in.ID], func(v float64) string { return m.inputValue(in, v) }, m.Show.Time)
 		list = append(list, c)
 	}
-	return list
+	return append(list, m.checkSwitches()...)
 }
 
 func (m *Model) checkGiven() []CheckGiven {

@@ -99,7 +99,11 @@ func (m *Model) Curves(pick int) (*Curves, error) {
 		a.Lines = append(a.Lines, sample(resp, c, grid, jumps))
 	}
 	a.Limits = m.curveLimits(ask, cols, a)
-	if list, cut := m.changes(a.From, a.To, mostMarked); !cut {
+	before := a.From
+	if a.Log {
+		before = 0 // what lies before the first decade
+	}
+	if list, cut := m.changes(before, a.To, mostMarked); !cut {
 		for _, c := range list {
 			a.Changes = append(a.Changes, CurveChange{c.at, c.text})
 		}

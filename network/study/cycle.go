@@ -2,6 +2,7 @@ package study
 
 import (
 	"fmt"
+	"slices"
 
 	"lagbook/laplace"
 )
@@ -123,4 +124,10 @@ func (m *Model) cycle(c *laplace.Cycle, approach *laplace.Approach, w shown) (Cy
 		warn = append(warn, Warning{"search-stopped", "the search for when " + w.name + " has come to its cycle was given up: the loads change too often"})
 	}
 	return y, warn, nil
+}
+
+// repeats reports whether any load or scale repeats for ever.
+func (m *Model) repeats() bool {
+	repeats := func(w laplace.Waveform) bool { return w.Repeats() }
+	return slices.ContainsFunc(m.par.Wave, repeats) || slices.ContainsFunc(m.par.Switch, repeats)
 }

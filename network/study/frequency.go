@@ -33,6 +33,7 @@ type Frequency struct {
 type FrequencyTransfer struct {
 	Input    string           `json:"input"`
 	Output   string           `json:"output"`
+	About    string           `json:"about,omitempty"` // of a network that switches: start, or a time
 	Unit     string           `json:"unit"`
 	AtRest   *float64         `json:"gain_at_rest,omitempty"` // H(0), signed
 	Points   []FrequencyPoint `json:"points"`
@@ -104,7 +105,7 @@ func (m *Model) Frequency(q FrequencyQuestion) (*Frequency, error) {
 	}
 	a := &Frequency{Title: m.Case.Title, Transfers: []FrequencyTransfer{}}
 	for _, p := range pairs {
-		h, err := red.System.Transfer(int(p.in.ID), p.show.out)
+		h, err := m.transferOf(red, p)
 		if err != nil {
 			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
 		}
@@ -112,11 +113,13 @@ func (m *Model) Frequency(q FrequencyQuestion) (*Frequency, error) {
 		if err != nil {
 			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
 		}
+		t.About = m.aboutWords(p)
 		a.Transfers, warn = append(a.Transfers, t), append(warn, more...)
 	}
 	if q.Ripple > 0 && !a.ripples() {
 		return nil, fmt.Errorf("no transfer function leads from something in %s to something in %s: a ripple is an amplitude at a source or held node, the level one at what is shown", q.RippleUnit, q.BelowUnit)
 	}
+	warn = append(warn, m.switching(pairs)...)
 	a.Evidence = m.evidence(append(warn, m.growing(red.System)...))
 	return a, nil
 }

@@ -28,7 +28,7 @@ const handTerms = 5
 func (m *Model) Hand() ([]HandLine, error) {
 	subject, ok := m.subject()
 	h := []HandLine{}
-	if !ok {
+	if !ok || m.turns() { // what is done by hand knows one set of numbers
 		return h, nil
 	}
 	if _, err := m.response(); err != nil {

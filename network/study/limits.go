@@ -57,7 +57,7 @@ func (m *Model) Limits() (*Limits, error) {
 		warn = append(warn, w...)
 	}
 	govern(a.Limits)
-	warn = append(warn, m.growing(m.red.System)...)
+	warn = append(warn, m.grows()...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
 }

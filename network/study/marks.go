@@ -28,6 +28,8 @@ func (m *Model) changes(t0, t1 float64, most int) (list []change, cut bool) {
 			list = append(list, change{t, in.Name, in.Name + " " + m.inputValue(in, w.At(t))})
 		}
 	}
+	turned, more := m.switched(t0, t1, most)
+	list, cut = append(list, turned...), cut || more
 	sort.SliceStable(list, func(i, j int) bool { return list[i].at < list[j].at })
 	if len(list) > most {
 		return list[:most], true

@@ -75,6 +75,9 @@ func (m *Model) At(given []quantity.Value) []casefile.Diagnostic {
 			return append(ds, m.Case.Explain(err)...)
 		}
 	}
+	if err := m.turn(v); err != nil {
+		return append(ds, m.Case.Explain(err)...)
+	}
 	q := &m.Case.Questions
 	m.par.StartCycle = q.Start == casefile.StartCycle
 	if q.Start == casefile.StartLevel {
@@ -231,8 +234,8 @@ func settled(sys *laplace.System) float64 {
 	return 1
 }
 
-// flowOf is the flow of a part from its first end, or what a held node is
-// supplied with. A part of several branches, such as a wall, is read at its first.
+// flowOf is the flow of a part from its first end, what a held node is supplied
+// with, or what a source delivers. A part of several branches, such as a wall, is read at its first.
 func (m *Model) flowOf(part string) (f *network.FlowTerm, domain string, err error) {
 	for _, b := range m.Net.Branches() {
 		if m.partOf(b.Ref) != part {
@@ -247,6 +250,11 @@ func (m *Model) flowOf(part string) (f *network.FlowTerm, domain string, err err
 	}
 	if id, ok := m.Case.Node(part); ok && m.Net.Node(id).Held {
 		return &network.FlowTerm{Kind: network.SupplyFlow, Node: id, Sign: 1}, m.at(id).domain, nil
+	}
+	for _, in := range m.Net.Inputs() {
+		if !in.Held && in.Name == part {
+			return &network.FlowTerm{Kind: network.SourceFlow, Input: in.ID, Sign: 1}, m.at(in.Node).domain, nil
+		}
 	}
 	return nil, "", fmt.Errorf("%q has no flow of its own to show", part)
 }

@@ -111,6 +111,9 @@ func (m *Model) growing(sys *laplace.System) []Warning {
 // shares notes by each mode what it carries of each rise.
 func shares(a *Poles) {
 	for _, t := range a.Transfers {
+		if t.About != "" && t.About != aboutStart {
+			continue // the modes are those of the start
+		}
 		for _, p := range t.Poles {
 			if p.Share == nil {
 				continue

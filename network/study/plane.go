@@ -52,7 +52,7 @@ func (m *Model) pick(number int) ([]pair, []*laplace.Transfer, []Warning, error)
 	}
 	list := make([]*laplace.Transfer, len(pairs))
 	for i, p := range pairs {
-		if list[i], err = red.System.Transfer(int(p.in.ID), p.show.out); err != nil {
+		if list[i], err = m.transferOf(red, p); err != nil {
 			return nil, nil, nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
 		}
 	}

@@ -20,6 +20,8 @@ type pair struct {
 	in   network.InputView
 	show shown
 	from string // the SI unit in which the input swings
+
+	about *float64 // s; the network just after that time; nil: just before t = 0
 }
 
 // Poles answers for each [[transfer]] or, without any, for each input and each
@@ -38,11 +40,12 @@ func (m *Model) Poles() (*Poles, error) {
 	}
 	a := &Poles{Title: m.Case.Title, Transfers: []Transfer{}, Modes: m.modes(red.System)}
 	for _, p := range pairs {
-		h, err := red.System.Transfer(int(p.in.ID), p.show.out)
+		h, err := m.transferOf(red, p)
 		if err != nil {
 			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
 		}
 		t := m.transfer(p, h)
+		t.About = m.aboutWords(p)
 		switch s, err := h.Step(); {
 		case err != nil:
 			warn = append(warn, Warning{"no-step-measures", p.in.Name + " to " + p.show.name + ": " + err.Error()})
@@ -58,6 +61,7 @@ func (m *Model) Poles() (*Poles, error) {
 		}
 	}
 	shares(a)
+	warn = append(warn, m.switching(pairs)...)
 	warn = append(warn, m.growing(red.System)...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
@@ -81,7 +85,11 @@ func (m *Model) pairs() ([]pair, []Warning, error) {
 			if !ok {
 				return nil, nil, fmt.Errorf("transfer from %q: not a source or held node", t.From)
 			}
-			list = append(list, pair{in, w, m.swingUnit(in)})
+			p := pair{in: in, show: w, from: m.swingUnit(in)}
+			if t.HasAbout {
+				p.about = &m.val.Num[t.About]
+			}
+			list = append(list, p)
 		}
 		return list, nil, nil
 	}
@@ -95,7 +103,7 @@ func (m *Model) pairs() ([]pair, []Warning, error) {
 				return list, []Warning{{"transfers-left-out", fmt.Sprintf("only the first %d transfer functions are shown: name those wanted in [[transfer]]", mostPairs)}}, nil
 			}
 			if !(in.Held && w.name == in.Name) {
-				list = append(list, pair{in, w, m.swingUnit(in)})
+				list = append(list, pair{in: in, show: w, from: m.swingUnit(in)})
 			}
 		}
 	}

@@ -12,7 +12,7 @@ import (
 func (m *Model) evidence(warn []Warning) Evidence {
 	all := []Warning{}
 	seen := map[Warning]bool{}
-	for _, list := range [][]Warning{warn, m.startWarnings(), m.dubious()} {
+	for _, list := range [][]Warning{warn, m.startWarnings(), m.dubious(), m.vacuum()} {
 		for _, w := range list {
 			if !seen[w] {
 				seen[w] = true
@@ -30,6 +30,9 @@ func (m *Model) linear() string {
 		what, over = "resistances, compliances and inertances", "flow, pressure or time"
 	} else if len(d) > 1 {
 		what, over = "resistances, capacities and gains", "temperature, pressure, flow or time"
+	}
+	if m.turns() {
+		return "linear between its steps: " + what + " change in the steps stated, and not with " + strings.TrimSuffix(over, " or time") + "; valid as far as those numbers are"
 	}
 	return "linear: " + what + " do not change with " + over + "; valid as far as those numbers are"
 }
@@ -98,6 +101,9 @@ func (m *Model) steadyStart() bool {
 
 // startWarnings looks for a load that the start state already contains.
 func (m *Model) startWarnings() []Warning {
+	if m.par.StartCycle && !m.repeats() {
+		return []Warning{{"nothing-repeats", "start = \"cycle\", but nothing repeats for ever: the case starts at the steady state"}}
+	}
 	if !m.steadyStart() {
 		return nil
 	}

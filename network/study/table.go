@@ -49,7 +49,7 @@ func (m *Model) Tables() (*Tables, error) {
 		a.Tables = append(a.Tables, tab)
 		warn = append(warn, w...)
 	}
-	warn = append(warn, m.growing(m.red.System)...)
+	warn = append(warn, m.grows()...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
 }

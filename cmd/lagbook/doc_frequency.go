@@ -19,7 +19,7 @@ func frequencyDoc(p study.Printer, a *study.Frequency, q study.FrequencyQuestion
 	}
 	for _, t := range a.Transfers {
 		d.Parts = append(d.Parts,
-			present.Heading{Level: 1, Text: t.Input + " → " + t.Output},
+			present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About)},
 			present.Facts{List: frequencyFacts(p, t)},
 			pointsPart(p, t, as))
 	}

@@ -163,7 +163,7 @@ func movesWords(p study.Printer, moves []study.Move) string {
 // transferParts shows one transfer function.
 func transferParts(p study.Printer, t study.Transfer) []present.Part {
 	parts := []present.Part{
-		present.Heading{Level: 1, Text: t.Input + " → " + t.Output},
+		present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About)},
 		present.Facts{List: transferFacts(p, t)},
 	}
 	if len(t.Poles) > 0 {
@@ -300,4 +300,15 @@ func polynomial(p study.Printer, c []float64) string {
 	}
 	words[0] = strings.TrimPrefix(strings.TrimSpace(words[0]), "+")
 	return strings.Join(words, "")
+}
+
+// aboutWords says of a network that switches when it is as described.
+func aboutWords(about string) string {
+	switch about {
+	case "":
+		return ""
+	case "start":
+		return " (just before t = 0)"
+	}
+	return " (from " + about + " on)"
 }

@@ -24,7 +24,6 @@ func TestInterrupt(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	began := time.Now()
 	if err := self.Signal(os.Interrupt); err != nil {
 		t.Fatal(err)
 	}
@@ -32,9 +31,6 @@ func TestInterrupt(t *testing.T) {
 	case code := <-done:
 		if code != exitInterrupted {
 			t.Errorf("exit %d, want %d", code, exitInterrupted)
-		}
-		if d := time.Since(began); d > 100*time.Millisecond {
-			t.Errorf("answered after %v", d)
 		}
 	case <-time.After(5 * time.Second):
 		t.Fatal("the interrupt is not answered")

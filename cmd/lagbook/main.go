@@ -1,5 +1,6 @@
-// Command lagbook reads a case of thermal resistances and capacitances and
-// answers from its poles: how slow, how hot, when, and whether the limits hold.
+// Command lagbook reads a case of thermal or hydraulic resistances, capacitances
+// and inertances and answers from its poles: how slow, how hot, how much pressure,
+// when, and whether the limits hold.
 //
 //	lagbook VERB [CASE.toml] [flags]
 //

@@ -88,7 +88,7 @@ func steady(s string) string {
 
 // Same case, same bytes.
 func TestSameBytes(t *testing.T) {
-	for _, verb := range []string{"demo", "check", "poles", "table", "limits"} {
+	for _, verb := range []string{"demo", "check", "poles", "table", "limits", "cycle"} {
 		_, first, _ := call(t, "", verb, "--format", "json")
 		for range 5 {
 			if _, again, _ := call(t, "", verb, "--format", "json"); again != first {

@@ -29,7 +29,7 @@ func (a *app) root() *cobra.Command {
 	root := &cobra.Command{
 		Use:     "lagbook VERB [CASE.toml] [flags]",
 		Short:   "Answers about thermal and hydraulic networks from their poles",
-		Long:    "lagbook reads a case file of thermal or hydraulic resistances, capacitances and\ninertances, reduces it to transfer functions and answers from the poles: how\nslow, how hot, how much pressure, when, and whether the limits hold. CASE.toml may be - for standard input; without a case\nthe embedded demo is used.",
+		Long:    "lagbook reads a case file of thermal or hydraulic resistances, capacitances and\ninertances, reduces it to transfer functions and answers from the poles: how\nslow, how hot, how much pressure, when, and whether the limits hold. CASE.toml\nmay be - for standard input; without a case the embedded demo is used.",
 		Example: "  lagbook demo",
 		Args:    cobra.ArbitraryArgs,
 		RunE: func(c *cobra.Command, args []string) error {

@@ -2,6 +2,7 @@ package draw
 
 import (
 	"math"
+	"slices"
 
 	"gonum.org/v1/plot/vg"
 
@@ -39,7 +40,7 @@ func Gain(f Format, c *study.FrequencyCurves, p study.Printer) ([]byte, error) {
 		}
 	}
 	low = max(low, high*1e-8) // below there is nothing to read
-	upper.y = logarithmic(low/1.3, high*1.3, 7)
+	upper.y = logarithmic(low/1.3, high*2, 7)
 	title := "gain"
 	if unit != "1" {
 		title += " / " + unit
@@ -64,7 +65,10 @@ func Gain(f Format, c *study.FrequencyCurves, p study.Printer) ([]byte, error) {
 		for k, g := range l.Gain {
 			gain[k] = max(p.In(g, l.Unit, "difference"), low/10)
 		}
-		if end, ok := upper.curve(l.Omega, gain, penOf(i)); ok {
+		switch end, ok := upper.curve(l.Omega, gain, penOf(i)); {
+		case ok && gain[len(gain)-1] < low:
+			upper.leaves(l.Omega, gain, low, names[i], penOf(i))
+		case ok:
 			ends = append(ends, label{text: names[i], from: end, pen: penOf(i)})
 		}
 		if end, ok := lower.curve(l.Omega, l.Phase, penOf(i)); ok {
@@ -76,23 +80,42 @@ func Gain(f Format, c *study.FrequencyCurves, p study.Printer) ([]byte, error) {
 	return s.bytes()
 }
 
-// spoken are periods in s that people name, besides the powers of ten below a second.
-var spoken = []float64{1, 10, 60, 600, 3600, 6 * 3600, 86400, 10 * 86400, 100 * 86400, 365 * 86400, 3650 * 86400}
+// leaves names a curve where it falls out of the panel.
+func (a *panel) leaves(omega, gain []float64, low float64, name string, with pen) {
+	for k, g := range gain {
+		if g < low {
+			a.note(vg.Point{X: min(a.px(omega[k])+6, a.right-a.width(name, small)-4), Y: a.bottom + 7}, name, with.color, 0, 0)
+			return
+		}
+	}
+}
+
+// spoken are periods in s that people name, longest first, besides the powers of ten
+// below a second; between lie those that a short axis has too.
+var (
+	spoken = []float64{3650 * 86400, 365 * 86400, 100 * 86400, 10 * 86400, 86400, 6 * 3600, 3600, 600, 60, 10, 1}
+	filler = []float64{50 * 86400, 20 * 86400, 5 * 86400, 2 * 86400, 12 * 3600, 3 * 3600, 2 * 3600, 1800, 1200, 300, 120, 30, 20, 5, 2}
+)
 
 // periods is a scale of ω, rising to the right, with its ticks at named periods.
 func periods(lo, hi float64, p study.Printer) scale {
 	s := logarithmic(lo, hi, 8)
 	s.ticks = nil
-	add := func(t float64) {
+	list := slices.Clone(spoken)
+	for e := -1; e >= -12; e-- {
+		list = append(list, math.Pow(10, float64(e)))
+	}
+	if hi < 300*lo {
+		list = append(list, filler...)
+		for e := -1; e >= -12; e-- {
+			list = append(list, 2*math.Pow(10, float64(e)), 5*math.Pow(10, float64(e)))
+		}
+	}
+	slices.Sort(list)
+	for _, t := range slices.Backward(list) {
 		if w := 2 * math.Pi / t; w >= lo*(1-1e-9) && w <= hi*(1+1e-9) {
 			s.ticks = append(s.ticks, tick{w, p.Time(t)})
 		}
-	}
-	for i := len(spoken) - 1; i >= 0; i-- {
-		add(spoken[i])
-	}
-	for e := -1; e >= -12; e-- {
-		add(math.Pow(10, float64(e)))
 	}
 	return s
 }
@@ -121,7 +144,7 @@ func (a *panel) hertz(lo, hi float64) {
 func hertzWords(e int) string {
 	third := int(math.Floor(float64(e) / 3))
 	if third < -3 || third > 4 {
-		return "10" + raised(e) + " Hz"
+		return power(1, e) + " Hz"
 	}
 	return []string{"1", "10", "100"}[e-3*third] + " " + []string{"n", "µ", "m", "", "k", "M", "G", "T"}[third+3] + "Hz"
 }

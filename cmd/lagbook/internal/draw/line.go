@@ -64,7 +64,7 @@ func decimate(pts []vg.Point) []vg.Point {
 		}
 		i = j
 	}
-	return straightened(out)
+	return out
 }
 
 // straight is how far a point may lie off the line between its neighbours to be left
@@ -112,7 +112,9 @@ func (p *panel) curve(x, y []float64, with pen) (end vg.Length, ok bool) {
 	for i := range x {
 		pts[i] = p.at(x[i], y[i])
 	}
-	for _, part := range p.clip(decimate(pts)) {
+	pts = decimate(pts)
+	p.drawn = append(p.drawn, pts...)
+	for _, part := range p.clip(straightened(pts)) {
 		if len(part) > 1 {
 			p.line(with.width, with.color, with.dashes, part...)
 		}

@@ -11,6 +11,9 @@ type panel struct {
 	*sheet
 	left, right, bottom, top vg.Length
 	x, y                     scale
+	drawn                    []vg.Point // of the curves, a point in each column at least
+	used                     []box      // taken by words
+	raise                    vg.Length  // of the title above the vertical axis
 }
 
 func (p *panel) at(x, y float64) vg.Point {
@@ -47,7 +50,7 @@ func (p *panel) rules(title string) {
 	}
 	p.line(axisWidth, soft, nil, vg.Point{X: p.left, Y: p.bottom}, vg.Point{X: p.left, Y: p.top})
 	if title != "" {
-		p.write(vg.Point{X: p.left - tickLong, Y: p.top + 5}, title, small, ink, 0, 0)
+		p.write(vg.Point{X: p.left - tickLong, Y: p.top + 5 + p.raise}, title, small, ink, 0, 0)
 	}
 }
 

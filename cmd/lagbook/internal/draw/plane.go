@@ -18,7 +18,7 @@ func Plane(f Format, c *study.Plane, p study.Printer) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	top := s.headline(c.Title, fmt.Sprintf("%s → %s: poles × and zeros ○%s", t.Input, t.Output, w.words())) - 16
+	top := s.headline(c.Title, fmt.Sprintf("%s → %s: poles × and zeros ○%s", t.Input, t.Output, w.words())) - 24
 	a := &panel{sheet: s, left: 52, right: s.Max.X - 16, bottom: 34, top: top}
 	a.x, a.y = w.scales(9, 7)
 	s.fill(color.Gray{0xf2}, vg.Point{X: a.px(0), Y: a.bottom}, vg.Point{X: a.right, Y: a.top})
@@ -63,11 +63,11 @@ func windowOf(t *study.Transfer) planeWindow {
 	if most <= folding*least {
 		return planeWindow{
 			re0: min(1.25*left, -0.4*most), re1: max(1.25*right, 0.35*most),
-			im0: -max(1.2*high, 0.6*most), im1: max(1.2*high, 0.6*most),
+			im0: -max(1.4*high, 0.6*most), im1: max(1.4*high, 0.6*most),
 		}
 	}
 	knee := math.Pow(10, math.Floor(math.Log10(least)))
-	w := planeWindow{re0: -4 * max(-left, knee), re1: 4 * max(right, knee), im1: 4 * max(high, most/4), knee: knee}
+	w := planeWindow{re0: -4 * max(-left, knee), re1: 4 * max(right, knee), im1: 8 * max(high, most/8), knee: knee}
 	if w.re1 < w.im1/100 && right <= 0 {
 		w.re1 = 10 * knee
 	}
@@ -191,27 +191,34 @@ func (a *panel) ringLine(at vg.Point, r, width vg.Length) {
 	a.Stroke(path)
 }
 
-// name writes words near a root where they meet nothing, above (side +1) or below;
-// a line leads to them. Where there is no room they are left out.
+// name writes words near a root where they meet nothing, above (side +1) or below
+// first; a line leads to them. Where there is no room they are left out.
 func (a *panel) name(at vg.Point, words string, taken []box, side vg.Length) []box {
 	w := a.width(words, small)
-	for level := vg.Length(0); level < 12; level++ {
-		y := at.Y + side*(mark+5+level*(small+2.5))
-		low := y
-		if side < 0 {
-			low = y - small
-		}
-		for _, shift := range []vg.Length{-w / 2, -2, -w + 2} {
-			b := box{at.X + shift - 1.5, low - 1, at.X + shift + w + 1.5, low + small + 1}
-			if b.left < a.left+2 || b.right > a.right || b.bottom < a.bottom+2 || b.top > a.top-small-6 || a.occupied(b, taken) {
-				continue
+	for _, s := range []vg.Length{side, -side} {
+		for level := vg.Length(0); level < 12; level++ {
+			y := at.Y + s*(mark+5+level*(small+2.5))
+			low := y
+			if s < 0 {
+				low = y - small
 			}
-			a.line(0.4, soft, nil, vg.Point{X: at.X, Y: at.Y + side*(mark+1)}, vg.Point{X: at.X, Y: y})
-			a.note(vg.Point{X: b.left + 1.5, Y: low + 1}, words, ink, 0, 0)
-			return append(taken, b)
+			for _, shift := range []vg.Length{-w / 2, -2, -w + 2} {
+				b := box{at.X + shift - 1.5, low - 1, at.X + shift + w + 1.5, low + small + 1}
+				if !a.holds(b) || a.occupied(b, taken) {
+					continue
+				}
+				a.line(0.4, soft, nil, vg.Point{X: at.X, Y: at.Y + s*(mark+1)}, vg.Point{X: at.X, Y: y})
+				a.note(vg.Point{X: b.left + 1.5, Y: low + 1}, words, ink, 0, 0)
+				return append(taken, b)
+			}
 		}
 	}
 	return taken
+}
+
+// holds reports whether a box lies inside the panel, clear of the words at its top.
+func (a *panel) holds(b box) bool {
+	return b.left >= a.left+2 && b.right <= a.right && b.bottom >= a.bottom+2 && b.top <= a.top-small-6
 }
 
 func (a *panel) occupied(b box, taken []box) bool {

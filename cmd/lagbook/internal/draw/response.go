@@ -36,6 +36,10 @@ func Response(f Format, c *study.Curves, p study.Printer) ([]byte, error) {
 		a := &panel{sheet: s, left: 48, right: s.Max.X - right, x: x}
 		a.top = top - vg.Length(k)*each - 8
 		a.bottom = top - vg.Length(k+1)*each + 12
+		if k == 0 && len(c.Changes) > 0 {
+			a.raise = small + 2 // a row for the words of the changes
+			a.top -= a.raise
+		}
 		last := k == len(groups)-1
 		if last {
 			a.bottom = 30
@@ -145,11 +149,11 @@ func (a *panel) response(c *study.Curves, g group, p study.Printer, room vg.Leng
 	}
 	lo, hi, far := withLimits(c, g, in, lo, hi)
 	lo, hi = padded(lo, hi)
-	a.y = linear(lo, hi, int(max(2, (a.top-a.bottom)/32)), ordinary)
+	a.y = linear(lo, hi, int(max(2, (a.top-a.bottom)/26)), ordinary)
 	a.rules(quantityWord(g.unit, g.kind) + " / " + p.Unit(g.unit, g.kind))
 	for _, l := range c.Limits {
 		if l.Unit == g.unit && l.Kind == g.kind && !far[l.Name] {
-			a.limit(l, in(l.Level), p)
+			a.limit(l, in(l.Level))
 		}
 	}
 	var names []label
@@ -164,6 +168,11 @@ func (a *panel) response(c *study.Curves, g group, p study.Printer, room vg.Leng
 		}
 	}
 	a.labels(names, room)
+	for _, l := range c.Limits {
+		if l.Unit == g.unit && l.Kind == g.kind && !far[l.Name] {
+			a.limitName(l, in(l.Level), limitWords(l, p))
+		}
+	}
 	a.farLimits(c, far, p)
 }
 
@@ -199,9 +208,8 @@ const (
 	hatchSize  = vg.Length(4)
 )
 
-// limit draws a level, hatched on the side that is forbidden, with its words on the
-// other.
-func (a *panel) limit(l study.CurveLimit, level float64, p study.Printer) {
+// limit draws a level, hatched on the side that is forbidden.
+func (a *panel) limit(l study.CurveLimit, level float64) {
 	from, to := max(a.px(l.From), a.left), min(a.px(l.To), a.right)
 	y := a.py(level)
 	var rule []vg.Length
@@ -209,19 +217,59 @@ func (a *panel) limit(l study.CurveLimit, level float64, p study.Printer) {
 		rule = []vg.Length{2, 2}
 	}
 	a.line(0.9, ink, rule, vg.Point{X: from, Y: y}, vg.Point{X: to, Y: y})
+	a.used = append(a.used, box{from, y - 1, to, y + 1})
 	if l.Side != 0 {
 		rise := hatchSize * vg.Length(l.Side)
 		for x := from; x+hatchSize <= to; x += hatchPitch {
 			a.line(0.5, ink, nil, vg.Point{X: x, Y: y}, vg.Point{X: x + hatchSize, Y: y + rise})
 		}
+		a.used = append(a.used, box{from, y + min(0, rise), to, y + max(0, rise)})
 	}
-	words := limitWords(l, p)
-	at := vg.Point{X: from + 4, Y: y - 3}
-	side := 1.0 // words hang below
+}
+
+// limitName writes what a level is where its words cross the fewest curves: along
+// the line, first on the side that is allowed.
+func (a *panel) limitName(l study.CurveLimit, level float64, words string) {
+	from, to := max(a.px(l.From), a.left), min(a.px(l.To), a.right)
+	w, y := a.width(words, small), a.py(level)
+	below, above := y-3-small, y+hatchSize+2.5
 	if l.Side < 0 {
-		at.Y, side = y+3, 0
+		below, above = y-hatchSize-3-small, y+3
 	}
-	a.note(at, a.fit(words, small, to-from), ink, 0, side)
+	sides := []vg.Length{below, above}
+	if l.Side < 0 {
+		sides = []vg.Length{above, below}
+	}
+	best, least := box{}, -1
+	for _, low := range sides {
+		for x := from + 4; x <= max(from+4, to-w-2); x += 12 {
+			b := box{x - 1, low - 1, x + w + 1, low + small + 1}
+			if n := a.crossings(b); (least < 0 || n < least) && b.bottom > a.bottom && b.top < a.top+2 {
+				best, least = b, n
+			}
+		}
+	}
+	if least < 0 {
+		return
+	}
+	a.used = append(a.used, best)
+	a.write(vg.Point{X: best.left + 1, Y: best.bottom + 2}, words, small, ink, 0, 0)
+}
+
+// crossings counts what lies in a box.
+func (a *panel) crossings(b box) int {
+	n := 0
+	for _, p := range a.drawn {
+		if p.X > b.left && p.X < b.right && p.Y > b.bottom-1 && p.Y < b.top+1 {
+			n++
+		}
+	}
+	for _, u := range a.used {
+		if b.meets(u) {
+			n += 1000
+		}
+	}
+	return n
 }
 
 // farLimits says where limits lie that would leave the curves no room.
@@ -241,18 +289,17 @@ func (a *panel) farLimits(c *study.Curves, far map[string]bool, p study.Printer)
 	}
 }
 
-// changes marks the jumps of the inputs; the top panel carries their words where
+// changes marks the jumps of the inputs; over the top panel stand their words where
 // there is room.
 func (a *panel) changes(c *study.Curves, words bool) {
 	end := vg.Length(-1000)
 	for _, ch := range c.Changes {
-		x := a.px(ch.At)
-		if x < a.left-0.1 || x > a.right+0.1 {
-			continue
+		x := max(a.px(max(ch.At, c.From)), a.left)
+		if ch.At > c.From && x <= a.right {
+			a.line(0.5, soft, []vg.Length{1, 2}, vg.Point{X: x, Y: a.bottom}, vg.Point{X: x, Y: a.top})
 		}
-		a.line(0.5, soft, []vg.Length{1, 2}, vg.Point{X: x, Y: a.bottom}, vg.Point{X: x, Y: a.top})
 		w := a.width(ch.Text, small-1)
-		if words && x > end+4 && x+w <= a.right+40 && x > a.left+60 {
+		if words && x >= end+4 && x+w <= a.right+50 {
 			a.write(vg.Point{X: x, Y: a.top + 4}, ch.Text, small-1, soft, 0, 0)
 			end = x + w
 		}

@@ -1,7 +1,9 @@
 package draw
 
 import (
+	"cmp"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -62,18 +64,14 @@ func timeSteps(unit string) []float64 {
 
 // decimal writes a number with the decimals that its step has.
 func decimal(v, step float64) string {
+	if math.Abs(v) < 1e-9*step {
+		return "0"
+	}
 	if a := max(math.Abs(v), step); a >= 1e6 || step < 1e-5 {
-		s := strconv.FormatFloat(v, 'g', 6, 64)
-		if v != 0 && math.Abs(v) < 1e-9*step {
-			s = "0"
-		}
-		return minus(s)
+		return minus(strconv.FormatFloat(v, 'g', 6, 64))
 	}
 	places := max(0, int(math.Ceil(-math.Log10(step)-1e-9)))
 	s := strconv.FormatFloat(v, 'f', places, 64)
-	if strings.Trim(s, "-0.") == "" {
-		s = strings.TrimPrefix(s, "-")
-	}
 	return minus(s)
 }
 
@@ -110,21 +108,7 @@ func power(k float64, e int) string {
 	if e >= -3 && e <= 4 {
 		return strconv.FormatFloat(k*math.Pow(10, float64(e)), 'f', max(0, -e), 64)
 	}
-	s := "10" + raised(e)
-	if k != 1 {
-		s = strconv.FormatFloat(k, 'f', 0, 64) + "·" + s
-	}
-	return s
-}
-
-// raised writes an exponent.
-func raised(e int) string {
-	return strings.Map(func(r rune) rune {
-		if r == '-' {
-			return '⁻'
-		}
-		return []rune("⁰¹²³⁴⁵⁶⁷⁸⁹")[r-'0']
-	}, strconv.Itoa(e))
+	return strconv.FormatFloat(k, 'f', 0, 64) + "e" + strconv.Itoa(e) // as in tables: not every typeface has raised signs
 }
 
 // folded is a scale through 0 from lo to hi, logarithmic beyond ±knee and linear
@@ -160,6 +144,7 @@ func folded(lo, hi, knee float64, most int) scale {
 			break
 		}
 	}
+	slices.SortFunc(s.ticks, func(a, b tick) int { return cmp.Compare(a.at, b.at) })
 	return s
 }
 

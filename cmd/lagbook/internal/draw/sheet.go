@@ -9,6 +9,7 @@ import (
 
 	"codeberg.org/go-fonts/liberation/liberationsansregular"
 	"golang.org/x/image/font/opentype"
+	"golang.org/x/image/font/sfnt"
 	"gonum.org/v1/plot/font"
 	"gonum.org/v1/plot/text"
 	"gonum.org/v1/plot/vg"
@@ -49,6 +50,8 @@ type sheet struct {
 	title  string
 	out    vg.CanvasWriterTo
 	fonts  text.Plain
+	face   *opentype.Font
+	buf    sfnt.Buffer
 }
 
 func newSheet(f Format, title string, w, h vg.Length) (*sheet, error) {
@@ -56,7 +59,7 @@ func newSheet(f Format, title string, w, h vg.Length) (*sheet, error) {
 	if err != nil {
 		return nil, fmt.Errorf("the typeface: %w", err)
 	}
-	s := &sheet{format: f, title: title}
+	s := &sheet{format: f, title: title, face: face}
 	s.fonts = text.Plain{Fonts: font.NewCache(font.Collection{{Font: typing, Face: face}})}
 	switch f {
 	case PNG:
@@ -84,7 +87,7 @@ func (s *sheet) bytes() ([]byte, error) {
 	if head := strings.Index(svg, "<svg"); head >= 0 {
 		if end := strings.Index(svg[head:], ">"); end >= 0 {
 			end += head + 1
-			svg = `<?xml version="1.0" encoding="UTF-8"?>` + "\n" + svg[head:end] + "\n<title>" + html.EscapeString(s.title) + "</title>" + svg[end:]
+			svg = `<?xml version="1.0" encoding="UTF-8"?>` + "\n" + svg[head:end] + "\n<title>" + html.EscapeString(s.printable(s.title)) + "</title>" + svg[end:]
 		}
 	}
 	return []byte(svg), nil
@@ -97,7 +100,10 @@ func (s *sheet) fill(c color.Color, from, to vg.Point) {
 // write puts one line of text at p: ax and ay say which part of it lies there, from 0
 // (left, bottom) to 1 (right, top).
 func (s *sheet) write(p vg.Point, words string, size vg.Length, c color.Color, ax, ay float64) {
-	s.FillText(s.style(size, c, ax, ay), p, printable(words))
+	if ay == 0.5 {
+		p.Y += 0.07 * size // the middle of figures and capitals, not of the line
+	}
+	s.FillText(s.style(size, c, ax, ay), p, s.printable(words))
 }
 
 func (s *sheet) style(size vg.Length, c color.Color, ax, ay float64) draw.TextStyle {
@@ -109,7 +115,7 @@ func (s *sheet) style(size vg.Length, c color.Color, ax, ay float64) draw.TextSt
 
 // width returns the length of a line of text.
 func (s *sheet) width(words string, size vg.Length) vg.Length {
-	return s.style(size, ink, 0, 0).Width(printable(words))
+	return s.style(size, ink, 0, 0).Width(s.printable(words))
 }
 
 // fit shortens words to a length.
@@ -124,14 +130,18 @@ func (s *sheet) fit(words string, size, room vg.Length) string {
 	return string(r) + "…"
 }
 
-// printable keeps a text on one line and free of what XML does not hold.
-func printable(words string) string {
+// printable keeps a text on one line and free of what XML does not hold. What the
+// typeface lacks shows as a box in a PNG; an SVG leaves it to the viewer's typefaces.
+func (s *sheet) printable(words string) string {
 	return strings.Map(func(r rune) rune {
 		switch {
 		case r < 0x20, 0x7f <= r && r <= 0x9f:
 			return ' '
 		case r == 0xfffe, r == 0xffff, 0x202a <= r && r <= 0x202e, 0x2066 <= r && r <= 0x2069:
-			return 0xfffd
+			r = 0xfffd
+		}
+		if i, err := s.face.GlyphIndex(&s.buf, r); s.format == PNG && (err != nil || i == 0) {
+			return '□'
 		}
 		return r
 	}, strings.ToValidUTF8(words, "\ufffd"))

@@ -6,17 +6,15 @@ import (
 	"image/color"
 	"math"
 	"slices"
+	"strconv"
 
 	"gonum.org/v1/plot/vg"
 
 	"lagbook/network/study"
 )
 
-// dots of the map: across, and up in its upper half, which the lower mirrors.
-const (
-	mapAcross = 720
-	mapUp     = 220
-)
+// mapAcross is how many dots the map has across.
+const mapAcross = 720
 
 // bands is about how many steps of grey a map has.
 const bands = 10
@@ -30,10 +28,10 @@ func Surface(f Format, c *study.Plane, p study.Printer) ([]byte, error) {
 	if err != nil {
 		return nil, err
 	}
-	top := s.headline(c.Title, fmt.Sprintf("%s → %s: |H(s)|, poles × and zeros ○%s", t.Input, t.Output, w.words())) - 16
+	top := s.headline(c.Title, fmt.Sprintf("%s → %s: |H(s)|, poles × and zeros ○%s", t.Input, t.Output, w.words())) - 24
 	a := &panel{sheet: s, left: 52, right: s.Max.X - 70, bottom: 34, top: top}
 	a.x, a.y = w.scales(8, 7)
-	m := sampled(c, w, p)
+	m := sampled(c, w, p, int(math.Round(mapAcross*float64((a.top-a.bottom)/(a.right-a.left))/2)))
 	a.DrawImage(vg.Rectangle{Min: vg.Point{X: a.left, Y: a.bottom}, Max: vg.Point{X: a.right, Y: a.top}}, m.image())
 	a.rulesOver("Im s / (rad/s)")
 	a.floor("Re s / (1/s)", true)
@@ -69,14 +67,15 @@ type relief struct {
 	count       int
 }
 
-// sampled takes |H| over the upper half of the window.
-func sampled(c *study.Plane, w planeWindow, p study.Printer) *relief {
-	re, im := make([]float64, mapAcross), make([]float64, mapUp)
+// sampled takes |H| over the upper half of the window, up dots high, which the lower
+// half mirrors.
+func sampled(c *study.Plane, w planeWindow, p study.Printer, up int) *relief {
+	re, im := make([]float64, mapAcross), make([]float64, up)
 	for i := range re {
 		re[i] = w.number((float64(i)+0.5)/mapAcross, w.re0, w.re1)
 	}
 	for j := range im {
-		im[j] = w.number(0.5+(float64(j)+0.5)/(2*mapUp), w.im0, w.im1)
+		im[j] = w.number(0.5+(float64(j)+0.5)/float64(2*up), w.im0, w.im1)
 	}
 	m := &relief{rows: c.Magnitude(re, im)}
 	var all []float64
@@ -145,21 +144,24 @@ func (m *relief) image() image.Image {
 	}
 	for k := range m.count { // the line at the edge of band k
 		s := m.shade(k)
-		palette = append(palette, color.RGBA{s.R * 4 / 5, s.G * 4 / 5, s.B * 4 / 5, 0xff})
+		palette = append(palette, color.RGBA{darker(s.R), darker(s.G), darker(s.B), 0xff})
 	}
-	img := image.NewPaletted(image.Rect(0, 0, mapAcross, 2*mapUp), palette)
+	up := len(m.rows)
+	img := image.NewPaletted(image.Rect(0, 0, mapAcross, 2*up), palette)
 	for j, row := range m.rows {
 		for i, v := range row {
 			k := m.band(v)
 			if i+1 < len(row) && m.band(row[i+1]) != k || j+1 < len(m.rows) && m.band(m.rows[j+1][i]) != k {
 				k += m.count
 			}
-			img.SetColorIndex(i, mapUp-1-j, uint8(k))
-			img.SetColorIndex(i, mapUp+j, uint8(k))
+			img.SetColorIndex(i, up-1-j, uint8(k))
+			img.SetColorIndex(i, up+j, uint8(k))
 		}
 	}
 	return img
 }
+
+func darker(c uint8) uint8 { return uint8(int(c) * 3 / 4) }
 
 // key draws the steps with their values.
 func (a *panel) key(m *relief, unit string) {
@@ -190,5 +192,5 @@ func reliefWords(v float64) string {
 	if e >= -3 && e <= 4 {
 		return decimal(math.Pow(10, v), math.Pow(10, e-1))
 	}
-	return decimal(k, 0.1) + "·10" + raised(int(e))
+	return decimal(k, 0.1) + "e" + strconv.Itoa(int(e))
 }

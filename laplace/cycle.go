@@ -55,10 +55,6 @@ func (s *System) Cycle(u []Waveform, base []float64) (*Cycle, error) {
 		}
 		return c, err
 	}
-	if len(s.improper()) > 0 {
-		x, waves := s.withRates(u)
-		return x.Cycle(waves, base)
-	}
 	c := &Cycle{waves: make([]steadyWave, len(u))}
 	var beats []beat
 	for i := range u {

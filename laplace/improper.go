@@ -48,7 +48,7 @@ func (s *System) rateOf(in, out int) float64 {
 func (s *System) withRates(u []Waveform) (*System, []Waveform) {
 	inputs := s.improper()
 	waves := append([]Waveform(nil), u...)
-	x := &System{plant: s.plant, b: append([][]float64(nil), s.b...), c: s.c, poles: s.poles, seats: s.seats}
+	x := &System{plant: s.plant, b: append([][]float64(nil), s.b...), c: s.c, poles: s.poles, seats: s.seats, carry: s.carry}
 	m := *s.modal
 	m.in = append([]vector(nil), m.in...)
 	for _, i := range inputs {

@@ -88,7 +88,7 @@ func (b *Builder) Hold(n NodeID, r Ref) InputID {
 }
 
 // Capacity gives a node a capacity; several on one node add up. On a held node
-// it is legal and changes nothing, because the level is given.
+// it counts only in what must be delivered to hold it (SupplyOf).
 func (b *Builder) Capacity(at NodeID, r Ref) CapacityID {
 	b.need(at)
 	id := CapacityID(len(b.g.capacities))

@@ -173,7 +173,7 @@ func (g *graph) remarks() []Fault {
 		n := NodeID(i)
 		if g.isHeld(n) && len(g.nodes[i].capacities) > 0 {
 			list = append(list, Fault{HeldCapacity, []NodeID{n}, []Ref{g.capacities[g.nodes[i].capacities[0]].ref, g.nodes[i].ref},
-				g.named([]NodeID{n}) + ": is held, so that its capacity changes nothing"})
+				g.named([]NodeID{n}) + ": is held, so that its capacity counts only in what its driver delivers"})
 		}
 	}
 	for _, in := range g.inputs {

@@ -116,6 +116,9 @@ func (n *Network) cycleStart(p *Params) (*StartState, error) {
 	for i := range outs {
 		outs[i] = n.Level(NodeID(i))
 	}
+	for b := range n.g.inertances {
+		outs = append(outs, n.InertanceFlowOf(InertanceID(b)))
+	}
 	r, err := n.Reduce(p, outs)
 	if err != nil {
 		return nil, err
@@ -128,9 +131,12 @@ func (n *Network) cycleStart(p *Params) (*StartState, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &StartState{Levels: make([]float64, len(outs)), Imbalance: make([]float64, len(r.States)), How: CycleStart}
-	for i := range outs {
+	s := &StartState{Levels: make([]float64, len(n.g.nodes)), Imbalance: make([]float64, len(r.States)+len(r.Flows)), How: CycleStart}
+	for i := range s.Levels {
 		s.Levels[i] = c.Left(i, 0)
+	}
+	for i := len(s.Levels); i < len(outs); i++ {
+		s.Flows = append(s.Flows, c.Left(i, 0))
 	}
 	return s, nil
 }

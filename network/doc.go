@@ -5,7 +5,8 @@
 // A node has a level x (a temperature, a pressure). It is one of three kinds:
 //
 //	store     has a capacity C > 0; C·x' is the sum of what flows in
-//	held      its level is an input u(t); a capacity of its own changes nothing
+//	held      its level is an input u(t); a capacity of its own counts only in what its
+//	          driver delivers into it
 //	massless  neither: what flows in sums to zero at every instant
 //
 // Into the balance of a node, positive into the node, go
@@ -14,6 +15,7 @@
 //	one way      W·(x_from − x_to) into to, nothing from from   W ≥ 0, a stream
 //	feedback     K·(x_on − About) into its node                 K of any sign
 //	source       sign·u(t)
+//	inertance    its flow i, a state: L·i' = x_from − x_to − LR·i   L > 0, LR ≥ 0
 //
 // A branch's flow is positive from its first-named end to its second. Numbers
 // are in units of the caller's choice, SI where they come from a case file:
@@ -42,7 +44,17 @@
 // change keeps all its digits: y(t) = y(start) + response to u − u(0⁻) + response
 // to the start's imbalance, which is exactly zero where the start is steady.
 //
-// Not modelled here: inertances, a capacity between two nodes, the flow that the
-// holder of a held node supplies to that node's own capacity, parameters that
-// change with level, or with time otherwise than in steps (Switch), delays.
+// Where inertances meet at massless nodes that no resistance ties to the rest, a
+// joint, their flows sum to what sources bring, and as many of them depend on the
+// others as there are joints: a spanning tree of the graph says which, with whole
+// numbers and no test of size. The others are states, with an inertance matrix where
+// they share a dependent one. A source that changes at a joint pushes the flows at
+// once and makes the joint's level follow its derivative: the level is improper, as is
+// what must be delivered into a held node to hold it where that node stores. Their
+// transfer functions are right, and a response leaves out the impulses at jumps, which
+// laplace.Response.Impulses lists. A loop of inertances without resistance carries a
+// flow round it for ever: its pole is exactly 0.
+//
+// Not modelled here: a capacity between two nodes, parameters that change with level,
+// or with time otherwise than in steps (Switch), delays.
 package network

@@ -9,30 +9,33 @@ import (
 
 // checkDoc is the page of the verb check: everything in SI but levels, which
 // stand in K and in the unit people read.
-func checkDoc(p study.Printer, a *study.Check) present.Doc {
-	d := present.Doc{Title: title(a.Title), Parts: doubts(a.Evidence)}
-	d.Parts = append(d.Parts, nodesParts(p, a.Nodes)...)
-	d.Parts = append(d.Parts, branchesPart(p, a.Branches), inputsPart(a.Inputs))
+func checkDoc(m *study.Model, a *study.Check) present.Doc {
+	p, d := m.Show, newDoc(m.Case)
+	var notes sourceNotes
+	d.Parts = doubts(a.Evidence)
+	d.Parts = append(d.Parts, nodesParts(p, &notes, a.Nodes)...)
+	d.Parts = append(d.Parts, branchesPart(p, &notes, a.Branches), inputsPart(a.Inputs))
 	if len(a.Given) > 0 {
-		d.Parts = append(d.Parts, givenPart(p, a.Given))
+		d.Parts = append(d.Parts, givenPart(p, &notes, a.Given))
 	}
 	d.Parts = append(d.Parts, present.List{Items: a.Notes})
 	if len(a.LeavesOut) > 0 {
 		d.Parts = append(d.Parts, present.Heading{Level: 1, Text: "Left out"}, present.List{Items: a.LeavesOut})
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, notes.parts()...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 
 // nodesParts lists the nodes, those of each domain in a table of their own.
-func nodesParts(p study.Printer, nodes []study.CheckNode) []present.Part {
+func nodesParts(p study.Printer, notes *sourceNotes, nodes []study.CheckNode) []present.Part {
 	var parts []present.Part
 	for _, own := range byDomain(nodes) {
 		caption := "Nodes"
 		if len(own) < len(nodes) {
 			caption += ", " + own[0].Domain
 		}
-		parts = append(parts, nodesPart(p, caption, own))
+		parts = append(parts, nodesPart(p, notes, caption, own))
 	}
 	return parts
 }
@@ -52,12 +55,12 @@ func byDomain(nodes []study.CheckNode) [][]study.CheckNode {
 	return groups
 }
 
-func nodesPart(p study.Printer, caption string, nodes []study.CheckNode) present.Table {
+func nodesPart(p study.Printer, notes *sourceNotes, caption string, nodes []study.CheckNode) present.Table {
 	store, level := nodes[0].Unit, nodes[0].LevelUnit
 	t := present.Table{
 		Caption: caption,
 		Columns: []present.Column{{Head: "node"}, {Head: "kind"}, {Head: "C / " + bracketed(p.Unit(store, "")), Align: present.Point},
-			{Head: head("start", p.Unit(level, "level")), Align: present.Point}, {Head: "how"}, {Head: "source"}},
+			{Head: head("start", p.Unit(level, "level")), Align: present.Point}, {Head: "how, and source"}},
 		FullHead: []string{"node", "kind", "C / " + bracketed(store), head("start", level), "how", "source"},
 	}
 	for _, n := range nodes {
@@ -68,7 +71,7 @@ func nodesPart(p study.Printer, caption string, nodes []study.CheckNode) present
 		if n.Start != nil {
 			start = p.Number(p.In(*n.Start, level, "level"))
 		}
-		t.Rows = append(t.Rows, []string{n.Name, n.Kind, c, start, n.From, n.Source})
+		t.Rows = append(t.Rows, []string{n.Name, n.Kind, c, start, notes.behind(n.From, n.Source)})
 		t.Full = append(t.Full, []string{n.Name, n.Kind, fullOf(n.Capacitance), fullOf(n.Start), n.From, n.Source})
 	}
 	return t
@@ -82,17 +85,44 @@ func bracketed(unit string) string {
 	return unit
 }
 
-func branchesPart(p study.Printer, branches []study.CheckBranch) present.Table {
+// branchesPart lists the parts. What the lines of one part share stands in its
+// first alone, and the two numbers of a rung of a ladder are one line.
+func branchesPart(p study.Printer, notes *sourceNotes, branches []study.CheckBranch) present.Table {
 	t := present.Table{
 		Caption:  "Parts (flow is positive along the arrow)",
-		Columns:  []present.Column{{Head: "part"}, {Head: "name"}, {Head: "from → to"}, {Head: "quantity"}, {Head: "value"}, {Head: "how"}, {Head: "source"}},
+		Columns:  []present.Column{{Head: "part"}, {Head: "name"}, {Head: "from → to"}, {Head: "quantity"}, {Head: "value"}, {Head: "how, and source"}},
 		FullHead: []string{"part", "name", "from", "to", "quantity", "value", "unit", "formula", "numbers", "source"},
 	}
 	for _, b := range branches {
-		t.Rows = append(t.Rows, []string{b.Part, b.Name, arrow(b.From, b.To), strings.TrimSuffix(b.Quantity, " of "+b.Name), p.Value(b.Value, b.Unit, b.Kind), b.How(), b.Source})
 		t.Full = append(t.Full, []string{b.Part, b.Name, b.From, b.To, b.Quantity, full(b.Value), b.Unit, b.Formula, b.Numbers, b.Source})
 	}
+	for i := 0; i < len(branches); i++ {
+		b := branches[i]
+		row := []string{b.Part, b.Name, arrow(b.From, b.To), quantityOf(b), p.Value(b.Value, b.Unit, b.Kind), notes.behind(b.How(), b.Source)}
+		first := i == 0 || branches[i-1].Name != b.Name || branches[i-1].Part != b.Part
+		if !first {
+			row[0], row[1], row[2] = "", "", ""
+			if before := branches[i-1]; before.How() == b.How() && before.Source == b.Source {
+				row[5] = ""
+			}
+		}
+		if i+1 < len(branches) && sameRung(b, branches[i+1]) {
+			i++
+			row[3] += ", " + quantityOf(branches[i])
+			row[4] += ", " + p.Value(branches[i].Value, branches[i].Unit, branches[i].Kind)
+		}
+		t.Rows = append(t.Rows, row)
+	}
 	return t
+}
+
+// quantityOf names a number of a part, which its line names already.
+func quantityOf(b study.CheckBranch) string { return strings.TrimSuffix(b.Quantity, " of "+b.Name) }
+
+// sameRung reports whether two numbers, such as C2 and R2, are of one rung.
+func sameRung(a, b study.CheckBranch) bool {
+	rung := strings.TrimPrefix(a.Quantity, "C")
+	return a.Part == b.Part && a.Name == b.Name && rung != a.Quantity && b.Quantity == "R"+rung && a.Formula == b.Formula && a.Source == b.Source
 }
 
 func arrow(from, to string) string {
@@ -110,14 +140,14 @@ func inputsPart(inputs []study.CheckInput) present.Table {
 	return t
 }
 
-func givenPart(p study.Printer, given []study.CheckGiven) present.Table {
+func givenPart(p study.Printer, notes *sourceNotes, given []study.CheckGiven) present.Table {
 	t := present.Table{
 		Caption:  "Given",
 		Columns:  []present.Column{{Head: "name"}, {Head: "value"}, {Head: "as written"}, {Head: "source"}},
 		FullHead: []string{"name", "value", "unit", "as written", "source"},
 	}
 	for _, g := range given {
-		t.Rows = append(t.Rows, []string{g.Name, p.Value(g.Value, g.Unit, g.Kind), g.Text, g.Source})
+		t.Rows = append(t.Rows, []string{g.Name, p.Value(g.Value, g.Unit, g.Kind), g.Text, notes.cell(g.Source)})
 		t.Full = append(t.Full, []string{g.Name, full(g.Value), g.Unit + kindWord(g.Kind), g.Text, g.Source})
 	}
 	return t

@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"lagbook/cmd/lagbook/internal/present"
+	"lagbook/network/casefile"
 	"lagbook/network/study"
 )
 
@@ -19,13 +20,23 @@ func doubts(e study.Evidence) []present.Part {
 	return parts
 }
 
-// closing are the parts that end every page: the start, the caution.
-func closing(e study.Evidence) []present.Part {
+// closing are the parts that end every page: what is assumed, the caution.
+func closing(c *casefile.Case, e study.Evidence) []present.Part {
 	return []present.Part{
 		present.Heading{Level: 1, Text: "Assumed"},
-		present.List{Items: []string{"start: " + e.Start, e.Linear}},
+		present.List{Items: supposed(c, e)},
 		present.Caution{Text: e.Caution},
 	}
+}
+
+// supposed lists what every answer rests on: the start, what does not change,
+// where the data come from.
+func supposed(c *casefile.Case, e study.Evidence) []string {
+	items := []string{"start: " + e.Start, e.Linear}
+	if words := dataWords(c); words != "" {
+		items = append(items, words)
+	}
+	return items
 }
 
 // full writes a number at full precision, as CSV carries it.

@@ -11,7 +11,7 @@ import (
 
 // cycleDoc is the page of the verb cycle.
 func cycleDoc(m *study.Model, a *study.Cycles) present.Doc {
-	d := present.Doc{Title: title(a.Title)}
+	d := newDoc(m.Case)
 	if len(a.Cycles) > 0 {
 		d.Parts = append(d.Parts, present.Facts{List: cycleFacts(m.Show, a.Cycles)})
 	}
@@ -19,7 +19,7 @@ func cycleDoc(m *study.Model, a *study.Cycles) present.Doc {
 	if len(a.Cycles) > 0 {
 		d.Parts = append(d.Parts, cyclePart(m, a.Cycles))
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 

@@ -11,8 +11,9 @@ import (
 )
 
 // frequencyDoc is the page of the verb frequency.
-func frequencyDoc(p study.Printer, a *study.Frequency, q study.FrequencyQuestion) present.Doc {
-	d := present.Doc{Title: title(a.Title), Parts: doubts(a.Evidence)}
+func frequencyDoc(m *study.Model, a *study.Frequency, q study.FrequencyQuestion) present.Doc {
+	p, d := m.Show, newDoc(m.Case)
+	d.Parts = doubts(a.Evidence)
 	as := study.AsPeriod
 	if len(q.At) > 0 {
 		as = q.At[0].As
@@ -23,7 +24,7 @@ func frequencyDoc(p study.Printer, a *study.Frequency, q study.FrequencyQuestion
 			present.Facts{List: frequencyFacts(p, t)},
 			pointsPart(p, t, as))
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 

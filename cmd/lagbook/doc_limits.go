@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"lagbook/cmd/lagbook/internal/present"
@@ -10,8 +11,8 @@ import (
 )
 
 // limitsDoc is the page of the verb limits.
-func limitsDoc(p study.Printer, a *study.Limits) present.Doc {
-	d := present.Doc{Title: title(a.Title)}
+func limitsDoc(m *study.Model, a *study.Limits) present.Doc {
+	p, d := m.Show, newDoc(m.Case)
 	if len(a.Limits) > 0 {
 		d.Parts = append(d.Parts, present.Facts{List: append([]present.Fact{askedLimits(p, a.Limits)}, verdict(a.Limits)...)})
 		d.Parts = append(d.Parts, doubts(a.Evidence)...)
@@ -19,7 +20,7 @@ func limitsDoc(p study.Printer, a *study.Limits) present.Doc {
 	} else {
 		d.Parts = append(d.Parts, doubts(a.Evidence)...)
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 
@@ -111,11 +112,14 @@ func levelWords(p study.Printer, l study.Limit) string {
 	return p.Value(*l.Level, l.LevelUnit, l.Kind)
 }
 
+// wayWords explain a column.
+const wayWords = "Way left: the margin as a share of the way from the start to the level; below zero, the level is passed by so much of that way."
+
 // limitsParts are the table of verdicts and, below it, what more there is to say
 // about some of them.
 func limitsParts(p study.Printer, limits []study.Limit) []present.Part {
 	t := present.Table{
-		Caption: "Limits (way left: the margin as a share of the way from the start to the level)",
+		Caption: "Verdicts",
 		Columns: []present.Column{{Head: "limit"}, {Head: "asked"}, {Head: "came out", Align: present.Right}, {Head: "at", Align: present.Right},
 			{Head: "margin", Align: present.Right}, {Head: "way left", Align: present.Right}, {Head: "met"}},
 		FullHead: []string{"limit", "of", "demand", "level", "level unit", "met", "value", "at / s", "margin", "unit", "percent", "governs",
@@ -135,17 +139,24 @@ func limitsParts(p study.Printer, limits []study.Limit) []present.Part {
 			more = append(more, l.Name+": "+l.Text)
 		}
 	}
-	if more == nil {
-		return []present.Part{t}
+	parts := []present.Part{t}
+	if slices.ContainsFunc(limits, func(l study.Limit) bool { return l.Percent != nil }) {
+		parts = append(parts, present.Paragraph{Text: wayWords})
 	}
-	return []present.Part{t, present.List{Items: more}}
+	if more != nil {
+		parts = append(parts, present.List{Items: more})
+	}
+	return parts
 }
 
-// cameOut prints what a verdict rests on: a value, or the time where a time is asked.
+// cameOut prints what a verdict rests on: a value; or that what was asked came,
+// where the question is when.
 func cameOut(p study.Printer, l study.Limit) string {
 	switch {
 	case l.Unit == "s" && l.At != nil:
-		return p.Time(*l.At)
+		return map[string]string{"reach": "reached", "settle": "settled"}[l.Demand]
+	case l.Unit == "s" && l.Value == nil:
+		return "not in the run"
 	case l.Value == nil:
 		return "–"
 	case l.Unit == "1":
@@ -155,7 +166,7 @@ func cameOut(p study.Printer, l study.Limit) string {
 }
 
 func atWords(p study.Printer, l study.Limit) string {
-	if l.At == nil || l.Unit == "s" {
+	if l.At == nil {
 		return "–"
 	}
 	return p.Time(*l.At)

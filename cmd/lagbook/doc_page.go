@@ -15,7 +15,7 @@ const shareColumns = 2
 // hand, what is assumed, the caution.
 func pageDoc(m *study.Model, a *study.Page) present.Doc {
 	p := m.Show
-	d := present.Doc{Title: title(a.Title)}
+	d := newDoc(m.Case)
 	add := func(parts ...present.Part) { d.Parts = append(d.Parts, parts...) }
 
 	add(present.Facts{List: opening(p, a)})
@@ -24,7 +24,7 @@ func pageDoc(m *study.Model, a *study.Page) present.Doc {
 	add(networkParts(p, &a.Understood)...)
 	add(present.Heading{Level: 1, Text: "How slow"})
 	add(modesPart(p, a.Modes, a.Transfers[:min(shareColumns, len(a.Transfers))]))
-	add(gainsPart(p, a.Transfers))
+	add(gainsParts(p, a.Transfers)...)
 	add(present.Heading{Level: 1, Text: "Against time"})
 	for _, t := range a.Tables {
 		add(tablePart(p, t))
@@ -39,7 +39,7 @@ func pageDoc(m *study.Model, a *study.Page) present.Doc {
 			add(present.Formula{Text: handWords(p, l)})
 		}
 	}
-	add(present.Heading{Level: 1, Text: "Assumed"}, present.List{Items: assumed(a)}, present.Caution{Text: a.Caution})
+	add(present.Heading{Level: 1, Text: "Assumed"}, present.List{Items: assumed(m, a)}, present.Caution{Text: a.Caution})
 	return d
 }
 
@@ -127,13 +127,16 @@ func firstFew(names []string) []string {
 	return append(names[:longList:longList], fmt.Sprintf("%d more", len(names)-longList))
 }
 
-// gainsPart lists gain and settling of each transfer function, a line each.
-func gainsPart(p study.Printer, transfers []study.Transfer) present.Table {
+// gainsParts list gain and step response of each transfer function, a line each,
+// and below what does not fit a cell.
+func gainsParts(p study.Printer, transfers []study.Transfer) []present.Part {
+	right := func(h string) present.Column { return present.Column{Head: h, Align: present.Right} }
 	t := present.Table{
-		Caption:  "Transfer functions",
-		Columns:  []present.Column{{Head: "from → to"}, {Head: "gain"}, {Head: "behaviour"}, {Head: "unit step"}},
+		Caption:  "Transfer functions, and the response to a unit step",
+		Columns:  []present.Column{{Head: "from → to"}, right("gain"), {Head: "behaviour"}, right("rise 10–90 %"), right("within 5 %"), right("within 2 %"), right("overshoot")},
 		FullHead: []string{"from", "to", "gain", "unit", "behaviour", "rise time / s", "within 5 % / s", "within 2 % / s", "overshoot / %"},
 	}
+	var more []string
 	for i, tr := range transfers {
 		m := tr.Step
 		if m == nil {
@@ -143,16 +146,43 @@ func gainsPart(p study.Printer, transfers []study.Transfer) present.Table {
 		if i >= longList {
 			continue
 		}
-		gain, step := "–", stepWords(p, tr)
+		if len(tr.Poles) == 0 {
+			m = &study.Step{} // follows at once: times of 0 s say nothing
+		}
+		gain := "–"
 		if tr.Gain != nil {
 			gain = p.Value(*tr.Gain, tr.Unit, "difference")
 		}
-		t.Rows = append(t.Rows, []string{arrow(tr.Input, tr.Output), gain, tr.Behaviour, step})
+		t.Rows = append(t.Rows, []string{arrow(tr.Input, tr.Output), gain, tr.Behaviour, timeOf(p, m.RiseTime), timeOf(p, m.Settling5), timeOf(p, m.Settling2), overshoot(p, m.Overshoot)})
+		if words := peakWords(p, tr.Unit, m); words != "" {
+			more = append(more, arrow(tr.Input, tr.Output)+": "+words)
+		}
 	}
 	if n := len(transfers) - longList; n > 0 {
 		t.Caption += fmt.Sprintf(" (%d more under the verb poles)", n)
 	}
-	return t
+	if more == nil {
+		return []present.Part{t}
+	}
+	return []present.Part{t, present.List{Items: more}}
+}
+
+// timeOf prints a time that may be absent.
+func timeOf(p study.Printer, t *float64) string {
+	if t == nil {
+		return "–"
+	}
+	return p.Time(*t)
+}
+
+func overshoot(p study.Printer, percent *float64) string {
+	switch {
+	case percent == nil:
+		return "–"
+	case *percent == 0:
+		return "none"
+	}
+	return p.Percent(*percent / 100)
 }
 
 // handWords is one line of the check by hand.
@@ -185,12 +215,8 @@ func offWords(p study.Printer, off float64) string {
 }
 
 // assumed lists what the answer rests on.
-func assumed(a *study.Page) []string {
-	items := []string{
-		"start: " + a.Start,
-		a.Linear,
-	}
-	items = append(items, a.Notes...)
+func assumed(m *study.Model, a *study.Page) []string {
+	items := append(supposed(m.Case, a.Evidence), a.Notes...)
 	if len(a.LeavesOut) > 0 {
 		items = append(items, "left out: "+list(a.LeavesOut))
 	}

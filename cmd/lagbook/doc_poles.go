@@ -15,15 +15,16 @@ import (
 const longList = 24
 
 // polesDoc is the page of the verb poles.
-func polesDoc(p study.Printer, a *study.Poles) present.Doc {
-	d := present.Doc{Title: title(a.Title), Parts: doubts(a.Evidence)}
+func polesDoc(m *study.Model, a *study.Poles) present.Doc {
+	p, d := m.Show, newDoc(m.Case)
+	d.Parts = doubts(a.Evidence)
 	if len(a.Modes) > 0 {
 		d.Parts = append(d.Parts, modesPart(p, a.Modes, nil))
 	}
 	for _, t := range a.Transfers {
 		d.Parts = append(d.Parts, transferParts(p, t)...)
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 
@@ -67,11 +68,13 @@ func modesPart(p study.Printer, modes []study.Mode, of []study.Transfer) present
 }
 
 // dropLast takes the last column from what is read; CSV keeps it.
-func dropLast(t *present.Table) {
-	n := len(t.Columns) - 1
-	t.Columns = t.Columns[:n]
+func dropLast(t *present.Table) { dropColumn(t, len(t.Columns)-1) }
+
+// dropColumn takes a column from what is read; CSV keeps it.
+func dropColumn(t *present.Table, k int) {
+	t.Columns = slices.Delete(t.Columns, k, k+1)
 	for i := range t.Rows {
-		t.Rows[i] = t.Rows[i][:n]
+		t.Rows[i] = slices.Delete(t.Rows[i], k, k+1)
 	}
 }
 
@@ -91,14 +94,33 @@ func slowness(p study.Printer, q study.Pole) string {
 	case q.TimeConstant != nil:
 		return p.Time(*q.TimeConstant)
 	case q.NaturalFrequency != nil:
-		return "swing of " + p.Time(2*math.Pi/math.Abs(q.Im)) + ", ω0 " + p.Number(*q.NaturalFrequency) + " rad/s, ζ " + p.Number(*q.DampingRatio)
+		return "swing of " + p.Time(2*math.Pi/math.Abs(q.Im)) + ", ω0 " + p.Number(*q.NaturalFrequency) + " rad/s, " + dampingWords(p, *q.DampingRatio)
 	}
 	return "never (integrates)"
 }
 
+// dampingWords writes a damping ratio.
+func dampingWords(p study.Printer, zeta float64) string {
+	if zeta == 0 {
+		return "undamped"
+	}
+	return "ζ " + p.Number(zeta)
+}
+
+// shownRe is the real part of a pole as it is read: 0 of one that is undamped.
+func shownRe(q study.Pole) float64 {
+	if q.DampingRatio != nil && *q.DampingRatio == 0 {
+		return 0
+	}
+	return q.Re
+}
+
+// rounding is the share of a complex number below which a part of it is not shown.
+const rounding = 1e-14
+
 // pairWords writes a pole, or both of a pair.
 func pairWords(p study.Printer, q study.Pole) string {
-	s := poleWords(p, q.Re, q.Im, q.Multiplicity)
+	s := poleWords(p, shownRe(q), q.Im, q.Multiplicity)
 	if q.Im > 0 {
 		s = strings.Replace(s, " + ", " ± ", 1)
 	}
@@ -114,8 +136,12 @@ func ofBoth(q study.Pole) float64 {
 }
 
 func poleWords(p study.Printer, re, im float64, multiplicity int) string {
+	if math.Abs(re) < rounding*math.Abs(im) {
+		re = 0
+	}
 	s := p.Number(re)
 	switch {
+	case math.Abs(im) < rounding*math.Abs(re):
 	case im > 0:
 		s += " + " + p.Number(im) + "i"
 	case im < 0:
@@ -187,6 +213,9 @@ func transferFacts(p study.Printer, t study.Transfer) []present.Fact {
 		behaviour = "follows at once"
 	}
 	add("Behaviour", fmt.Sprintf("%s, %s, relative degree %d", behaviour, t.Form, t.RelativeDegree))
+	if len(t.Polynomial) > 0 {
+		add("For large s", "tends to "+polynomial(p, t.Polynomial)+": a step at the input makes an impulse")
+	}
 	if len(t.Zeros) > 0 {
 		add("Zeros / (1/s)", zeroWords(p, t.Zeros))
 	}
@@ -219,7 +248,7 @@ func transferPoles(p study.Printer, t study.Transfer) present.Table {
 			res, rr, ri = poleWords(p, r[0], r[1], 1), full(r[0]), full(r[1])
 		}
 		if i < longList {
-			tab.Rows = append(tab.Rows, []string{poleWords(p, q.Re, q.Im, q.Multiplicity), slowness(p, q), res, share})
+			tab.Rows = append(tab.Rows, []string{poleWords(p, shownRe(q), q.Im, q.Multiplicity), slowness(p, q), res, share})
 		}
 		tab.Full = append(tab.Full, []string{t.Input, t.Output, full(q.Re), full(q.Im), fmt.Sprint(q.Multiplicity), fullOf(q.TimeConstant), fullOf(q.ErrorBound), fullOf(q.Share), rr, ri})
 	}
@@ -256,14 +285,22 @@ func stepWords(p study.Printer, t study.Transfer) string {
 			words = append(words, m.name+p.Time(*m.v))
 		}
 	}
-	switch {
-	case s.Overshoot == nil:
-	case *s.Overshoot == 0:
+	if s.Overshoot != nil && *s.Overshoot == 0 {
 		words = append(words, "no overshoot")
-	case s.PeakTime != nil && s.Peak != nil:
-		words = append(words, fmt.Sprintf("overshoot %s, peak %s at %s", p.Percent(*s.Overshoot/100), p.Value(*s.Peak, t.Unit, "difference"), p.Time(*s.PeakTime)))
-	default:
+	} else if s.Overshoot != nil {
 		words = append(words, "overshoot "+p.Percent(*s.Overshoot/100))
+	}
+	if peak := peakWords(p, t.Unit, s); peak != "" {
+		words = append(words, peak)
+	}
+	return strings.Join(words, ", ")
+}
+
+// peakWords say how far a step response goes over, and the other way.
+func peakWords(p study.Printer, unit string, s *study.Step) string {
+	var words []string
+	if s.Overshoot != nil && *s.Overshoot > 0 && s.PeakTime != nil && s.Peak != nil {
+		words = append(words, "peak "+p.Value(*s.Peak, unit, "difference")+" at "+p.Time(*s.PeakTime))
 	}
 	if s.Undershoot != nil && *s.Undershoot > 0 {
 		words = append(words, "goes the other way first by "+p.Percent(*s.Undershoot/100))
@@ -280,7 +317,7 @@ func polynomial(p study.Printer, c []float64) string {
 		}
 		power := map[bool]string{true: "s"}[k > 0]
 		if k > 1 {
-			power += fmt.Sprintf("^%d", k)
+			power += raised(k)
 		}
 		sign, size := " + ", c[k]
 		if size < 0 {
@@ -301,6 +338,9 @@ func polynomial(p study.Printer, c []float64) string {
 	words[0] = strings.TrimPrefix(strings.TrimSpace(words[0]), "+")
 	return strings.Join(words, "")
 }
+
+// raised writes an exponent, which has one digit here.
+func raised(k int) string { return string([]rune("⁰¹²³⁴⁵⁶⁷⁸⁹")[k]) }
 
 // aboutWords says of a network that switches when it is as described.
 func aboutWords(about string) string {

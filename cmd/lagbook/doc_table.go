@@ -8,12 +8,13 @@ import (
 )
 
 // tablesDoc is the page of the verb table.
-func tablesDoc(p study.Printer, a *study.Tables) present.Doc {
-	d := present.Doc{Title: title(a.Title), Parts: doubts(a.Evidence)}
+func tablesDoc(m *study.Model, a *study.Tables) present.Doc {
+	d := newDoc(m.Case)
+	d.Parts = doubts(a.Evidence)
 	for _, t := range a.Tables {
-		d.Parts = append(d.Parts, tablePart(p, t))
+		d.Parts = append(d.Parts, tablePart(m.Show, t))
 	}
-	d.Parts = append(d.Parts, closing(a.Evidence)...)
+	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 

@@ -44,7 +44,7 @@ func (a *app) frequency() *cobra.Command {
 			if err != nil {
 				return a.failed(m, err)
 			}
-			return a.answer(ans, func() present.Doc { return frequencyDoc(m.Show, ans, q) })
+			return a.answer(ans, func() present.Doc { return frequencyDoc(m, ans, q) })
 		},
 	}
 	c.Flags().StringArrayVar(&f.at, "at", nil, "`FREQUENCY`, period or range of them to answer at; may be repeated")

@@ -23,7 +23,7 @@ func (a *app) limits() *cobra.Command {
 			if err != nil {
 				return a.failed(m, err)
 			}
-			if err := a.answer(ans, func() present.Doc { return limitsDoc(m.Show, ans) }); err != nil {
+			if err := a.answer(ans, func() present.Doc { return limitsDoc(m, ans) }); err != nil {
 				return err
 			}
 			if !ans.Met {

@@ -6,6 +6,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"os"
 	"syscall"
 
 	"lagbook/cmd/lagbook/internal/present"
@@ -22,10 +23,28 @@ func (a *app) answer(answer any, doc func() present.Doc) error {
 		if err := e.Encode(answer); err != nil {
 			return &fault{exitCase, err.Error()}
 		}
-	} else if err := present.Encode(&b, a.format, doc()); err != nil {
-		return &fault{exitCase, err.Error()}
+	} else {
+		d := doc()
+		d.Width = a.columns()
+		if err := present.Encode(&b, a.format, d); err != nil {
+			return &fault{exitCase, err.Error()}
+		}
 	}
 	return a.publish(b.Bytes())
+}
+
+// widestPage is how much of a wide terminal a page uses.
+const widestPage = 160
+
+// columns is the width of a page of text: that of the terminal it is printed
+// on, else 0, the width a file is written in, so that the same case makes the
+// same file wherever it is run.
+func (a *app) columns() int {
+	f, ok := a.out.(*os.File)
+	if !ok || a.file != "" {
+		return 0
+	}
+	return min(terminalWidth(f), widestPage)
 }
 
 // publish writes the finished bytes to where they are wanted.

@@ -23,7 +23,7 @@ func (a *app) poles() *cobra.Command {
 			if err != nil {
 				return a.failed(m, err)
 			}
-			return a.answer(ans, func() present.Doc { return polesDoc(m.Show, ans) })
+			return a.answer(ans, func() present.Doc { return polesDoc(m, ans) })
 		},
 	}
 }

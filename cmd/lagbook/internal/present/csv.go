@@ -8,11 +8,20 @@ import (
 
 // CSV writes the tables of d, and nothing else of it: heads, then rows, at full
 // precision where the table carries it. Several tables are parted by an empty
-// line, each under a record that holds its caption. A document without tables
+// line, each under a record that holds its caption, and where there is a label a
+// record of title and label stands first. A document without tables
 // gives its facts, name and value.
 func CSV(w io.Writer, d Doc) error {
 	out := csv.NewWriter(w)
 	tables := d.tables()
+	if d.Label != "" && len(tables) != 1 { // one table alone stays a table
+		if err := out.WriteAll([][]string{{escapeCSV(d.Title), escapeCSV(d.Label)}}); err != nil {
+			return err
+		}
+		if _, err := io.WriteString(w, "\n"); err != nil {
+			return err
+		}
+	}
 	for i, t := range tables {
 		if i > 0 {
 			out.Flush()

@@ -18,8 +18,10 @@ import (
 // A Doc is one page.
 type Doc struct {
 	Title string
+	About []Fact // who wrote the case, when, which revision: one line under the title
+	Label string // what must be seen before any number, as "invented data"; "" for nothing
 	Lang  string // of the words, as HTML has it; "" is "en"
-	Width int    // columns text is broken at; 0 is 80. Tables are as wide as they are
+	Width int    // columns of a page of text; 0 is 100. Running text stays within 80
 	Parts []Part
 }
 
@@ -85,6 +87,19 @@ type Formula struct{ Text string }
 
 // A Caution closes the page: what the answer is not.
 type Caution struct{ Text string }
+
+// byline is the line under the title: the label between two marks, then who and
+// when; "" where there is nothing to say.
+func byline(d Doc, open, close string, escape func(string) string) string {
+	var words []string
+	if d.Label != "" {
+		words = append(words, open+escape(polish(d.Label))+close)
+	}
+	for _, f := range d.About {
+		words = append(words, escape(polish(f.Name)+nbspText+polish(f.Value)))
+	}
+	return strings.Join(words, escape(" · "))
+}
 
 func (Heading) part()   {}
 func (Paragraph) part() {}

@@ -165,7 +165,7 @@ func TestFold(t *testing.T) {
 		{"ab cd", 5, []string{"ab cd"}},
 		{"日本 語", 4, []string{"日本", "語"}},
 	} {
-		if d := cmp.Diff(c.want, fold(c.s, c.room)); d != "" {
+		if d := cmp.Diff(c.want, fold(c.s, c.room, width)); d != "" {
 			t.Errorf("%q in %d: %s", c.s, c.room, d)
 		}
 	}

@@ -9,12 +9,15 @@ import (
 
 // LaTeX writes d as a document plain pdflatex compiles, with no package beyond
 // those every distribution has. A long table is cut into pieces that fit a
-// page, each under the heads.
+// page, each under the heads; one too wide has its words broken.
 func LaTeX(w io.Writer, d Doc) error {
 	var b bytes.Buffer
 	b.WriteString(preamble)
 	if d.Title != "" {
-		b.WriteString("\\section*{" + escapeLaTeX(d.Title) + "}\n")
+		b.WriteString("\\section*{" + inLaTeX(d.Title) + "}\n")
+	}
+	if line := byline(d, `\textbf{`, "}", escapeLaTeX); line != "" {
+		b.WriteString(line + "\n")
 	}
 	for _, p := range d.Parts {
 		latexPart(&b, p)
@@ -24,43 +27,47 @@ func LaTeX(w io.Writer, d Doc) error {
 	return err
 }
 
-// preamble: T1 for < > | and quotation marks as they are typed. \letter shows
-// by its number what the font does not have.
+// preamble: T1 for < > | and quotation marks as they are typed; margins of 20 mm.
+// \letter shows by its number what the font does not have.
 const preamble = `\documentclass[a4paper,11pt]{article}
 \usepackage[T1]{fontenc}
 \usepackage[utf8]{inputenc}
 \usepackage{textcomp}
+\setlength{\textwidth}{170mm}
+\setlength{\oddsidemargin}{-5.4mm}
+\setlength{\textheight}{247mm}
+\setlength{\topmargin}{-15.4mm}
+\setlength{\headheight}{0pt}
+\setlength{\headsep}{0pt}
+\setlength{\emergencystretch}{4em}
 \setlength{\parindent}{0pt}
 \setlength{\parskip}{6pt}
+\newcommand{\tight}{\setlength{\itemsep}{0pt}\setlength{\parsep}{0pt}\setlength{\parskip}{0pt}}
 \newcommand{\letter}[1]{{\small[U+#1]}}
 \begin{document}
 `
-
-// rowsOnAPage is how many rows of a table fit a page with its heads and a
-// caption.
-const rowsOnAPage = 40
 
 func latexPart(b *bytes.Buffer, p Part) {
 	b.WriteString("\n")
 	switch p := p.(type) {
 	case Heading:
-		b.WriteString("\\" + strings.Repeat("sub", min(max(1, p.Level), 2)) + "section*{" + escapeLaTeX(p.Text) + "}\n")
+		b.WriteString("\\" + strings.Repeat("sub", min(max(1, p.Level), 2)) + "section*{" + inLaTeX(p.Text) + "}\n")
 	case Paragraph:
-		b.WriteString(escapeLaTeX(p.Text) + "\n")
+		b.WriteString(inLaTeX(p.Text) + "\n")
 	case List:
-		latexItems(b, "itemize", len(p.Items), func(i int) string { return "{} " + escapeLaTeX(p.Items[i]) })
+		latexItems(b, "itemize", len(p.Items), func(i int) string { return "{} " + inLaTeX(p.Items[i]) })
 	case Facts:
 		latexItems(b, "description", len(p.List), func(i int) string {
-			return "[{" + escapeLaTeX(p.List[i].Name) + "}] " + escapeLaTeX(p.List[i].Value)
+			return "[{" + inLaTeX(p.List[i].Name) + "}] " + inLaTeX(p.List[i].Value)
 		})
 	case Table:
 		latexTable(b, p)
 	case Warning:
-		b.WriteString("\\textbf{Warning:} " + escapeLaTeX(p.Text) + "\n")
+		b.WriteString("\\textbf{Warning:} " + inLaTeX(p.Text) + "\n")
 	case Formula:
-		b.WriteString("\\begin{quote}\n" + escapeLaTeX(p.Text) + "\n\\end{quote}\n")
+		b.WriteString("\\begin{quote}\\raggedright\n" + inLaTeX(p.Text) + "\n\\end{quote}\n")
 	case Caution:
-		b.WriteString("\\bigskip\\hrule\\medskip\n\\textbf{Caution:} " + escapeLaTeX(p.Text) + "\n")
+		b.WriteString("\\bigskip\\hrule\\medskip\n\\textbf{Caution:} " + inLaTeX(p.Text) + "\n")
 	}
 }
 
@@ -69,48 +76,11 @@ func latexItems(b *bytes.Buffer, kind string, n int, item func(int) string) {
 	if n == 0 {
 		return
 	}
-	b.WriteString("\\begin{" + kind + "}\n")
+	b.WriteString("\\begin{" + kind + "}\\tight\n")
 	for i := range n {
 		b.WriteString("\\item" + item(i) + "\n")
 	}
 	b.WriteString("\\end{" + kind + "}\n")
-}
-
-func latexTable(b *bytes.Buffer, t Table) {
-	if t.Caption != "" {
-		b.WriteString("\\textbf{" + escapeLaTeX(t.Caption) + "}\n\n\\nopagebreak\n")
-	}
-	if len(t.Columns) == 0 {
-		return
-	}
-	heads, rows := t.cells(remark, escapeLaTeX)
-	for first := 0; first == 0 || first < len(rows); first += rowsOnAPage {
-		if first > 0 {
-			b.WriteString("\n")
-		}
-		latexPiece(b, t, heads, rows[first:min(first+rowsOnAPage, len(rows))])
-	}
-}
-
-func latexPiece(b *bytes.Buffer, t Table, heads []string, rows [][]string) {
-	b.WriteString("\\begin{tabular}{@{}")
-	for _, c := range t.Columns {
-		b.WriteByte("lrr"[c.Align])
-	}
-	if t.hasMarks() {
-		b.WriteByte('l')
-	}
-	b.WriteString("@{}}\n\\hline\n" + latexRow(heads) + "\\hline\n")
-	for _, r := range rows {
-		b.WriteString(latexRow(r))
-	}
-	b.WriteString("\\hline\n\\end{tabular}\n")
-}
-
-// latexRow protects a leading bracket, which would be read as an argument of
-// the \\ before it.
-func latexRow(cells []string) string {
-	return "{}" + strings.Join(cells, " & ") + " \\\\\n"
 }
 
 // latexLetters are the characters that mean something to LaTeX, and those of
@@ -124,7 +94,7 @@ var latexLetters = map[rune]string{
 	'°': `\ensuremath{^{\circ}}`, 'µ': `\textmu{}`, 'μ': `\ensuremath{\mu}`, 'Ω': `\ensuremath{\Omega}`, '\u2126': `\textohm{}`, 'Δ': `\ensuremath{\Delta}`, 'Σ': `\ensuremath{\Sigma}`, 'Φ': `\ensuremath{\Phi}`,
 	'α': `\ensuremath{\alpha}`, 'β': `\ensuremath{\beta}`, 'γ': `\ensuremath{\gamma}`, 'δ': `\ensuremath{\delta}`, 'ε': `\ensuremath{\varepsilon}`, 'ζ': `\ensuremath{\zeta}`, 'η': `\ensuremath{\eta}`, 'θ': `\ensuremath{\theta}`, 'λ': `\ensuremath{\lambda}`,
 	'ν': `\ensuremath{\nu}`, 'π': `\ensuremath{\pi}`, 'ρ': `\ensuremath{\rho}`, 'σ': `\ensuremath{\sigma}`, 'τ': `\ensuremath{\tau}`, 'φ': `\ensuremath{\varphi}`, 'ω': `\ensuremath{\omega}`,
-	'·': `\ensuremath{\cdot}`, '⋅': `\ensuremath{\cdot{}}`, '×': `\ensuremath{\times}`, '÷': `\ensuremath{\div}`, '−': `\ensuremath{{-}}`, '±': `\ensuremath{\pm}`, '√': `\ensuremath{\surd}`, '∞': `\ensuremath{\infty}`,
+	'·': `\ensuremath{\cdot}`, '⋅': `\ensuremath{\cdot{}}`, '×': `\ensuremath{\times}`, '÷': `\ensuremath{\div}`, '−': `\ensuremath{-}`, '±': `\ensuremath{\pm}`, '√': `\ensuremath{\surd}`, '∞': `\ensuremath{\infty}`,
 	'≤': `\ensuremath{\leq}`, '≥': `\ensuremath{\geq}`, '≈': `\ensuremath{\approx}`, '≠': `\ensuremath{\neq}`, '→': `\ensuremath{\rightarrow}`, '←': `\ensuremath{\leftarrow}`, '◂': `\ensuremath{\triangleleft}`, '∑': `\ensuremath{\sum}`,
 	'⁰': `\ensuremath{^{0}}`, '¹': `\ensuremath{^{1}}`, '²': `\ensuremath{^{2}}`, '³': `\ensuremath{^{3}}`, '⁴': `\ensuremath{^{4}}`, '⁵': `\ensuremath{^{5}}`, '⁶': `\ensuremath{^{6}}`, '⁷': `\ensuremath{^{7}}`, '⁸': `\ensuremath{^{8}}`, '⁹': `\ensuremath{^{9}}`, '⁻': `\ensuremath{^{-}}`, '⁺': `\ensuremath{^{+}}`,
 	'–': `\textendash{}`, '—': `\textemdash{}`, '…': `\dots{}`, '‰': `\textperthousand{}`, '“': `\textquotedblleft{}`, '”': `\textquotedblright{}`, '‘': `\textquoteleft{}`, '’': `\textquoteright{}`,
@@ -134,9 +104,6 @@ var latexLetters = map[rune]string{
 // stay; what neither they nor latexLetters have is shown by its number. An
 // empty group keeps -- and ,, from becoming one sign.
 func escapeLaTeX(s string) string {
-	if isNumber(s) {
-		return latexNumber(s)
-	}
 	var b strings.Builder
 	last := rune(0)
 	for _, r := range clean(s) {
@@ -155,15 +122,8 @@ func escapeLaTeX(s string) string {
 	return b.String()
 }
 
-// latexNumber sets the sign as a minus and an exponent as a power of ten.
-func latexNumber(s string) string {
-	mantissa, power, ok := strings.Cut(s, "e")
-	out := strings.ReplaceAll(mantissa, "-", `\ensuremath{-}`)
-	if ok {
-		out += `\ensuremath{\times10^{` + power + `}}`
-	}
-	return out
-}
+// inLaTeX makes s stand for itself, its numbers as a page sets them.
+func inLaTeX(s string) string { return escapeLaTeX(polish(s)) }
 
 // europeanLetter: the letters T1 has of Latin-1 and Latin Extended-A that the
 // inputenc of every distribution knows.

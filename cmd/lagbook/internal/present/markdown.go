@@ -13,13 +13,17 @@ import (
 func Markdown(w io.Writer, d Doc) error {
 	var b bytes.Buffer
 	if d.Title != "" {
-		b.WriteString("# " + escapeMarkdown(d.Title) + "\n")
+		b.WriteString("# " + inMarkdown(d.Title) + "\n")
 	}
+	if line := byline(d, "**", "**", inMarkdown); line != "" {
+		b.WriteString("\n" + line + "\n")
+	}
+	tables := drawer{renderer: renderer.NewMarkdown()}
 	for _, p := range d.Parts {
 		if b.Len() > 0 {
 			b.WriteString("\n")
 		}
-		if err := markdownPart(&b, p); err != nil {
+		if err := markdownPart(&b, &tables, p); err != nil {
 			return err
 		}
 	}
@@ -27,42 +31,56 @@ func Markdown(w io.Writer, d Doc) error {
 	return err
 }
 
-func markdownPart(b *bytes.Buffer, p Part) error {
+func markdownPart(b *bytes.Buffer, tables *drawer, p Part) error {
 	switch p := p.(type) {
 	case Heading:
-		b.WriteString(strings.Repeat("#", min(max(1, p.Level)+1, 6)) + " " + escapeMarkdown(p.Text) + "\n")
+		b.WriteString(strings.Repeat("#", min(max(1, p.Level)+1, 6)) + " " + inMarkdown(p.Text) + "\n")
 	case Paragraph:
-		b.WriteString(markdownStart(escapeMarkdown(p.Text)) + "\n")
+		b.WriteString(markdownStart(inMarkdown(p.Text)) + "\n")
 	case List:
 		for _, s := range p.Items { // * and not -: a list behind facts stays a list of its own
-			b.WriteString("* " + markdownStart(escapeMarkdown(s)) + "\n")
+			b.WriteString("* " + markdownStart(inMarkdown(s)) + "\n")
 		}
 	case Facts:
 		for _, f := range p.List {
-			b.WriteString("- **" + escapeMarkdown(f.Name) + "**: " + escapeMarkdown(f.Value) + "\n")
+			b.WriteString("- **" + inMarkdown(f.Name) + "**: " + inMarkdown(f.Value) + "\n")
 		}
 	case Table:
-		return markdownTable(b, p)
+		return markdownTable(b, tables, p)
 	case Warning:
-		b.WriteString("> **Warning:** " + escapeMarkdown(p.Text) + "\n")
+		b.WriteString("> **Warning:** " + inMarkdown(p.Text) + "\n")
 	case Formula:
-		b.WriteString("> " + markdownStart(escapeMarkdown(p.Text)) + "\n")
+		b.WriteString("> " + markdownStart(inMarkdown(p.Text)) + "\n")
 	case Caution:
-		b.WriteString("> **Caution:** " + escapeMarkdown(p.Text) + "\n")
+		b.WriteString("> **Caution:** " + inMarkdown(p.Text) + "\n")
 	}
 	return nil
 }
 
-func markdownTable(b *bytes.Buffer, t Table) error {
+func markdownTable(b *bytes.Buffer, tables *drawer, t Table) error {
 	if t.Caption != "" {
-		b.WriteString("**" + escapeMarkdown(t.Caption) + "**\n\n")
+		b.WriteString("**" + inMarkdown(t.Caption) + "**\n\n")
 	}
 	if len(t.Columns) == 0 {
 		return nil
 	}
-	heads, rows := t.cells(remark, escapeMarkdown)
-	return draw(b, renderer.NewMarkdown(), t.aligns(), heads, rows)
+	g := newGrid(t, remark)
+	for k, h := range g.heads {
+		g.heads[k] = escapeMarkdown(plainSpaces(h))
+	}
+	for _, r := range g.rows {
+		for k, c := range r {
+			r[k] = escapeMarkdown(plainSpaces(c))
+		}
+	}
+	drawn, err := tables.draw(alignments(g.aligns), g.heads, g.rows)
+	b.Write(drawn)
+	return err
 }
+
+// inMarkdown makes s stand for itself, its numbers as a page sets them. Spaces
+// that do not break are left to whoever sets the page.
+func inMarkdown(s string) string { return escapeMarkdown(plainSpaces(polish(s))) }
 
 // markdownSpecial are the characters that may start emphasis, code, links,
 // cells, tags, entities or formulas within a line.

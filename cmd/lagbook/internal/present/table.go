@@ -1,10 +1,12 @@
 package present
 
 import (
-	"io"
+	"bytes"
+	"reflect"
 	"strings"
 
 	"github.com/olekukonko/tablewriter"
+	"github.com/olekukonko/tablewriter/pkg/twcache"
 	"github.com/olekukonko/tablewriter/pkg/twwidth"
 	"github.com/olekukonko/tablewriter/tw"
 )
@@ -50,79 +52,63 @@ func (t Table) mark(row int) string {
 	return ""
 }
 
-// aligns returns one alignment a column, marks included.
-func (t Table) aligns() []tw.Align {
-	var list []tw.Align
-	for _, c := range t.Columns {
-		if c.Align == Left {
-			list = append(list, tw.AlignLeft)
-		} else {
-			list = append(list, tw.AlignRight)
+// alignments are those of the table writer.
+func alignments(list []Align) []tw.Align {
+	out := make([]tw.Align, len(list))
+	for i, a := range list {
+		out[i] = tw.AlignRight
+		if a == Left {
+			out[i] = tw.AlignLeft
 		}
 	}
-	if t.hasMarks() {
-		list = append(list, tw.AlignLeft)
-	}
-	return list
+	return out
 }
 
-// draw hands cells to the table writer with everything off that would change
-// them: it would turn the head "ΔT / mK" into "ΔT / M K", fold long cells, and
-// take the width of a letter from the locale.
-func draw(w io.Writer, r tw.Renderer, aligns []tw.Align, heads []string, rows [][]string, more ...tablewriter.Option) error {
+// A drawer draws the tables of a page with one table writer, which takes half a
+// megabyte of caches to make.
+type drawer struct {
+	renderer tw.Renderer
+	buffer   bytes.Buffer
+	table    *tablewriter.Table
+}
+
+// draw returns cells as the table writer draws them, with everything off that
+// would change them: it would turn the head "ΔT / mK" into "ΔT / M K", fold long
+// cells, and take the width of a letter from the locale. What it returns is
+// valid until the next call.
+func (d *drawer) draw(aligns []tw.Align, heads []string, rows [][]string) ([]byte, error) {
+	d.buffer.Reset()
 	align := tw.CellAlignment{PerColumn: aligns}
-	options := append([]tablewriter.Option{
-		tablewriter.WithRenderer(r),
-		tablewriter.WithEastAsian(tw.Off),
-		tablewriter.WithHeaderAutoFormat(tw.Off),
-		tablewriter.WithRowAutoFormat(tw.Off),
-		tablewriter.WithHeaderAutoWrap(tw.WrapNone),
-		tablewriter.WithRowAutoWrap(tw.WrapNone),
-		tablewriter.WithTrimSpace(tw.Off),
-		tablewriter.WithTrimTab(tw.Off),
-		tablewriter.WithTrimLine(tw.Off),
-		tablewriter.WithHeaderAlignmentConfig(align),
-		tablewriter.WithRowAlignmentConfig(align),
-	}, more...)
-	t := tablewriter.NewTable(w, options...)
-	t.Header(heads)
+	aligned := []tablewriter.Option{tablewriter.WithHeaderAlignmentConfig(align), tablewriter.WithRowAlignmentConfig(align)}
+	if d.table == nil {
+		d.table = tablewriter.NewTable(&d.buffer, append(aligned,
+			tablewriter.WithRenderer(d.renderer),
+			tablewriter.WithStringerCacheCustom(twcache.NewLRU[reflect.Type, reflect.Value](1)), // of no use to cells that are strings
+			tablewriter.WithEastAsian(tw.Off),
+			tablewriter.WithHeaderAutoFormat(tw.Off),
+			tablewriter.WithRowAutoFormat(tw.Off),
+			tablewriter.WithHeaderAutoWrap(tw.WrapNone),
+			tablewriter.WithRowAutoWrap(tw.WrapNone),
+			tablewriter.WithTrimSpace(tw.Off),
+			tablewriter.WithTrimTab(tw.Off),
+			tablewriter.WithTrimLine(tw.Off))...)
+	} else {
+		d.table.Reset()
+		d.table.Options(aligned...)
+	}
+	d.table.Header(heads)
 	for _, r := range rows {
-		if err := t.Append(r); err != nil {
-			return err
+		if err := d.table.Append(r); err != nil {
+			return nil, err
 		}
 	}
-	return t.Render()
+	err := d.table.Render()
+	return d.buffer.Bytes(), err
 }
 
 // width is how many columns of a terminal s takes.
 func width(s string) int {
 	return twwidth.WidthWithOptions(s, twwidth.Options{})
-}
-
-// alignPoints pads the cells of column k so that their decimal points stand in
-// one line when the cells are set flush right.
-func alignPoints(rows [][]string, k int) {
-	behind := 0
-	for _, r := range rows {
-		behind = max(behind, tail(r[k]))
-	}
-	for _, r := range rows {
-		if r[k] != "" {
-			r[k] += strings.Repeat(" ", behind-tail(r[k]))
-		}
-	}
-}
-
-// tail is the width of a number from its decimal point on, or from its
-// exponent; 0 for a cell that holds no number.
-func tail(s string) int {
-	if !isNumber(s) {
-		return 0
-	}
-	if i := strings.IndexAny(s, ".e"); i >= 0 {
-		return len(s) - i
-	}
-	return 0
 }
 
 // isNumber reports whether s is a plain decimal number: no hexadecimal, no

@@ -1,0 +1,19 @@
+//go:build unix
+
+package main
+
+import (
+	"os"
+
+	"golang.org/x/sys/unix"
+)
+
+// terminalWidth is the number of columns of the terminal that f is, 0 where it
+// is none or does not say.
+func terminalWidth(f *os.File) int {
+	size, err := unix.IoctlGetWinsize(int(f.Fd()), unix.TIOCGWINSZ)
+	if err != nil {
+		return 0
+	}
+	return int(size.Col)
+}

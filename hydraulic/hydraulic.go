@@ -11,12 +11,22 @@
 //	      p = p(t)                             held node
 //	p_a − p_b = R q                            line of resistance R, Pa·s/m³
 //	p_a − p_b = R q + L dq/dt                  line with inertance L, Pa·s²/m³, in series
+//	p_a − p_b = (R/s) q + L dq/dt              the same with a scale s > 0, which changes in steps
+//	        q = 0                              with a scale of 0: the line is shut
 //	      q = drive(t)                         source, m³/s
 //
 // A compliance is that of an open tank A/(ρg), of a trapped volume of liquid V/K,
 // of a gas V/(n·p); an inertance that of a column of liquid ρ·l/A; a resistance
 // the slope of the drop over the flow. The case states them as numbers or as
 // expressions of its own; they do not change.
+//
+// # Shutting
+//
+// A line is shut at once: the flow of a column is 0 from that instant on, and begins
+// again from 0. The pressure that stops it acts on the shut end alone, for no time,
+// and is in no answer; the same goes for a column whose only way on is a resistance
+// that is shut. Where columns meet at a junction without compliance, those left keep
+// the momentum that they have together, Σ L·q around what is left of the network.
 //
 // # Gauge and absolute
 //
@@ -57,7 +67,7 @@ func Vocabulary() []casefile.Vocabulary {
 			"fluid", "at", "density", "viscosity", "bulk_modulus", "vapour_pressure", "free_gas",
 			"restriction", "check", "outfall", "relief", "pump", "cylinder", "capsule", "pipe", "valve", "tank",
 			"node.elevation", "node.tank", "node.gas", "node.trapped", "node.piston", "node.held.level",
-			"line.pipe", "line.scale", "line.valve", "line.restriction",
+			"line.pipe", "line.valve", "line.restriction",
 		},
 	}}
 }

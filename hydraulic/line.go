@@ -1,12 +1,15 @@
 package hydraulic
 
 import (
+	"fmt"
+
 	"lagbook/network"
 	"lagbook/network/casefile"
 )
 
 // lineTable is [hydraulic.line.NAME]: what liquid flows through between two nodes,
-// p_a − p_b = R·q + L·dq/dt.
+// p_a − p_b = R·q + L·dq/dt, and R/scale in the place of R where it has a scale. A
+// scale of 0 shuts it.
 func lineTable() casefile.Table {
 	start := casefile.Field{Name: "start", Type: casefile.Number, Dim: flow, With: []string{"inertance"},
 		Help: "flow at t = 0, from the first-named end"}
@@ -19,22 +22,26 @@ func lineTable() casefile.Table {
 			positive("resistance", resistance, "R, pressure lost for each m³/s"),
 			positive("inertance", inertance, "L, of a column of liquid: ρ·length/area"),
 			start,
+			casefile.ScaleField("multiplies what it conducts, in steps: R becomes R/scale; 0 shuts it, a valve or a pump that trips, and stops a column at once"),
 		},
 		Build:  buildLine,
 		Derive: deriveLine,
 	}
 }
 
-func buildLine(e *casefile.Element, _ *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
+func buildLine(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	names := e.Names("between") // two, and different: casefile sees to it
 	from, okFrom := e.Node(names[0])
 	to, okTo := e.Node(names[1])
 	if !okFrom || !okTo {
 		return nil, []casefile.Diagnostic{e.Fault("between", "a name that is not a node", "the names of two nodes", "")}
 	}
+	scale, faults := casefile.ScalingOf(e, c, b)
 	switch {
+	case faults != nil:
+		return nil, faults
 	case e.Has("inertance"):
-		return buildColumn(e, b, from, to), nil
+		return buildColumn(e, b, scale, from, to), nil
 	case !e.Has("resistance"):
 		d := e.Fault("", "neither resistance nor inertance is stated", "", "")
 		d.Code, d.Hint = "missing-key", `add resistance = "1 Pa·s/m³", inertance = "1 Pa·s²/m³", or both`
@@ -42,25 +49,18 @@ func buildLine(e *casefile.Element, _ *casefile.Case, b *network.Builder) (casef
 	}
 	id, slot := b.Resistance(e.FullName(), from, to, e.Ref), e.Num("resistance")
 	return func(v casefile.Values, p *network.Params) error {
-		p.G[id] = 1 / v.Num[slot]
+		p.G[id] = scale.Factor(v, p) / v.Num[slot]
 		return nil
 	}, nil
 }
 
 // buildColumn builds a line with inertance, whose flow is a state of its own.
-func buildColumn(e *casefile.Element, b *network.Builder, from, to network.NodeID) casefile.Setter {
+func buildColumn(e *casefile.Element, b *network.Builder, scale casefile.Scaling, from, to network.NodeID) casefile.Setter {
 	id, inert := b.Inertance(e.FullName(), from, to, e.Ref), e.Num("inertance")
 	setters := []casefile.Setter{func(v casefile.Values, p *network.Params) error {
 		p.L[id] = v.Num[inert]
 		return nil
-	}}
-	if e.Has("resistance") {
-		slot := e.Num("resistance")
-		setters = append(setters, func(v casefile.Values, p *network.Params) error {
-			p.LR[id] = v.Num[slot]
-			return nil
-		})
-	}
+	}, scaledColumn(e, scale, id)}
 	if e.Has("start") {
 		slot := e.Num("start")
 		setters = append(setters, func(v casefile.Values, p *network.Params) error {
@@ -69,6 +69,39 @@ func buildColumn(e *casefile.Element, b *network.Builder, from, to network.NodeI
 		})
 	}
 	return together(setters)
+}
+
+// scaledColumn sets the resistance of a line with inertance, and shuts it.
+func scaledColumn(e *casefile.Element, scale casefile.Scaling, id network.InertanceID) casefile.Setter {
+	resists := e.Has("resistance")
+	var slot casefile.Slot
+	if resists {
+		slot = e.Num("resistance")
+	}
+	return func(v casefile.Values, p *network.Params) error {
+		factor := scale.Factor(v, p)
+		p.Shut[id] = factor == 0
+		switch {
+		case !resists:
+			return openOrShut(e, scale.Values(v))
+		case factor == 0:
+			p.LR[id] = v.Num[slot]
+		default:
+			p.LR[id] = v.Num[slot] / factor
+		}
+		return nil
+	}
+}
+
+// openOrShut refuses to throttle a line that has nothing to throttle with.
+func openOrShut(e *casefile.Element, scales []float64) error {
+	for _, s := range scales {
+		if s != 0 && s != 1 {
+			return e.Fault("scale", fmt.Sprintf("a scale of %g on a line with inertance and no resistance", s),
+				"1 for open and 0 for shut: a scale divides the resistance, and here there is none", "")
+		}
+	}
+	return nil
 }
 
 func deriveLine(e *casefile.Element, _ *casefile.Case, v casefile.Values) []casefile.Derivation {

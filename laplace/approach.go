@@ -19,7 +19,7 @@ type Approach struct {
 // Approach returns the difference between r, a response of the same system to the
 // inputs of the cycle from any start, and the cycle.
 func (c *Cycle) Approach(r *Response) (*Approach, error) {
-	if r.s.plant.n != c.r.s.plant.n || len(r.s.b) != len(c.r.s.b) {
+	if r.s.carried() != c.r.s.carried() || len(r.s.b) != len(c.r.s.b) {
 		panic("laplace: a cycle and a response of different systems")
 	}
 	if c.Period == 0 {

@@ -20,8 +20,8 @@ type Cycle struct {
 
 	schedule *Schedule  // nil where nothing switches
 	turns    []Waveform // its waves over one period
-	levels   []float64  // of the stores at t = 0
-	change   *mat.Dense // of the levels in a period, for each unit at its start
+	levels   []float64  // of what is carried over a switch, just before t = 0
+	change   *mat.Dense // of that in a period, for each unit at its start
 }
 
 // Cycle returns the periodic steady state y = base[m] + response to u, the inputs

@@ -133,7 +133,8 @@ func (r *Response) fixedPoint(u []Waveform, c *Cycle) (vector, error) {
 
 // end returns the state at the end of the response.
 func (r *Response) end() vector {
-	p, z := r.piece(len(r.times)-1), r.s.modal.vector()
+	p := r.piece(len(r.times) - 1)
+	z := p.m.vector()
 	p.state(p.length, &z)
 	return z
 }

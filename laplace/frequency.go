@@ -30,7 +30,7 @@ func (w Swing) Period() float64 { return 2 * math.Pi / w.Omega }
 
 // Lag returns in s how long after the input the output swings: the unwound phase as
 // a time. It is negative where the output leads.
-func (w Swing) Lag() float64 { return -w.Unwound / 360 * w.Period() }
+func (w Swing) Lag() float64 { return 0 - w.Unwound/360*w.Period() } // 0, not −0, where it is in step
 
 // A FrequencyResponse evaluates one transfer function along the imaginary axis. It
 // is a workspace: two goroutines must not share one.

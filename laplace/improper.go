@@ -1,6 +1,9 @@
 package laplace
 
-import "sort"
+import (
+	"math"
+	"sort"
+)
 
 // Rate is the wave of the derivative of w for t > 0: jumps of w, in which the
 // derivative is an impulse, leave no trace in it. Before t = 0 it is 0.
@@ -65,6 +68,36 @@ func (s *System) withRates(u []Waveform) (*System, []Waveform) {
 		x.d = append(x.d, d)
 	}
 	return x, waves
+}
+
+// Impulses returns the impulses in output out over a period, 0 ≤ T < Period, ascending
+// in time: At, Max, Mean and everything else of a Cycle leaves them out.
+func (c *Cycle) Impulses(out int) ([]Impulse, error) {
+	if c.rates == nil || c.Period == 0 {
+		return nil, nil
+	}
+	var list []Impulse
+	for k, i := range c.r.input {
+		if i >= len(c.rates.b) || c.rates.rateOf(i, out) == 0 {
+			continue
+		}
+		w, rate := c.r.wave[k], c.rates.rateOf(i, out)
+		// the ends of a period that is continuous may differ by rounding
+		if jump := w.At(0) - w.Left(c.Period); math.Abs(jump) > 1e-12*w.size(c.Period) {
+			list = append(list, Impulse{0, rate * jump, i})
+		}
+		times, err := w.JumpTimes(0, c.Period, MaxBreaks)
+		if err != nil {
+			return nil, err
+		}
+		for _, t := range times {
+			if t > 0 && t < c.Period {
+				list = append(list, Impulse{t, rate * (w.At(t) - w.Left(t)), i})
+			}
+		}
+	}
+	sort.SliceStable(list, func(a, b int) bool { return list[a].T < list[b].T })
+	return list, nil
 }
 
 // Impulses returns the impulses in output out over [0, until], ascending in time:

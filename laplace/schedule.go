@@ -9,10 +9,12 @@ import (
 
 // A Schedule is a system with numbers that switch: piecewise constant waves, and the
 // linear system in force while they have given values. The stores are the same in
-// all systems and keep what they hold over a switch; so are inputs and outputs.
+// all systems and keep what they hold over a switch; so are inputs and outputs. Where
+// a system has fewer stores than another, a Carry says what becomes of the rest.
 //
 // Pick is asked once for each set of values that occurs; every System it hands out
-// must come from NewCarrying, and each Kind is that of deviations from one and the same
+// must come from NewCarrying or, all of them with the same quantities, from
+// NewCarryingOver, and each Kind is that of deviations from one and the same
 // state of the stores and of the inputs.
 type Schedule struct {
 	Waves []Waveform
@@ -46,8 +48,19 @@ func NotStairs(waves []Waveform) int {
 // Respond returns the response from the state and inputs that all kinds are
 // deviations from, for t in [0, until], as System.Respond does: in closed form between
 // the switches, with the stores carried over each. Errors are those, and *SwitchError.
+//
+// Before t = 0 the outputs are those of the system that was in force then.
 func (s *Schedule) Respond(u []Waveform, until float64) (*Response, error) {
-	return s.respondFrom(nil, u, until)
+	r, err := s.respondFrom(nil, u, until)
+	if err != nil {
+		return nil, err
+	}
+	k, err := s.kind(s.Waves, func(w *Waveform) float64 { return w.Before })
+	if err != nil {
+		return nil, &SwitchError{0, err}
+	}
+	r.before = s.kinds[k].Base
+	return r, nil
 }
 
 // RespondFrom is Respond from the state of a cycle of the same systems at t = 0.

@@ -76,7 +76,7 @@ func (s *switchedApproach) cycles(c *Cycle, out int, band float64) (n float64, o
 	}
 	plain := append([]Kind(nil), p.kinds...)
 	for i := range plain {
-		plain[i].Base = make([]float64, len(plain[i].Base))
+		plain[i] = Kind{plain[i].System.ofDifferences(), make([]float64, len(plain[i].Base))}
 	}
 	p.kinds = plain
 	d, err := p.respondFrom(s.off, make([]Waveform, len(c.r.s.b)), periods*c.Period)
@@ -122,7 +122,6 @@ func (c *Cycle) horizon(size, band float64) float64 {
 // sight bounds |output out| over a period in which the levels start within 1.
 func (c *Cycle) sight(out int) float64 {
 	p := &c.r.phases
-	n := p.kinds[0].System.plant.n
 	most, size := 0.0, 1.0
 	for k := range p.at {
 		end := c.Period
@@ -132,7 +131,7 @@ func (c *Cycle) sight(out int) float64 {
 		s, h := p.kinds[p.kind[k]].System, end-p.at[k]
 		most = max(most, size*s.sight(&s.modal.out[out], h))
 		grown := 0.0
-		for i := range n {
+		for i := range s.carry.out {
 			grown = max(grown, s.sight(&s.carry.out[i], h))
 		}
 		size *= max(grown, 1)

@@ -93,36 +93,41 @@ func (s *Schedule) rest(u []Waveform) (*Cycle, error) {
 	return s.kinds[k].System.Cycle(u, s.kinds[k].Base)
 }
 
-// endLevels returns the levels of the stores at the end of a response.
+// endLevels returns what is carried over at the end of a response.
 func (r *Response) endLevels() []float64 {
 	z := r.end()
 	return r.piece(len(r.times) - 1).of.System.held(&z)
 }
 
-// change returns E: by how much the levels differ after a period from x, as E x,
-// when no input acts; row-major.
+// change returns E: by how much what is carried over differs after a period from x,
+// as E x, when no input acts; row-major.
 func (p *phases) change(period float64) *mat.Dense {
-	n := p.kinds[0].System.plant.n
+	n := len(p.kinds[0].System.carry.out)
 	e := mat.NewDense(n, n, nil)
 	for j := range n {
 		x, sum := make([]float64, n), make([]float64, n)
 		x[j] = 1
+		by := func(change []float64) {
+			for i, d := range change {
+				x[i] += d
+				sum[i] += d
+			}
+		}
 		for k := range p.at {
 			end := period
 			if k+1 < len(p.at) {
 				end = p.at[k+1]
 			}
-			for i, d := range p.kinds[p.kind[k]].System.changed(x, end-p.at[k]) {
-				x[i] += d
-				sum[i] += d
-			}
+			s := p.kinds[p.kind[k]].System
+			by(s.carry.entered(x))
+			by(s.changed(x, end-p.at[k]))
 		}
 		e.SetCol(j, sum)
 	}
 	return e
 }
 
-// changed returns by how much the levels change within h when no input acts.
+// changed returns by how much what is carried over changes within h when no input acts.
 func (s *System) changed(x []float64, h float64) []float64 {
 	z := s.hold(x)
 	for k, p := range s.modal.real {
@@ -150,7 +155,7 @@ func (s *System) changed(x []float64, h float64) []float64 {
 			part[i] *= h
 		}
 	}
-	return s.held(&z)
+	return s.carry.seen(&z)
 }
 
 // balance returns the levels x with E x + v = 0, given that every multiplier,

@@ -94,6 +94,7 @@ func (s *System) Transfer(in, out int) (*Transfer, error) {
 	}
 	h.gain(sub, f)
 	h.polynomials(sub, len(c.gone) > 0)
+	h.settleAtRest(sub)
 	h.Behaviour = behaviour(h.Poles)
 	h.weigh()
 	h.warn(c.gone, f)

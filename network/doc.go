@@ -55,6 +55,12 @@
 // laplace.Response.Impulses lists. A loop of inertances without resistance carries a
 // flow round it for ever: its pole is exactly 0.
 //
+// An inertance can be shut (Params.Shut): its state is gone while it is, its flow is 0
+// from the instant on at which it is shut and begins again from 0. The same becomes of
+// those that have no way on but what is shut; where others meet there, they keep the
+// momentum they have together (carry.go). The impulse of level that this takes at the
+// shut end is in no answer.
+//
 // Not modelled here: a capacity between two nodes, parameters that change with level,
 // or with time otherwise than in steps (Switch), delays.
 package network

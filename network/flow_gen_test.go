@@ -102,6 +102,9 @@ func (s *tubes) build(t interface{ Fatal(...any) }) *flowing {
 	for k, n := range s.sources {
 		m.inputs = append(m.inputs, b.Source(fmt.Sprint("q", k), m.nodes[n], 1, network.NoRef))
 	}
+	for range s.switches {
+		b.Switch("switch", network.NoRef)
+	}
 	var err error
 	if m.net, err = b.Build(); err != nil {
 		t.Fatal(err)

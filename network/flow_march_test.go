@@ -46,17 +46,22 @@ func TestFlowMarch(t *testing.T) {
 // march returns nodes and flows at the end, from rest, input i being (i+1)t.
 func (m *flowing) march(t *testing.T, until float64, steps int) []float64 {
 	t.Helper()
-	N := len(m.kinds) + len(m.tubes.tubes)
+	return m.marchOn(make([]float64, len(m.kinds)+len(m.tubes.tubes)), 0, until, steps)
+}
+
+// marchOn marches from x at t0 to t1.
+func (m *flowing) marchOn(x []float64, t0, t1 float64, steps int) []float64 {
+	N := len(x)
 	E, A, b := m.pencil(N)
-	h := until / float64(steps)
+	h := (t1 - t0) / float64(steps)
 	stage, at := [2][2]float64{{5.0 / 12, -1.0 / 12}, {3.0 / 4, 1.0 / 4}}, [2]float64{1.0 / 3, 1}
-	x := make([]float64, N)
+	x = append([]float64(nil), x...)
 	for n := range steps {
 		// E k_p + A (x + h Σ a_pq k_q) = b u(t + c_p h)
 		a, f := make([]complex128, 4*N*N), make([]complex128, 2*N)
 		for p := range 2 {
 			for i := range N {
-				f[p*N+i] = complex(b[i]*(float64(n)+at[p])*h, 0)
+				f[p*N+i] = complex(b[i]*(t0+(float64(n)+at[p])*h), 0)
 				for j := range N {
 					f[p*N+i] -= complex(A[i*N+j]*x[j], 0)
 					for q := range 2 {

@@ -172,3 +172,42 @@ func TestFlowNoSteady(t *testing.T) {
 		t.Errorf("flow %v and joint %v after 10 s, want 10 and 1", y.At(0, 10), y.At(1, 10))
 	}
 }
+
+// Two groups joined by inertances without resistance, the later ones after nodes that
+// have been joined away: each keeps its own level at rest. (They once fell together.)
+func TestJoinedGroupsStayApart(t *testing.T) {
+	b := network.NewBuilder()
+	var id []network.NodeID
+	for _, name := range []string{"main", "main too", "tank", "drain", "second tank"} {
+		id = append(id, b.Node(name, network.NoRef))
+	}
+	b.Hold(id[0], network.NoRef)
+	b.Hold(id[3], network.NoRef)
+	b.Capacity(id[2], network.NoRef)
+	b.Capacity(id[4], network.NoRef)
+	b.Inertance("a", id[0], id[1], network.NoRef)
+	b.Inertance("b", id[2], id[4], network.NoRef)
+	b.Resistance("in", id[1], id[2], network.NoRef)
+	b.Resistance("out", id[4], id[3], network.NoRef)
+	n, err := b.Build()
+	if err != nil {
+		t.Fatal(err)
+	}
+	p := n.NewParams()
+	copy(p.C, []float64{1, 1})
+	copy(p.L, []float64{1, 1})
+	copy(p.G, []float64{1, 3})
+	x, err := n.SteadyState(p, []float64{8, 0})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i, want := range []float64{8, 8, 2, 0, 2} {
+		near(t, n.Name(id[i]), x[i], want, 1e-15, 8)
+	}
+	q, err := n.SteadyFlows(p, []float64{8, 0})
+	if err != nil {
+		t.Fatal(err)
+	}
+	near(t, "a", q[0], 6, 1e-15, 8)
+	near(t, "b", q[1], 6, 1e-15, 8)
+}

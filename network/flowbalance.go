@@ -140,6 +140,13 @@ func (c *flowStart) misfit(b InertanceID, follows float64) error {
 		": start is " + number(c.p.StartFlow[b]) + ", and the flows stated at its joint make it " + number(follows)}}}
 }
 
+// notShut is the fault of a stated flow through what is shut.
+func (c *flowStart) notShut(b InertanceID) error {
+	v := c.n.g.inertances[b]
+	return &ParamFault{List: []Fault{{StartConflict, []NodeID{v.from}, []Ref{v.ref}, "inertance " + strconv.Quote(v.name) +
+		": start is " + number(c.p.StartFlow[b]) + ", and it is shut just before t = 0"}}}
+}
+
 // unattained fills Unattained where feedbacks could make the network unstable. A
 // network without them never gains energy.
 func (c *flowStart) unattained() error {
@@ -151,7 +158,7 @@ func (c *flowStart) unattained() error {
 	if !active || c.p.HasAllStart {
 		return nil
 	}
-	r := &Reduction{net: n, e: c.e, flows: c.f}
+	r := &Reduction{net: n, whole: n, e: c.e, flows: c.f}
 	r.realiseFlows(c.p)
 	sys, err := newSystem(r.Realisation)
 	if err != nil {

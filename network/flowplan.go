@@ -15,7 +15,8 @@ package network
 //
 // where j are the free flows, q the sources that lead into joints, and N and M hold
 // 1, −1 and 0, found by walking the tree: nothing is judged by size (cut-sets: Bryant
-// 1959; tree of what determines first).
+// 1959; tree of what determines first). The flow of an inertance that is shut is 0:
+// neither does it depend on others nor is it free.
 type flowPlan struct {
 	joint []bool  // by position < massless: the node that stands for its joint
 	group []int   // joint of each node; −1
@@ -64,7 +65,7 @@ func (f *flowPlan) choose(g *graph, order []InertanceID) {
 	place := make([]int, len(f.ends))
 	f.free = nil
 	for b := range f.ends {
-		if !tree[b] {
+		if !tree[b] && !g.inertances[b].shut() {
 			place[b] = len(f.free)
 			f.free = append(f.free, InertanceID(b))
 		}
@@ -72,6 +73,9 @@ func (f *flowPlan) choose(g *graph, order []InertanceID) {
 	f.n, f.m = make([][]float64, len(f.ends)), make([][]float64, len(f.ends))
 	for t := range f.ends {
 		f.n[t], f.m[t] = make([]float64, len(f.free)), make([]float64, len(g.inputs))
+		if g.inertances[t].shut() {
+			continue
+		}
 		if !tree[t] {
 			f.n[t][place[t]] = 1
 			continue

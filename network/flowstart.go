@@ -63,7 +63,7 @@ func (c *flowStart) lacking() (faults []SteadyFault) {
 	direct := make([]bool, len(n.g.nodes)) // held nodes with an inertance between them whose flow is not stated
 	for b, v := range n.g.inertances {
 		switch k := n.islandOf(v); {
-		case c.p.HasStartFlow[b]:
+		case c.p.HasStartFlow[b], v.shut():
 		case k < 0:
 			direct[v.from], direct[v.to] = true, true
 		case stores[k] == 0:
@@ -146,6 +146,10 @@ func (c *flowStart) putFlows() error {
 	for b, v := range n.g.inertances {
 		k := n.islandOf(v)
 		switch {
+		case v.shut():
+			if p.HasStartFlow[b] && p.StartFlow[b] != 0 {
+				return c.notShut(InertanceID(b))
+			}
 		case p.HasStartFlow[b]:
 			i[b], stated = p.StartFlow[b], true
 			if k >= 0 {
@@ -206,7 +210,7 @@ func (c *flowStart) follow() error {
 	var order []InertanceID
 	for _, stated := range [2]bool{false, true} {
 		for b, has := range c.p.HasStartFlow {
-			if has == stated {
+			if has == stated && !n.g.inertances[b].shut() {
 				order = append(order, InertanceID(b))
 			}
 		}
@@ -222,7 +226,7 @@ func (c *flowStart) follow() error {
 		for q, x := range plan.m[b] {
 			add(x * c.u[q])
 		}
-		if c.p.HasStartFlow[b] {
+		if c.p.HasStartFlow[b] && !n.g.inertances[b].shut() {
 			if math.Abs(sum-i[b]) > followTolerance*(size+math.Abs(i[b])) {
 				return c.misfit(InertanceID(b), sum)
 			}

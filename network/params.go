@@ -14,6 +14,7 @@ type Params struct {
 	G            []float64          // by ResistanceID, a conductance; through flow = G·(x_from − x_to); > 0
 	L            []float64          // by InertanceID; L·i' = x_from − x_to − LR·i; > 0
 	LR           []float64          // by InertanceID, a resistance in series with L; ≥ 0
+	Shut         []bool             // by InertanceID: nothing flows, whatever the levels; its flow stops at once where it is shut, and begins from 0
 	W            []float64          // by OneWayID; adds W·(x_from − x_to) to the balance of `to` only; ≥ 0
 	K            []float64          // by FeedbackID; adds K·(x_on − About) to the balance of `into`
 	About        []float64          // by FeedbackID; a level
@@ -28,7 +29,7 @@ type Params struct {
 	Switch       []laplace.Waveform // by SwitchID; piecewise constant
 	Now          []float64          // by SwitchID; the value for which the numbers above are set, just before t = 0 unless Turn says otherwise
 	// Turn returns the numbers for other values of the switches, in parameters of their
-	// own: of them C, G, W, K and About count, everything else is that of p. nil where no
+	// own: of them C, G, LR, Shut, W, K and About count, everything else is that of p. nil where no
 	// switch moves.
 	Turn func(now []float64) (*Params, error)
 }
@@ -54,6 +55,7 @@ func (n *Network) NewParams() *Params {
 		G:            make([]float64, len(g.resistances)),
 		L:            make([]float64, len(g.inertances)),
 		LR:           make([]float64, len(g.inertances)),
+		Shut:         make([]bool, len(g.inertances)),
 		W:            make([]float64, len(g.oneWays)),
 		K:            make([]float64, len(g.feedbacks)),
 		About:        make([]float64, len(g.feedbacks)),
@@ -78,7 +80,7 @@ func (n *Network) NewParams() *Params {
 // Reduce, Start and SteadyState call it first.
 func (n *Network) Check(p *Params) error {
 	if len(p.C) != len(n.g.capacities) || len(p.G) != len(n.g.resistances) ||
-		len(p.L) != len(n.g.inertances) || len(p.LR) != len(p.L) || len(p.StartFlow) != len(p.L) || len(p.HasStartFlow) != len(p.L) ||
+		len(p.L) != len(n.g.inertances) || len(p.LR) != len(p.L) || len(p.Shut) != len(p.L) || len(p.StartFlow) != len(p.L) || len(p.HasStartFlow) != len(p.L) ||
 		len(p.W) != len(n.g.oneWays) || len(p.K) != len(n.g.feedbacks) || len(p.About) != len(p.K) ||
 		len(p.Switch) != len(n.g.switches) || len(p.Now) != len(p.Switch) ||
 		len(p.Wave) != len(n.g.inputs) || len(p.Start) != len(n.g.nodes) || len(p.HasStart) != len(p.Start) {

@@ -21,7 +21,8 @@ type Reduction struct {
 	Flows        []InertanceID       // the inertances whose flows are the states after those of the stores
 	HasImbalance bool
 
-	net     *Network
+	net     *Network // what is in force of whole
+	whole   *Network
 	outs    []Output
 	e       *exchange
 	flows   *flows    // nil where there are no inertances
@@ -40,16 +41,22 @@ type Reduction struct {
 // still answers, and Start and Respond say why.
 //
 // Cost: the elimination of the massless nodes, dense rows for the stores, and what
-// laplace.New does. Nothing of the graph is looked at again, so that it may be
-// called for many sets of numbers. The Params are only read.
+// laplace.New does. Nothing of the graph is looked at again, but where something is
+// shut beside inertances, so that it may be called for many sets of numbers. The
+// Params are only read.
 func (n *Network) Reduce(p *Params, outs []Output) (*Reduction, error) {
 	n.g.checkOutputs(outs)
+	whole := n
+	n, err := n.inForce(p)
+	if err != nil {
+		return nil, err
+	}
 	e, err := n.reduced(p)
 	if err != nil {
 		return nil, err
 	}
 	pl := n.plan
-	r := &Reduction{net: n, outs: outs, e: e, States: pl.order[pl.massless:pl.free:pl.free], weights: make([]weights, len(outs))}
+	r := &Reduction{net: n, whole: whole, outs: outs, e: e, States: pl.order[pl.massless:pl.free:pl.free], weights: make([]weights, len(outs))}
 	if r.flows, err = n.newFlows(e, p); err != nil {
 		return nil, err
 	}

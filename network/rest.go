@@ -65,9 +65,11 @@ func (r *rest) join(p *Params) {
 		}
 		r.nodes[place[k]] = append(r.nodes[place[k]], NodeID(i))
 	}
-	for i := range r.of {
-		r.of[i] = place[root(NodeID(i))]
+	joined := make([]NodeID, len(r.of)) // root still reads of
+	for i := range joined {
+		joined[i] = place[root(NodeID(i))]
 	}
+	r.of = joined
 }
 
 // joined is one node in the place of several: held if one of them is, and under the

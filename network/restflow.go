@@ -10,6 +10,9 @@ func (r *rest) flows(p *Params, u []float64, s *restState) error {
 	pos := r.net.plan.pos
 	lossless := make([]bool, len(r.nodes))
 	for k, b := range r.n.g.inertances {
+		if b.shut() {
+			continue
+		}
 		if p.LR[k] != 0 {
 			from, to := pos[r.of[b.from]], pos[r.of[b.to]]
 			s.flow[k] = s.pt.difference(int(from), int(to)) / p.LR[k]
@@ -116,7 +119,7 @@ func (r *rest) share(p *Params, members []NodeID, net []float64, s *restState) e
 // among lists the inertances without resistance joined to a node.
 func (r *rest) among(p *Params, member NodeID) (list []int) {
 	for k, b := range r.n.g.inertances {
-		if p.LR[k] == 0 && r.of[b.from] == r.of[member] {
+		if p.LR[k] == 0 && !b.shut() && r.of[b.from] == r.of[member] {
 			list = append(list, k)
 		}
 	}
@@ -127,7 +130,7 @@ func (r *rest) among(p *Params, member NodeID) (list []int) {
 // on a way of such from one held node to another: a flow round it goes on for ever.
 func (r *rest) circulating(p *Params) (list []InertanceID) {
 	for k, b := range r.n.g.inertances {
-		if p.LR[k] == 0 && r.loops(p, k, b) {
+		if p.LR[k] == 0 && !b.shut() && r.loops(p, k, b) {
 			list = append(list, InertanceID(k))
 		}
 	}
@@ -171,6 +174,9 @@ func (n *Network) SteadyFlows(p *Params, u []float64) ([]float64, error) {
 
 func (n *Network) steadyFlows(p *Params, u []float64) (levels, flows []float64, err error) {
 	if err := n.Check(p); err != nil {
+		return nil, nil, err
+	}
+	if n, err = n.inForce(p); err != nil {
 		return nil, nil, err
 	}
 	r := n.newRest(p)

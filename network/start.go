@@ -52,6 +52,10 @@ func (n *Network) Start(p *Params) (*StartState, error) {
 	if p.StartCycle {
 		return n.cycleStart(p)
 	}
+	n, err := n.inForce(p)
+	if err != nil {
+		return nil, err
+	}
 	e, err := n.reduced(p)
 	if err != nil {
 		return nil, err
@@ -67,7 +71,7 @@ func (n *Network) Start(p *Params) (*StartState, error) {
 // Reduction and the waveforms and starts of p, see Network.Start.
 func (r *Reduction) Start(p *Params) (*StartState, error) {
 	if p.StartCycle {
-		return r.net.cycleStart(p)
+		return r.whole.cycleStart(p)
 	}
 	return r.net.startOf(p, r.e, r.flows)
 }

@@ -19,7 +19,7 @@ type noted struct {
 
 // Switch adds a number that changes in steps while the network runs, a factor of some
 // branches or the gain of a feedback. What it acts on is the business of Params.Turn;
-// the graph, and with it the stores, stay what they are.
+// the stores stay what they are, but flows of inertances may be stopped and begin again.
 func (b *Builder) Switch(name string, r Ref) SwitchID {
 	b.g.switches = append(b.g.switches, noted{name, r})
 	return SwitchID(len(b.g.switches) - 1)
@@ -47,7 +47,9 @@ func (p *Params) Clone() *Params {
 	for _, v := range []*[]float64{&c.C, &c.G, &c.L, &c.LR, &c.W, &c.K, &c.About, &c.Start, &c.StartFlow, &c.Now} {
 		*v = slices.Clone(*v)
 	}
-	c.HasStart, c.HasStartFlow = slices.Clone(p.HasStart), slices.Clone(p.HasStartFlow)
+	for _, v := range []*[]bool{&c.HasStart, &c.HasStartFlow, &c.Shut} {
+		*v = slices.Clone(*v)
+	}
 	c.Wave, c.Switch = slices.Clone(p.Wave), slices.Clone(p.Switch)
 	return &c
 }
@@ -113,7 +115,7 @@ func (r *Reduction) reference(p *Params) (*StartState, error) {
 // phase reduces the network for the values given of its switches.
 func (d *deviations) phase(now []float64) (laplace.Kind, error) {
 	if slices.Equal(now, d.p.Now) {
-		return d.r.kind(d.start.Imbalance, d.base)
+		return d.r.kind(d.start.Imbalance, d.base, make([]float64, len(d.start.Flows)))
 	}
 	p, err := d.p.Turn(now)
 	if err != nil {
@@ -124,10 +126,11 @@ func (d *deviations) phase(now []float64) (laplace.Kind, error) {
 	for _, id := range d.r.States {
 		p.Start[id], p.HasStart[id] = d.start.Levels[id], true
 	}
-	for _, id := range d.r.Flows {
-		p.StartFlow[id], p.HasStartFlow[id] = d.start.Flows[id], true
+	ref, err := d.beginFlows(p)
+	if err != nil {
+		return laplace.Kind{}, err
 	}
-	r, err := d.r.net.Reduce(p, d.r.outs)
+	r, err := d.r.whole.Reduce(p, d.r.outs)
 	if err != nil {
 		return laplace.Kind{}, err
 	}
@@ -135,16 +138,56 @@ func (d *deviations) phase(now []float64) (laplace.Kind, error) {
 	if err != nil {
 		return laplace.Kind{}, err
 	}
-	return r.kind(e.start.Imbalance, e.base)
+	return r.kind(e.start.Imbalance, e.base, ref)
+}
+
+// beginFlows sets the flows that deviations count from while p is in force: those of
+// the start or, where p stops some, what is left of them. It returns the difference.
+func (d *deviations) beginFlows(p *Params) ([]float64, error) {
+	ref := make([]float64, len(d.start.Flows))
+	if len(ref) == 0 {
+		return ref, nil
+	}
+	copy(p.StartFlow, d.start.Flows)
+	net, err := d.r.whole.inForce(p)
+	if err != nil {
+		return nil, err
+	}
+	if net != d.r.whole {
+		f := &flows{n: net, p: p, plan: net.plan.flows}
+		left, err := f.left(d.start.Flows)
+		if err != nil {
+			return nil, err
+		}
+		copy(p.StartFlow, left)
+	}
+	for b, v := range net.g.inertances {
+		p.HasStartFlow[b] = !v.shut()
+		ref[b] = p.StartFlow[b] - d.start.Flows[b]
+	}
+	return ref, nil
 }
 
 // kind returns the system with the imbalance as its last input, whether it is 0 or not.
-func (r *Reduction) kind(imbalance, base []float64) (laplace.Kind, error) {
+func (r *Reduction) kind(imbalance, base, ref []float64) (laplace.Kind, error) {
 	x, inputs := r.Realisation, len(r.net.g.inputs)
 	x.B = append(x.B[:inputs:inputs], imbalance)
 	x.D = withNone(r.Realisation.D, inputs)
 	x.Rate = withNone(r.Realisation.Rate, inputs)
-	s, err := laplace.NewCarrying(x)
+	for m, w := range r.weights {
+		if w.rate != nil {
+			return laplace.Kind{}, errors.New(strconv.Quote(r.outs[m].Name) + " follows the derivative of an input, which is not answered in a network that switches: do not show it")
+		}
+	}
+	if !r.whole.carries() {
+		s, err := laplace.NewCarrying(x)
+		return laplace.Kind{System: s, Base: base}, err
+	}
+	over, err := r.carry(ref)
+	if err != nil {
+		return laplace.Kind{}, err
+	}
+	s, err := laplace.NewCarryingOver(x, over)
 	return laplace.Kind{System: s, Base: base}, err
 }
 

@@ -40,7 +40,7 @@ func buildImpedance(e *casefile.Element, c *casefile.Case, b *network.Builder) (
 	}
 	cells := ladderOf(e)
 	hot, far, faults := ends(e, c)
-	scale, wrong := scalingOf(e, c, b)
+	scale, wrong := casefile.ScalingOf(e, c, b)
 	if faults = append(faults, wrong...); faults != nil {
 		return nil, faults
 	}
@@ -61,7 +61,7 @@ func buildImpedance(e *casefile.Element, c *casefile.Case, b *network.Builder) (
 		if !l.within(1e-90, 1e90) {
 			return e.Fault("foster", "time constants so close together that no ladder of double precision is equal to them", "", "")
 		}
-		factor := scale.factor(v, p)
+		factor := scale.Factor(v, p)
 		for i := range l.n {
 			p.C[capacities[i]] = l.c[i]
 			p.G[resistances[i]] = factor / l.r[i]

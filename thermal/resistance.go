@@ -47,13 +47,13 @@ func resistanceTable() casefile.Table {
 func buildResistance(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	from, to, faults := ends(e, c)
 	l, more := conductanceLaw(e, c)
-	scale, wrong := scalingOf(e, c, b)
+	scale, wrong := casefile.ScalingOf(e, c, b)
 	if faults = append(append(faults, more...), wrong...); faults != nil {
 		return nil, faults
 	}
 	id := b.Resistance(e.FullName(), from, to, e.Ref)
 	return func(v casefile.Values, p *network.Params) error {
-		p.G[id] = l.value(v) * scale.factor(v, p)
+		p.G[id] = l.value(v) * scale.Factor(v, p)
 		return nil
 	}, nil
 }

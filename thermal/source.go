@@ -80,7 +80,7 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 // perKelvinOf builds drive·(1 + α·(T − at)) as a feedback α·drive beside the drive: one
 // that switches with it, and so must change in steps.
 func perKelvinOf(e *casefile.Element, c *casefile.Case, b *network.Builder, node, on network.NodeID, sign float64) (casefile.Setter, []casefile.Diagnostic) {
-	if d := notInSteps(e, c, "drive", "with per_kelvin it switches a feedback, and the network must be linear between its changes"); d != nil {
+	if d := casefile.NotInSteps(e, c, "drive", "with per_kelvin it switches a feedback, and the network must be linear between its changes"); d != nil {
 		return nil, d
 	}
 	fb, id := b.Feedback(e.FullName()+" per kelvin", node, on, e.Ref), b.Switch(e.FullName(), e.Ref)

@@ -37,7 +37,7 @@ func streamTable() casefile.Table {
 func buildStream(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	rate, faults := rateLaw(e, c)
 	nodes, more := pathNodes(e, c)
-	scale, wrong := scalingOf(e, c, b)
+	scale, wrong := casefile.ScalingOf(e, c, b)
 	faults = append(append(append(faults, more...), solidsInPath(e, c)...), wrong...)
 	if faults != nil {
 		return nil, faults
@@ -53,7 +53,7 @@ func buildStream(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 	}
 	along := passagesOf(e, c, b, nodes)
 	return func(v casefile.Values, p *network.Params) error {
-		w := rate.value(v) * scale.factor(v, p)
+		w := rate.value(v) * scale.Factor(v, p)
 		for _, id := range plain {
 			p.W[id] = w
 		}

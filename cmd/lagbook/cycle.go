@@ -2,6 +2,7 @@ package main
 
 import (
 	"lagbook/cmd/lagbook/internal/present"
+	"lagbook/testdata/demo"
 
 	"github.com/spf13/cobra"
 )
@@ -19,7 +20,7 @@ func (a *app) cycle() *cobra.Command {
 		Example: "  lagbook cycle",
 		Args:    oneCase,
 		RunE: func(_ *cobra.Command, args []string) error {
-			m, err := a.model(args)
+			m, err := a.modelOr(demo.Round, args)
 			if err != nil {
 				return err
 			}

@@ -3,6 +3,7 @@ package main
 import (
 	"lagbook/cmd/lagbook/internal/present"
 	"lagbook/network/study"
+	"lagbook/testdata/demo"
 
 	"github.com/spf13/cobra"
 )
@@ -28,15 +29,15 @@ func (a *app) frequency() *cobra.Command {
 			"them (0.1 Hz..10 kHz), and may be repeated. 1 Hz is 2π rad/s. With --ripple and\n" +
 			"--below: the period up to which a swing of that amplitude at the input stays\n" +
 			"below that level at the output.",
-		Example: "  lagbook frequency --at 1min --at 1..24h --per-decade 4\n" +
-			"  lagbook frequency --ripple 5W --below 0.1K",
+		Example: "  lagbook frequency --at 1min --at 0.1..10Hz --per-decade 4\n" +
+			"  lagbook frequency --ripple 1L/min --below 0.1bar",
 		Args: oneCase,
 		RunE: func(_ *cobra.Command, args []string) error {
 			q, err := f.question()
 			if err != nil {
 				return err
 			}
-			m, err := a.model(args)
+			m, err := a.modelOr(demo.Swing, args)
 			if err != nil {
 				return err
 			}

@@ -23,8 +23,11 @@ const mostBytes = 1<<20 + 1
 
 // model reads, checks and builds the case that args name: a file, "-", or the
 // embedded demo. Diagnostics go to standard error.
-func (a *app) model(args []string) (*study.Model, error) {
-	name, src, dir, err := a.source(args)
+func (a *app) model(args []string) (*study.Model, error) { return a.modelOr(demo.Main, args) }
+
+// modelOr is model for a verb that shows more of another of the embedded cases.
+func (a *app) modelOr(example string, args []string) (*study.Model, error) {
+	name, src, dir, err := a.source(example, args)
 	if err != nil {
 		return nil, &fault{exitCase, err.Error()}
 	}
@@ -59,12 +62,12 @@ func oneCase(c *cobra.Command, args []string) error {
 }
 
 // source returns the text of the case and the directory its files may be read from.
-func (a *app) source(args []string) (name string, src []byte, dir *os.Root, err error) {
+func (a *app) source(example string, args []string) (name string, src []byte, dir *os.Root, err error) {
 	switch {
 	case len(args) == 0:
-		a.note("no case given: this is the embedded demo, %s", demo.Main)
-		src, err = demo.Cases.ReadFile(demo.Main)
-		return demo.Main, src, nil, err
+		a.note("no case given: this is the embedded demo, %s", example)
+		src, err = demo.Cases.ReadFile(example)
+		return example, src, nil, err
 	case args[0] == "-":
 		src, err = io.ReadAll(io.LimitReader(a.in, mostBytes))
 		return "standard input", src, nil, err

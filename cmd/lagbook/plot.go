@@ -9,6 +9,7 @@ import (
 	"lagbook/cmd/lagbook/internal/draw"
 	"lagbook/network/quantity"
 	"lagbook/network/study"
+	"lagbook/testdata/demo"
 
 	"github.com/spf13/cobra"
 )
@@ -38,7 +39,7 @@ func (a *app) plot() *cobra.Command {
 			if err != nil {
 				return err
 			}
-			m, err := a.model(args)
+			m, err := a.modelOr(demo.Swing, args)
 			if err != nil {
 				return err
 			}

@@ -12,14 +12,19 @@ import (
 	"regexp"
 	"strconv"
 	"testing"
+
+	"lagbook/testdata/demo"
 )
 
-// The pictures of the demo are what was last looked at and found good. Numbers may
+// The pictures of the demos are what was last looked at and found good. Numbers may
 // differ by what another processor rounds, far below what is seen.
 func TestPlotGolden(t *testing.T) {
-	for _, what := range []string{"response", "frequency", "plane"} {
+	drive := filepath.Join("..", "..", "testdata", "demo", demo.Main) // over decades, with jumps
+	for what, args := range map[string][]string{
+		"response": nil, "frequency": {"--what", "frequency"}, "plane": {"--what", "plane"}, "start": {drive},
+	} {
 		t.Run(what, func(t *testing.T) {
-			code, got, stderr := call(t, "", "plot", "--quiet", "--what", what)
+			code, got, stderr := call(t, "", append([]string{"plot", "--quiet"}, args...)...)
 			if code != exitDone {
 				t.Fatalf("exit %d: %s", code, stderr)
 			}

@@ -57,7 +57,7 @@ type Pole struct {
 	Im               float64  `json:"im"`
 	Multiplicity     int      `json:"multiplicity"`
 	TimeConstant     *float64 `json:"time_constant,omitempty"` // −1/re of a real pole that is not 0; negative where it grows
-	DampingRatio     *float64 `json:"damping_ratio,omitempty"`
+	DampingRatio     *float64 `json:"damping_ratio,omitempty"` // 0 where re is 0 within its error bound
 	NaturalFrequency *float64 `json:"natural_frequency,omitempty"`
 	ErrorBound       *float64 `json:"error_bound,omitempty"` // radius of the disc that holds the pole, 1/s
 	Share            *float64 `json:"share,omitempty"`       // of the final rise after a step, carried by this pole
@@ -72,6 +72,7 @@ type Zero struct {
 
 // A Transfer is one transfer function. Residues[i][k] is [re, im] of the
 // coefficient of 1/(s−p_i)^(k+1); the polynomials ascend and the denominator is monic.
+// Where the form is improper, the relative degree is negative.
 type Transfer struct {
 	Input          string         `json:"input"`
 	Output         string         `json:"output"`
@@ -86,7 +87,8 @@ type Transfer struct {
 	Residues       [][][2]float64 `json:"residues"`
 	Numerator      []float64      `json:"numerator,omitempty"`
 	Denominator    []float64      `json:"denominator,omitempty"`
-	Behaviour      string         `json:"behaviour,omitempty"` // absent where nothing is stored: the output follows at once
+	Polynomial     []float64      `json:"polynomial,omitempty"` // of an improper transfer function: what it tends to for large s, ascending
+	Behaviour      string         `json:"behaviour,omitempty"`  // absent where nothing is stored: the output follows at once
 	Step           *Step          `json:"step,omitempty"`
 }
 

@@ -191,7 +191,7 @@ func (m *Model) orderNote() string {
 		}
 	}
 	for _, b := range m.Net.Branches() {
-		if b.Kind == network.InertanceBranch {
+		if b.Kind == network.InertanceBranch && !m.par.Shut[b.Index] {
 			count[inertiaWord]++
 		}
 	}

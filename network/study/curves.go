@@ -97,6 +97,7 @@ func (m *Model) Curves(pick int) (*Curves, error) {
 	grid, jumps := m.samples(a)
 	for _, c := range cols {
 		a.Lines = append(a.Lines, sample(resp, c, grid, jumps))
+		warn = append(warn, m.impulseWarning(c, impulsesIn(resp, c.out, a.From, a.To))...)
 	}
 	a.Limits = m.curveLimits(ask, cols, a)
 	before := a.From

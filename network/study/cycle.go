@@ -2,6 +2,7 @@ package study
 
 import (
 	"fmt"
+	"math"
 	"slices"
 
 	"lagbook/laplace"
@@ -110,7 +111,14 @@ func (m *Model) cycle(c *laplace.Cycle, approach *laplace.Approach, w shown) (Cy
 	hi, lo := c.Max(w.out), c.Min(w.out)
 	y := Cycle{Output: w.name, Unit: w.unit, Kind: w.kind, Period: c.Period,
 		Max: hi.Y, MaxAt: hi.T, Min: lo.Y, MinAt: lo.T, Mean: c.Mean(w.out)}
-	var warn []Warning
+	if math.Abs(y.Mean) <= 4*c.Response().Rounding(w.out) {
+		y.Mean = 0 // what it is, as far as its parts are known
+	}
+	impulses, err := c.Impulses(w.out)
+	if err != nil {
+		return y, nil, err
+	}
+	warn := m.impulseWarning(w, gathered(impulses, 0, c.Period))
 	if hi.Capped || lo.Capped {
 		warn = append(warn, Warning{"search-stopped", "the search for the extremes of " + w.name + " was given up: the loads change too often"})
 	}

@@ -16,6 +16,8 @@ func (t *FrequencyTransfer) mark(name string, h *laplace.Transfer, r *laplace.Fr
 	}
 	peak := r.Peak()
 	switch {
+	case h.RelativeDegree < 0:
+		return []Warning{{"improper", name + ": improper, so that the gain grows with the frequency without end; a real part gives way somewhere beyond what is shown"}}
 	case math.IsInf(peak.Gain, 1) && peak.Omega > 0:
 		t.Undamped = markAt(peak.Omega, peak.Gain)
 		return []Warning{{"undamped", name + ": an undamped pole: at its own frequency the swing grows without end, and away from it a swing of its own stays beside the one shown"}}

@@ -122,6 +122,10 @@ func (t *trial) judge() (Limit, []Warning) {
 		v.Text = "cannot be judged: its window lies beyond the run"
 		return v, append(warn, t.warning("beyond-the-run", v.Text))
 	}
+	if p := t.impulses(); len(p) > 0 {
+		v.Text = "cannot be judged: " + t.print.impulseWords(t.show, p) + " lies in its window, a peak without a height that lasts no time"
+		return v, append(warn, t.warning("impulse", v.Text+"; after = … leaves it out"))
+	}
 	switch t.ask.Kind {
 	case casefile.StayBelow, casefile.StayAbove:
 		warn = append(warn, t.stay(&v)...)
@@ -136,6 +140,18 @@ func (t *trial) judge() (Limit, []Warning) {
 		warn = append(warn, t.warning(nothingChanges, t.show.name+" does not change in the window: does its load reach its value before the run begins?"))
 	}
 	return v, warn
+}
+
+// impulses are those in the window that leave nothing to judge: of what is to stay on
+// one side of a level, those towards it.
+func (t *trial) impulses() (list []laplace.Impulse) {
+	for _, p := range impulsesIn(t.resp, t.show.out, t.t0, t.t1) {
+		if t.ask.Kind == casefile.StayBelow && p.Weight < 0 || t.ask.Kind == casefile.StayAbove && p.Weight > 0 {
+			continue
+		}
+		list = append(list, p)
+	}
+	return list
 }
 
 // Codes of warnings that others look for.

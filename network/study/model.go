@@ -3,6 +3,7 @@ package study
 import (
 	"fmt"
 	"math"
+	"math/cmplx"
 
 	"lagbook/laplace"
 	"lagbook/network"
@@ -221,17 +222,22 @@ func (m *Model) runEnd(sys *laplace.System) float64 {
 }
 
 // settled is five of the slowest time constants, three doublings of the slowest
-// growth, or 1 s where there is neither.
+// growth or, where there is neither, five swings of the slowest undamped pair or 1 s.
 func settled(sys *laplace.System) float64 {
+	end := 1.0
 	for _, p := range sys.Poles() {
 		switch re := real(p.P); {
+		case math.Abs(re) <= p.Radius: // at 0 or on the axis: no time constant
+			if w := cmplx.Abs(p.P); w > p.Radius && end == 1 {
+				end = 5 * 2 * math.Pi / w
+			}
 		case re < 0:
 			return 5 / -re
 		case re > 0:
 			return 3 * math.Ln2 / re
 		}
 	}
-	return 1
+	return end
 }
 
 // flowOf is the flow of a part from its first end, what a held node is supplied

@@ -192,6 +192,9 @@ func (m *Model) transfer(p pair, h *laplace.Transfer) Transfer {
 	if h.HasGain {
 		t.Gain = &h.Gain
 	}
+	if h.RelativeDegree < 0 {
+		t.Polynomial = h.Polynomial()
+	}
 	for i, p := range h.Poles {
 		q := pole(p)
 		if i < len(h.Weights) {
@@ -227,7 +230,10 @@ func pole(p laplace.Pole) Pole {
 	switch {
 	case im != 0:
 		w := cmplx.Abs(p.P)
-		zeta := -re / w
+		zeta := 0.0
+		if math.Abs(re) > p.Radius { // else it is on the axis, as far as anyone can tell
+			zeta = -re / w
+		}
 		q.NaturalFrequency, q.DampingRatio = &w, &zeta
 	case re != 0:
 		tau := -1 / re

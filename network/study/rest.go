@@ -71,7 +71,7 @@ func (m *Model) startAtRest() []casefile.Diagnostic {
 // before is the level of a held node just before t = 0.
 func (m *Model) before(n network.NodeView) float64 { return m.par.Wave[n.Input].Before }
 
-// restGroups joins nodes by branches, held ones too, and finds a held node of
+// restGroups joins nodes by branches that are open, held ones too, and finds a held node of
 // each group; apart are two of one group at different levels.
 func (m *Model) restGroups() (group []int, holder map[int]network.NodeID, apart []network.NodeID) {
 	group = make([]int, m.Net.NodeCount())
@@ -86,6 +86,9 @@ func (m *Model) restGroups() (group []int, holder map[int]network.NodeID, apart 
 		return i
 	}
 	for _, b := range m.Net.Branches() {
+		if b.Kind == network.ResistanceBranch && m.par.G[b.Index] == 0 || b.Kind == network.InertanceBranch && m.par.Shut[b.Index] {
+			continue // shut at the start
+		}
 		p, q := root(int(b.From)), root(int(b.To))
 		group[max(p, q)] = min(p, q)
 	}

@@ -12,7 +12,7 @@ import (
 func (m *Model) evidence(warn []Warning) Evidence {
 	all := []Warning{}
 	seen := map[Warning]bool{}
-	for _, list := range [][]Warning{warn, m.startWarnings(), m.dubious(), m.vacuum()} {
+	for _, list := range [][]Warning{warn, m.startWarnings(), m.surges(), m.dubious(), m.vacuum()} {
 		for _, w := range list {
 			if !seen[w] {
 				seen[w] = true
@@ -25,16 +25,25 @@ func (m *Model) evidence(warn []Warning) Evidence {
 
 // linear is what every answer so far rests on.
 func (m *Model) linear() string {
-	what, over := "resistances, capacitances and gains", "temperature or time"
+	what, over := "resistances, capacitances and gains", []string{"temperature"}
 	if d := m.Case.Domains(); len(d) == 1 && m.physicsOf(d[0]).level == "Pa" {
-		what, over = "resistances, compliances and inertances", "flow, pressure or time"
+		what, over = "resistances, compliances and inertances", []string{"flow", "pressure"}
 	} else if len(d) > 1 {
-		what, over = "resistances, capacities and gains", "temperature, pressure, flow or time"
+		what, over = "resistances, capacities and gains", []string{"temperature", "pressure", "flow"}
 	}
 	if m.turns() {
-		return "linear between its steps: " + what + " change in the steps stated, and not with " + strings.TrimSuffix(over, " or time") + "; valid as far as those numbers are"
+		return "linear between its steps: " + what + " change in the steps stated, and not with " + either(over) + "; valid as far as those numbers are"
 	}
-	return "linear: " + what + " do not change with " + over + "; valid as far as those numbers are"
+	return "linear: " + what + " do not change with " + either(append(over, "time")) + "; valid as far as those numbers are"
+}
+
+// either lists alternatives: "flow, pressure or time".
+func either(words []string) string {
+	last := len(words) - 1
+	if last == 0 {
+		return words[0]
+	}
+	return strings.Join(words[:last], ", ") + " or " + words[last]
 }
 
 // startWords says how the initial state is found.

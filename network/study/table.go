@@ -89,6 +89,9 @@ func (m *Model) table(resp *laplace.Response, ask casefile.AskTable, cols []show
 	marks := map[float64][]string{}
 	kinds := map[float64]string{} // of the last mark at an instant
 	lo, hi := times[0], times[len(times)-1]
+	for _, c := range cols {
+		warn = append(warn, m.impulseWarning(c, impulsesIn(resp, c.out, lo, hi))...)
+	}
 	if ask.Jumps {
 		more, cut := m.jumps(lo, hi)
 		times = merge(times, more, m.until)
@@ -98,6 +101,9 @@ func (m *Model) table(resp *laplace.Response, ask casefile.AskTable, cols []show
 	}
 	if ask.Peaks {
 		for _, c := range cols {
+			if len(impulsesIn(resp, c.out, lo, hi)) > 0 {
+				continue // no row is its peak
+			}
 			e := m.extreme(resp, c.out, lo, hi)
 			if e.Capped {
 				warn = append(warn, Warning{"search-stopped", "the search for the extreme of " + c.name + " was given up: the loads change too often"})
@@ -217,6 +223,14 @@ func rows(resp *laplace.Response, times []float64, cols []shown) [][]float64 {
 		}
 	}
 	resp.Table(times, y)
+	for out := range y {
+		still := resp.Rounding(out)
+		for i, v := range y[out] {
+			if math.Abs(v) <= still {
+				y[out][i] = 0 // what it is, as far as its parts are known
+			}
+		}
+	}
 	cells := make([]float64, len(times)*(len(cols)+1))
 	table := make([][]float64, len(times))
 	for i, t := range times {

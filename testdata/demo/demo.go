@@ -6,10 +6,15 @@ package demo
 import "embed"
 
 // Cases are the files, each a case: servo-drive.toml, the one shown first,
-// curing-oven.toml, wash-tank.toml and wash-line.toml.
+// curing-oven.toml, oven-door.toml, wash-tank.toml and wash-line.toml.
 //
 //go:embed *.toml
 var Cases embed.FS
 
-// Main is the name of the case shown first.
-const Main = "servo-drive.toml"
+// Names of cases: Main is shown first, in Round something repeats, in Swing something
+// swings.
+const (
+	Main  = "servo-drive.toml"
+	Round = "oven-door.toml"
+	Swing = "wash-line.toml"
+)

@@ -241,3 +241,15 @@ func TestFrequencyGrid(t *testing.T) {
 }
 
 func dense(rows, cols int, v []float64) *mat.Dense { return mat.NewDense(rows, cols, v) }
+
+// TestLagInStepIsNotMinusZero: below the frequency of an undamped swing the output is in
+// step with the input, and its lag is 0, not −0, which JSON would print.
+func TestLagInStepIsNotMinusZero(t *testing.T) {
+	s, err := FromMatrices(dense(2, 2, []float64{0, 1, -4, 0}), dense(2, 1, []float64{0, 4}), dense(1, 2, []float64{1, 0}), nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if lag := frequencyOf(t, s, 0, 0).At(1).Lag(); lag != 0 || math.Signbit(lag) {
+		t.Errorf("lag %v, want 0", lag)
+	}
+}

@@ -40,6 +40,8 @@ func verdict(limits []study.Limit) []present.Fact {
 	switch {
 	case met == len(limits) && met == 1:
 		answer = "the limit is met"
+	case met == len(limits) && met == 2:
+		answer = "both limits met"
 	case met == len(limits):
 		answer = fmt.Sprintf("all %d limits met", met)
 	case len(limits) == 1:

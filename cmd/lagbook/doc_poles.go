@@ -208,6 +208,10 @@ func transferFacts(p study.Printer, t study.Transfer) []present.Fact {
 	if t.Gain != nil {
 		add("Gain", p.Value(*t.Gain, t.Unit, "difference"))
 	}
+	if t.Gain != nil && *t.Gain == 0 && len(t.Poles) == 0 {
+		add("Behaviour", "identically zero: the input does not act on the output")
+		return facts
+	}
 	behaviour := t.Behaviour
 	if behaviour == "" {
 		behaviour = "follows at once"

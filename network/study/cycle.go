@@ -118,6 +118,9 @@ func (m *Model) cycle(c *laplace.Cycle, approach *laplace.Approach, w shown) (Cy
 	if err != nil {
 		return y, nil, err
 	}
+	if len(impulses) == 0 {
+		y.Mean = min(max(y.Mean, y.Min), y.Max) // no rounding puts it beyond what it is the mean of
+	}
 	warn := m.impulseWarning(w, gathered(impulses, 0, c.Period))
 	if hi.Capped || lo.Capped {
 		warn = append(warn, Warning{"search-stopped", "the search for the extremes of " + w.name + " was given up: the loads change too often"})

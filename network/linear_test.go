@@ -183,7 +183,6 @@ func TestSuiteTransfers(t *testing.T) {
 // gainScale is the sum of the sizes of what a gain is made of: a difference of two
 // levels can have a gain of 0.
 func (m *model) gainScale(t *testing.T, pair *suitePair) float64 {
-	r := m.reduce(t)
 	o := m.outs[m.out(pair.Out)]
 	terms := o.Terms
 	if o.Flow != nil {

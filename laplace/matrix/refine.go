@@ -83,16 +83,16 @@ func (g *eigenblocks) good(tol float64) bool {
 			if !(r <= tol*math.Abs(g.d[at])) {
 				return false
 			}
+		case 2:
+			if !(r <= tol*least2(g.d[at], g.d[at+1], g.d[at+g.m], g.d[at+g.m+1])) {
+				return false
+			}
 		default:
 			p, d := g.block(a)
 			for _, v := range eigenvalues(p, d) {
 				if !(r <= tol*cabs(v)) {
 					return false
 				}
-			}
-		case 2:
-			if !(r <= tol*least2(g.d[at], g.d[at+1], g.d[at+g.m], g.d[at+g.m+1])) {
-				return false
 			}
 		}
 	}

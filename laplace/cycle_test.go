@@ -308,11 +308,11 @@ func TestCycleIsTheLimit(t *testing.T) {
 		for i := range n {
 			a.Set(i, i, -rapid.SampledFrom([]float64{0.3, 0.3, 1, 1.0000001, 5}).Draw(rt, "pole"))
 			for j := range i {
-				a.Set(i, j, rapid.Float64Range(-1, 1).Draw(rt, "coupling"))
+				a.Set(i, j, ordinary(-1, 1).Draw(rt, "coupling"))
 			}
-			b.Set(i, 0, rapid.Float64Range(-1, 1).Draw(rt, "b"))
-			b.Set(i, 1, rapid.Float64Range(-1, 1).Draw(rt, "b"))
-			c.Set(0, i, rapid.Float64Range(-1, 1).Draw(rt, "c"))
+			b.Set(i, 0, ordinary(-1, 1).Draw(rt, "b"))
+			b.Set(i, 1, ordinary(-1, 1).Draw(rt, "b"))
+			c.Set(0, i, ordinary(-1, 1).Draw(rt, "c"))
 		}
 		if n > 1 && rapid.Bool().Draw(rt, "swings") {
 			a.Set(0, 1, -3)

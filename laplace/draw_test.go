@@ -63,14 +63,20 @@ func drawSystem(t *rapid.T, kinds ...string) *System {
 	return s
 }
 
-// drawWave is a random waveform over about [0, end].
-func drawWave(t *rapid.T, end float64) Waveform {
-	v := rapid.Map(rapid.Float64Range(-2, 2), func(x float64) float64 {
-		if math.Abs(x) < 1e-30 { // products with what is left of it would not be normal numbers
+// ordinary draws numbers of which products are normal numbers too: 0 in place of
+// anything below 1e-30.
+func ordinary(low, high float64) *rapid.Generator[float64] {
+	return rapid.Map(rapid.Float64Range(low, high), func(x float64) float64 {
+		if math.Abs(x) < 1e-30 {
 			return 0
 		}
 		return x
 	})
+}
+
+// drawWave is a random waveform over about [0, end].
+func drawWave(t *rapid.T, end float64) Waveform {
+	v := ordinary(-2, 2)
 	at := func() float64 { return end * rapid.Float64Range(0, 1.2).Draw(t, "at") }
 	var w Waveform
 	var err error

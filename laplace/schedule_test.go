@@ -108,7 +108,7 @@ func TestScheduleAgainstExponentials(t *testing.T) {
 		at := 0.0
 		for range rapid.IntRange(1, 6).Draw(t, "phases") {
 			scale = append(scale, [2]float64{at, rapid.SampledFrom([]float64{0, 0.3, 1, 4}).Draw(t, "scale")})
-			load = append(load, [2]float64{at, rapid.Float64Range(-1, 1).Draw(t, "load")})
+			load = append(load, [2]float64{at, ordinary(-1, 1).Draw(t, "load")})
 			at += rapid.Float64Range(0.05, 3).Draw(t, "length")
 		}
 		sw, err := Stairs(scale)

@@ -1,9 +1,12 @@
 package laplace
 
-import "math/cmplx"
+import (
+	"math"
+	"math/cmplx"
+)
 
 const (
-	restNoise = 4 * 0x1p-52 // of the sum of |parts| of H(0): below it H(0) is their rounding
+	restNoise = 4 * epsilon // of the sum of |parts| of H(0): below it H(0) is their rounding
 	restZero  = 1e-12       // of the slowest pole: a zero nearer to 0 than that may be one at 0
 )
 
@@ -23,7 +26,7 @@ func (h *Transfer) settleAtRest(sub *System) {
 			break
 		}
 	}
-	if near < 0 || abs(h.Gain) > restNoise*h.sizeOfRest(sub) {
+	if near < 0 || math.Abs(h.Gain) > restNoise*h.sizeOfRest(sub) {
 		return
 	}
 	h.Gain, h.Zeros[near].P, h.Zeros[near].Radius = 0, 0, 0
@@ -49,9 +52,9 @@ func (s *System) sizeAtRest() float64 {
 	if at == nil {
 		return 0
 	}
-	size := abs(s.d[0][0])
+	size := math.Abs(s.d[0][0])
 	for i, v := range at(s.b[0]) {
-		size += abs(s.c[0][i] * v)
+		size += math.Abs(s.c[0][i] * v)
 	}
 	return size
 }

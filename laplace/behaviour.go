@@ -1,6 +1,9 @@
 package laplace
 
-import "math/cmplx"
+import (
+	"math"
+	"math/cmplx"
+)
 
 // behaviour names how the response to a step moves, from the poles left after
 // cancellation; empty where there is none:
@@ -17,7 +20,7 @@ func behaviour(poles []Pole) string {
 	var unstable, integrating, undamped, pair bool
 	for _, p := range poles {
 		re := real(p.P)
-		switch onAxis := abs(re) <= p.Radius; {
+		switch onAxis := math.Abs(re) <= p.Radius; {
 		case cmplx.Abs(p.P) <= p.Radius:
 			integrating = true
 		case re > 0 && !onAxis, onAxis && p.Mult > 1:

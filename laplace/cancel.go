@@ -19,7 +19,7 @@ func cancel(poles, zeros []Pole, f facts) cancellation {
 	var c cancellation
 	for left := f.common; ; {
 		i, j := nearest(p, z, func(d float64, p, z Pole) bool {
-			return left > 0 || d <= 8*0x1p-52*cmplx.Abs(p.P) || !f.ok && d <= bound(p)+bound(z)
+			return left > 0 || d <= 8*epsilon*cmplx.Abs(p.P) || !f.ok && d <= bound(p)+bound(z)
 		})
 		if i < 0 {
 			break
@@ -74,7 +74,7 @@ func bound(p Pole) float64 {
 	if p.Mult > 1 {
 		return min(p.Radius, 1e-10*cmplx.Abs(p.P))
 	}
-	return p.Radius + 4*0x1p-52*cmplx.Abs(p.P)
+	return p.Radius + 4*epsilon*cmplx.Abs(p.P)
 }
 
 // gathered adds up the multiplicities of poles that meet and sorts them.

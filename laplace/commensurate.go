@@ -25,7 +25,7 @@ const (
 
 	// ratioTol is how far, relative, a ratio of periods may lie from one of whole
 	// numbers: a period that was a frequency has gone through two divisions.
-	ratioTol = 8 * 0x1p-53
+	ratioTol = 4 * epsilon
 )
 
 // ratio returns the whole numbers n and d, without a common factor, with

@@ -158,7 +158,7 @@ func (e *stateSpace) parallel(f *stateSpace) stateSpace {
 //	u_e = k (u − c_f x_f − d_f c_e x_e),   y = c_e x_e + d_e u_e,   u_f = y.
 func (e *stateSpace) feedback(f *stateSpace) (stateSpace, error) {
 	loop := 1 + e.d*f.d
-	if math.Abs(loop) <= 8*0x1p-53*(1+math.Abs(e.d*f.d)) {
+	if math.Abs(loop) <= 4*epsilon*(1+math.Abs(e.d*f.d)) {
 		return stateSpace{}, errLoop
 	}
 	k := 1 / loop

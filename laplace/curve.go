@@ -69,7 +69,7 @@ func (r *Response) curve(p *piece, out int) *curve {
 			f := &p.forced[i]
 			if w := v * f.in.pair[k] / 2; w != 0 {
 				c.forced = append(c.forced, forcedTerm{f.rate, pole, w * f.amp},
-					forcedTerm{conj(f.rate), pole, w * conj(f.amp)})
+					forcedTerm{cmplx.Conj(f.rate), pole, w * cmplx.Conj(f.amp)})
 			}
 		}
 	}
@@ -181,10 +181,6 @@ func (t *blockTerm) dot(m, x []float64) float64 {
 		y += o * s
 	}
 	return y
-}
-
-func cexp(rate complex128, tau float64) complex128 {
-	return cmplx.Exp(complex(real(rate)*tau, imag(rate)*tau))
 }
 
 // norm returns the scaling d, |x| = |d x|, that keeps the block's growth in norm

@@ -96,7 +96,7 @@ func (r *FrequencyResponse) solve(omega float64) (h complex128, slack float64) {
 	h, slack = r.swing.Transfer(complex(0, omega), s.b[0], s.c[0], s.d[0][0])
 	if rate := r.h.rate; rate != 0 {
 		h += complex(0, rate*omega)
-		slack += 0x1p-53 * abs(rate*omega)
+		slack += epsilon / 2 * math.Abs(rate*omega)
 	}
 	return h, slack
 }

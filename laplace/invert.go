@@ -120,7 +120,6 @@ func Invert(F func(s complex128) complex128, t []float64, o InvertOptions) ([]Es
 }
 
 const (
-	epsilon     = 0x1p-52
 	windowRatio = 1.4 // contours of 12 and 16 points agree to 1e-12 across it
 	checkRatio  = 2.2 // the period of a check is at most 8.8 of its first time
 )
@@ -149,7 +148,7 @@ func (o *InvertOptions) check(F func(complex128) complex128, t []float64) ([]int
 		o.Tolerance = 1e-9
 	}
 	for _, v := range [...]float64{o.Abscissa, o.Delay, o.Tolerance, o.Range} {
-		if math.IsNaN(v) || math.IsInf(v, 0) {
+		if !isNumber(v) {
 			return nil, fmt.Errorf("options of an inversion must be finite, found %v", *o)
 		}
 	}

@@ -66,7 +66,7 @@ func (h *Transfer) Step() (*Measures, error) {
 	}
 	m.rise(y)
 	m.Settling2, m.Settling5 = m.settling(y, 0.02), m.settling(y, 0.05)
-	tol := 4*y.Rounding(0) + 2*abs(h.settled()-h.Gain)
+	tol := 4*y.Rounding(0) + 2*math.Abs(h.settled()-h.Gain)
 	m.peak(y, tol)
 	m.undershoot(y, tol)
 	return m, nil
@@ -132,9 +132,9 @@ func (h *Transfer) horizon() float64 {
 		fastest = max(fastest, -real(p.P))
 	}
 	t := 1 / fastest
-	whole := h.rest(0) + abs(h.Gain)
+	whole := h.rest(0) + math.Abs(h.Gain)
 	for range 2000 {
-		if h.rest(t) <= 0x1p-54*whole {
+		if h.rest(t) <= epsilon/4*whole {
 			return t
 		}
 		t *= 2
@@ -176,7 +176,7 @@ func (m *Measures) rise(y *Response) {
 // reach returns the first time y is at the share of Final.
 func (m *Measures) reach(y *Response, share float64) (float64, bool) {
 	level := share * *m.Final
-	if m.Y0*math.Copysign(1, level) >= abs(level) {
+	if m.Y0*math.Copysign(1, level) >= math.Abs(level) {
 		return 0, true
 	}
 	x, ok := y.First(0, level, 0, y.until)
@@ -185,7 +185,7 @@ func (m *Measures) reach(y *Response, share float64) (float64, bool) {
 }
 
 func (m *Measures) settling(y *Response, share float64) *float64 {
-	x, ok := y.LastOutside(0, *m.Final, share*abs(*m.Final), 0, y.until)
+	x, ok := y.LastOutside(0, *m.Final, share*math.Abs(*m.Final), 0, y.until)
 	if !ok {
 		return number(0)
 	}

@@ -2,6 +2,7 @@ package laplace
 
 import (
 	"math"
+	"math/cmplx"
 
 	"lagbook/laplace/matrix"
 )
@@ -159,7 +160,7 @@ func (m *modal) transfer(in, out int, s complex128) complex128 {
 		}
 	}
 	for k, p := range m.pair {
-		h += (c.pair[k]*b.pair[k]/(s-p) + conj(c.pair[k]*b.pair[k])/(s-conj(p))) / 2
+		h += (c.pair[k]*b.pair[k]/(s-p) + cmplx.Conj(c.pair[k]*b.pair[k])/(s-cmplx.Conj(p))) / 2
 	}
 	for i := range m.block {
 		q := &m.block[i]
@@ -174,8 +175,6 @@ func (m *modal) transfer(in, out int, s complex128) complex128 {
 	}
 	return h
 }
-
-func conj(z complex128) complex128 { return complex(real(z), -imag(z)) }
 
 // resolve replaces x by (sI − T)⁻¹ x.
 func (q *block) resolve(s complex128, x []complex128) { q.resolveNear(s, 0, x) }
@@ -220,5 +219,3 @@ func (q *block) resolveNear(p, delta complex128, x []complex128) {
 		x[k] /= a[k*n+k]
 	}
 }
-
-func abs1(z complex128) float64 { return math.Abs(real(z)) + math.Abs(imag(z)) }

@@ -1,9 +1,6 @@
 package laplace
 
-import (
-	"math"
-	"math/cmplx"
-)
+import "math"
 
 // The response of one mode z' = p z + u from rest to u = 1 is f1 = τ·φ₁(pτ), to
 // u = τ it is f2 = τ²·φ₂(pτ), with φ₁(x) = (eˣ − 1)/x and φ₂(x) = (φ₁(x) − 1)/x.
@@ -86,5 +83,5 @@ func divided(s, p complex128, tau float64) complex128 {
 		p, d = s, -d
 	}
 	_, f1 := cphi1(d, tau)
-	return cmplx.Exp(complex(real(p)*tau, imag(p)*tau)) * f1
+	return cexp(p, tau) * f1
 }

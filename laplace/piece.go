@@ -106,7 +106,7 @@ func (p *piece) pairAt(k int, tau float64) complex128 {
 
 // onPair is the response of ζ' = p ζ + 2·Re(amp·exp(rate·τ)) from rest.
 func (f *forcing) onPair(p complex128, tau float64) complex128 {
-	return f.amp*divided(f.rate, p, tau) + conj(f.amp)*divided(conj(f.rate), p, tau)
+	return f.amp*divided(f.rate, p, tau) + cmplx.Conj(f.amp)*divided(cmplx.Conj(f.rate), p, tau)
 }
 
 // A pieceBlock is a block together with what drives it in a piece. An exponential
@@ -144,15 +144,6 @@ func newPieceBlock(p *piece, q *block) pieceBlock {
 	return r
 }
 
-func allZero(v []float64) bool {
-	for _, x := range v {
-		if x != 0 {
-			return false
-		}
-	}
-	return true
-}
-
 // near reports that the rate lies near a pole of the block:
 // closer than a tenth of the larger of the two.
 func (q *block) near(s complex128) bool {
@@ -162,7 +153,7 @@ func (q *block) near(s complex128) bool {
 			a, d := q.t[i*q.n+i], q.t[(i+1)*q.n+i+1]
 			h := (a - d) / 2
 			p = complex(a-h, 0) + cmplx.Sqrt(complex(h*h+q.t[i*q.n+i+1]*q.t[(i+1)*q.n+i], 0))
-			if gap(s, p) || gap(s, conj(p)) {
+			if gap(s, p) || gap(s, cmplx.Conj(p)) {
 				return true
 			}
 			i++

@@ -129,7 +129,7 @@ func (s *System) Shape(out, pole int) (complex128, bool) {
 		return complex(v.real[at.index], 0), true
 	case pairSeat:
 		if imag(s.poles[pole].P) < 0 {
-			return conj(v.pair[at.index]), true
+			return cmplx.Conj(v.pair[at.index]), true
 		}
 		return v.pair[at.index], true
 	default:

@@ -119,9 +119,9 @@ func sections(roots []Pole) ([]section, error) {
 				list = append(list, section{[]complex128{p.P}})
 			case imag(p.P) > 0:
 				above[p.P]++
-				list = append(list, section{[]complex128{p.P, conj(p.P)}})
+				list = append(list, section{[]complex128{p.P, cmplx.Conj(p.P)}})
 			default:
-				below[conj(p.P)]++
+				below[cmplx.Conj(p.P)]++
 			}
 		}
 	}

@@ -3,7 +3,6 @@ package laplace
 import (
 	"fmt"
 	"math"
-	"math/cmplx"
 )
 
 // MaxBreaks is the largest number of breaks a response, or a period of a repeated
@@ -50,7 +49,7 @@ func (g *Segment) from(tau float64) Segment {
 	s := Segment{A: g.A + g.B*tau, B: g.B}
 	for _, e := range g.Exp {
 		if tau != 0 {
-			e.Amplitude *= cmplx.Exp(e.Rate * complex(tau, 0))
+			e.Amplitude *= cexp(e.Rate, tau)
 		}
 		s.Exp = append(s.Exp, e)
 	}

@@ -18,7 +18,7 @@ func (s *System) residue(i, mult int) []complex128 {
 		case pairSeat:
 			w := b.pair[at.index] * c.pair[at.index] / 2
 			if imag(p) < 0 {
-				w = conj(w)
+				w = cmplx.Conj(w)
 			} else if imag(p) == 0 { // the pair was gathered into one real pole
 				w = complex(real(w), 0)
 			}
@@ -90,7 +90,7 @@ func (s *System) isolation(i, index int) (gap, size float64) {
 		}
 	}
 	for _, v := range s.modal.block[index].t {
-		size = max(size, abs(v))
+		size = max(size, math.Abs(v))
 	}
 	return gap, size
 }
@@ -108,12 +108,4 @@ func (q *block) shifted(p float64, x []float64) []float64 {
 		}
 	}
 	return y
-}
-
-func dot(x, y []float64) float64 {
-	var s float64
-	for i, v := range x {
-		s += v * y[i]
-	}
-	return s
 }

@@ -85,7 +85,7 @@ func (s *scan) reach(l, r *jet) (Root, bool) {
 // tiny reports that an interval is too short to halve: by its own times, or by the
 // spacing of the numbers that hold the time since t = 0.
 func (c *curve) tiny(l, r *jet) bool {
-	return r.t-l.t <= smallest*r.t || r.t-l.t <= 0x1p-52*c.t0
+	return r.t-l.t <= smallest*r.t || r.t-l.t <= epsilon*c.t0
 }
 
 // reachFrom searches the far half. Where rounding has let g reach 0 at the middle
@@ -201,7 +201,7 @@ func (s *scan) halve(lo, hi, x *jet, f func(*jet) (value, slope float64)) {
 	a, b := min(lo.t, hi.t), max(lo.t, hi.t)
 	t := a + (b-a)/2
 	if v, d := f(x); d != 0 {
-		beyond := x.t - v/d - math.Copysign(4*0x1p-52*max(math.Abs(a), math.Abs(b)), v/d)
+		beyond := x.t - v/d - math.Copysign(4*epsilon*max(math.Abs(a), math.Abs(b)), v/d)
 		if beyond > a && beyond < b && math.Abs(v/d) < (b-a)/64 {
 			t = beyond
 		}

@@ -40,7 +40,7 @@ func (r *Response) roundingIn(k, out int) float64 {
 			sum += math.Abs(s.c[out][i]) * v
 		}
 	}
-	return 4 * 0x1p-52 * sum
+	return 4 * epsilon * sum
 }
 
 // mixed reports weights of both signs.

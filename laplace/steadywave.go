@@ -3,7 +3,6 @@ package laplace
 import (
 	"fmt"
 	"math"
-	"math/cmplx"
 	"sort"
 	"strconv"
 )
@@ -70,7 +69,7 @@ func (w *Waveform) inTheLongRun(i int) (steadyWave, error) {
 			s.rest.A += real(e.Amplitude)
 		default:
 			if last.At != 0 {
-				e.Amplitude *= cmplx.Exp(e.Rate * complex(-last.At, 0))
+				e.Amplitude *= cexp(e.Rate, -last.At)
 			}
 			s.rest.Exp = append(s.rest.Exp, e)
 		}
@@ -94,7 +93,7 @@ func (s *steadyWave) beats(input int) []beat {
 // there is one: 86400 s, not 86400.00000000001 s.
 func periodOf(omega float64) float64 {
 	t := 2 * math.Pi / omega
-	if short, err := strconv.ParseFloat(strconv.FormatFloat(t, 'g', 15, 64), 64); err == nil && math.Abs(2*math.Pi/short-omega) <= 0x1p-52*omega {
+	if short, err := strconv.ParseFloat(strconv.FormatFloat(t, 'g', 15, 64), 64); err == nil && math.Abs(2*math.Pi/short-omega) <= epsilon*omega {
 		return short
 	}
 	return t
@@ -170,7 +169,7 @@ func together(list []steadyWave, period float64) ([]Waveform, error) {
 	if total > MaxBreaks {
 		return nil, &TooMany{Found: int(min(total, 1e15)), Limit: MaxBreaks}
 	}
-	near := 32 * 0x1p-52 * period
+	near := 32 * epsilon * period
 	var times []float64
 	for i := range list {
 		times = list[i].starts(times, period-near)

@@ -21,7 +21,7 @@ func (v *inversion) suspect(lo, hi float64) error {
 	for k := range n + 1 {
 		t := lo * math.Pow(hi/lo, float64(k)/float64(n))
 		y := cmplx.Abs(v.g(complex(v.o.Abscissa+1/t, 0))) / t
-		if !math.IsNaN(y) && !math.IsInf(y, 0) {
+		if isNumber(y) {
 			v.base = max(v.base, y)
 			if grown := y * math.Exp(v.o.Abscissa*t); !math.IsInf(grown, 0) {
 				v.span = max(v.span, grown)
@@ -54,7 +54,7 @@ func (v *inversion) mirrored(t float64) error {
 func (v *inversion) right(lo, hi float64) error {
 	const points, radius, step = 64, 0.6, 3.5
 	last, level := 0.0, v.base
-	if y := cmplx.Abs(v.g(complex(v.o.Abscissa+0.02/hi, 0))); !math.IsNaN(y) && !math.IsInf(y, 0) {
+	if y := cmplx.Abs(v.g(complex(v.o.Abscissa+0.02/hi, 0))); isNumber(y) {
 		level = max(level, y*0.02/hi) // the response to come: before a delay it is all there is
 	}
 	for x := 2 / hi; x < 1e4/lo; x *= step {
@@ -155,7 +155,7 @@ func (v *inversion) note(guess [3]complex128, far, d complex128, hi float64) err
 	}
 	p := cmplx.Exp(guess[2]) * complex(8/hi, 0)
 	w := cmplx.Abs(weight * p)
-	if math.IsNaN(w) || math.IsInf(w, 0) || w < 1e-4*v.o.Tolerance*v.base {
+	if !isNumber(w) || w < 1e-4*v.o.Tolerance*v.base {
 		return nil
 	}
 	if real(p)*hi > 2 && real(p) > 0.3*cmplx.Abs(p) {

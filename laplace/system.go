@@ -3,7 +3,6 @@ package laplace
 import (
 	"errors"
 	"fmt"
-	"math"
 	"sync"
 
 	"gonum.org/v1/gonum/mat"
@@ -198,6 +197,3 @@ func rows(a mat.Matrix) [][]float64 {
 	}
 	return r
 }
-
-// isNumber reports that x is neither infinite nor NaN.
-func isNumber(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }

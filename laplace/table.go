@@ -56,7 +56,7 @@ func uniformStep(t []float64) (float64, bool) {
 		return 0, false
 	}
 	h := (t[n] - t[0]) / float64(n)
-	tol := 0x1p-50 * max(math.Abs(t[0]), math.Abs(t[n]))
+	tol := 4 * epsilon * max(math.Abs(t[0]), math.Abs(t[n]))
 	for i, v := range t {
 		if d := t[0] + float64(i)*h - v; d > tol || d < -tol {
 			return 0, false

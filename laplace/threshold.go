@@ -180,7 +180,7 @@ func descend(g func(float64) float64, a, b float64) (at, lo, hi float64) {
 		} else {
 			b, gb, ga = m, v, ga/2
 		}
-		if b-a <= 0x1p-51*b {
+		if b-a <= 2*epsilon*b {
 			break
 		}
 	}
@@ -196,14 +196,14 @@ func (r *FrequencyResponse) Peak() GainPeak {
 		return GainPeak{Gain: math.Abs(r.h.direct)}
 	}
 	for _, p := range r.h.Poles {
-		if abs(real(p.P)) <= p.Radius && imag(p.P) >= 0 {
+		if math.Abs(real(p.P)) <= p.Radius && imag(p.P) >= 0 {
 			return GainPeak{Omega: imag(p.P), Gain: math.Inf(1)}
 		}
 	}
 	b := r.band()
 	best := &highest{f: &r.lines, left: maxGainParts, log: math.Inf(-1)}
 	if r.h.HasGain && r.h.Gain != 0 {
-		best.offer(0, math.Log(abs(r.h.Gain)))
+		best.offer(0, math.Log(math.Abs(r.h.Gain)))
 	}
 	if r.h.RelativeDegree == 0 {
 		best.offer(math.Inf(1), r.lines.atTop)
@@ -215,7 +215,7 @@ func (r *FrequencyResponse) Peak() GainPeak {
 	p := GainPeak{Omega: best.omega, Gain: math.Exp(best.log), Capped: best.left <= 0}
 	switch {
 	case p.Omega == 0:
-		p.Gain = abs(r.h.Gain)
+		p.Gain = math.Abs(r.h.Gain)
 	case math.IsInf(p.Omega, 1):
 		p.Gain = cmplx.Abs(complex(r.h.direct, 0))
 	default:

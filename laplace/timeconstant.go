@@ -125,6 +125,6 @@ func (f Fraction) Eval(s complex128) complex128 {
 // Impulse returns the fraction's part of the response to an impulse at t ≥ 0 in s; of
 // a conjugate pair each member its half.
 func (f Fraction) Impulse(t float64) float64 {
-	x := f.Coef * cmplx.Exp(f.Pole*complex(t, 0))
+	x := f.Coef * cexp(f.Pole, t)
 	return real(x) * math.Pow(t, float64(f.Power-1)) / math.Gamma(float64(f.Power))
 }

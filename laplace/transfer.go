@@ -2,6 +2,7 @@ package laplace
 
 import (
 	"fmt"
+	"math"
 	"math/cmplx"
 )
 
@@ -206,7 +207,7 @@ func (h *Transfer) gain(sub *System, f facts) {
 	if !ok { // a pole at 0 has cancelled
 		g = h.settled()
 	}
-	if f.ok || abs(g) > 16*0x1p-52*h.size() {
+	if f.ok || math.Abs(g) > 16*epsilon*h.size() {
 		h.Gain = g
 	}
 }
@@ -234,7 +235,7 @@ func (h *Transfer) part(i int) complex128 {
 
 // size returns the sum of |parts| of H(0), against which a gain is rounding.
 func (h *Transfer) size() float64 {
-	sum := abs(h.direct)
+	sum := math.Abs(h.direct)
 	for i := range h.Poles {
 		sum += cmplx.Abs(h.part(i))
 	}
@@ -264,7 +265,7 @@ func (h *Transfer) weigh() {
 // warn says what was decided within error bounds only.
 func (h *Transfer) warn(gone []Pole, f facts) {
 	for _, p := range h.Poles {
-		if p.Mult > 1 && imag(p.P) >= 0 && relative(p) > 0x1p-50 {
+		if p.Mult > 1 && imag(p.P) >= 0 && relative(p) > 4*epsilon {
 			h.Warnings = append(h.Warnings, Warning{"multiple pole", fmt.Sprintf(
 				"%d poles at %s rad/s are counted as one: they lie within %.1g of it, relative", p.Mult, show(p.P), relative(p))})
 		}
@@ -296,7 +297,5 @@ func relative(p Pole) float64 {
 	if p.P == 0 {
 		return p.Radius
 	}
-	return max(p.Radius/cmplx.Abs(p.P), 0x1p-53)
+	return max(p.Radius/cmplx.Abs(p.P), epsilon/2)
 }
-
-func abs(x float64) float64 { return max(x, -x) }

@@ -41,7 +41,7 @@ func (s *steadyWave) changes(w *Waveform) []float64 {
 		}
 	}
 	sort.Float64s(list)
-	n, near := 1, 32*0x1p-52*s.from
+	n, near := 1, 32*epsilon*s.from
 	for _, t := range list[1:] {
 		if t > list[n-1]+near && t < s.from-near {
 			list[n] = t
@@ -56,7 +56,7 @@ func (s *steadyWave) at(t float64) Segment {
 	if s.pattern == nil {
 		return s.rest.from(t)
 	}
-	near := 32 * 0x1p-52 * max(t, s.period)
+	near := 32 * epsilon * max(t, s.period)
 	tau := math.Mod(t-s.phase, s.period)
 	if tau < 0 {
 		tau += s.period

@@ -1,5 +1,7 @@
 package laplace
 
+import "math/cmplx"
+
 // see fills the view for one output: its row d of D and its base.
 func (v *view) see(s *babySteps, o *vector, d []float64, base float64) {
 	p, n := v.g.p, v.g.baby
@@ -95,7 +97,7 @@ func (v *view) seeForced(d []float64, seen []float64) (rest []float64) {
 			}
 			for k, o := range v.out.pair {
 				if w := o * f.in.pair[k] / 2; w != 0 {
-					x += w*divided(f.rate, p.m.pair[k], delta) + conj(w*divided(conj(f.rate), p.m.pair[k], delta))
+					x += w*divided(f.rate, p.m.pair[k], delta) + cmplx.Conj(w*divided(cmplx.Conj(f.rate), p.m.pair[k], delta))
 				}
 			}
 			seen[j], seen[n+j] = real(x), -imag(x)

@@ -1,7 +1,6 @@
 package laplace
 
 import (
-	"fmt"
 	"math"
 	"math/cmplx"
 	"sort"
@@ -36,7 +35,7 @@ type Waveform struct {
 func (g *Segment) value(tau float64) float64 {
 	v := g.A + g.B*tau
 	for _, e := range g.Exp {
-		v += real(e.Amplitude * cmplx.Exp(e.Rate*complex(tau, 0)))
+		v += real(e.Amplitude * cexp(e.Rate, tau))
 	}
 	return v
 }
@@ -189,16 +188,6 @@ func (w *Waveform) check() {
 	if w.Period > 0 && !(w.Repeat >= 0 && w.Repeat < len(w.Segments)) {
 		panic("laplace: a waveform repeats from a segment it does not have")
 	}
-}
-
-// finite reports the first of the numbers that is not one.
-func finite(what string, v ...float64) error {
-	for _, x := range v {
-		if math.IsNaN(x) || math.IsInf(x, 0) {
-			return fmt.Errorf("%s is not a finite number", what)
-		}
-	}
-	return nil
 }
 
 // size returns a bound of |u| over [0, until].

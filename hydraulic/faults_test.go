@@ -61,13 +61,14 @@ func TestFaults(t *testing.T) {
 		{"throttled without a resistance", strings.Replace(good, "resistance = \"1 MPa·s/m³\"", "inertance = \"1 Pa·s²/m³\"\nscale = 0.5", 1), "a scale of 0.5 on a line with inertance and no resistance"},
 		{"half started", strings.Replace(good, "compliance", "start = \"1 bar\"\ncompliance", 1) + "inertance = \"1 Pa·s²/m³\"", "half-started: "},
 		{"a line started, its vessel not", good + "inertance = \"1 Pa·s²/m³\"\nstart = \"1 L/s\"", "half-started: "},
+		{"a flow at one end", good + "[[table]]\nshow = [\"flow of pipe at tank\"]\ntimes = [\"0 s\"]", "not-built: "},
 		{"level of", good + "[[table]]\nshow = [\"level of tank\"]\ntimes = [\"0 s\"]", "not-built: "},
 	} {
-		if got := faults(t, c.text+"\n"); !strings.Contains(got, c.want) {
+		if got := faults(c.text + "\n"); !strings.Contains(got, c.want) {
 			t.Errorf("%s: %q is not among\n%s", c.name, c.want, got)
 		}
 	}
-	if got := faults(t, good); got != "" {
+	if got := faults(good); got != "" {
 		t.Errorf("the good case: %s", got)
 	}
 }

@@ -18,9 +18,9 @@ func lineTable() casefile.Table {
 		Stage: 1,
 		Help:  "a line between two nodes: a resistance, a column of liquid, or both in series",
 		Fields: []casefile.Field{
-			between(),
-			positive("resistance", resistance, "R, pressure lost for each m³/s"),
-			positive("inertance", inertance, "L, of a column of liquid: ρ·length/area"),
+			casefile.Between(),
+			casefile.Positive("resistance", resistance, "R, pressure lost for each m³/s"),
+			casefile.Positive("inertance", inertance, "L, of a column of liquid: ρ·length/area"),
 			start,
 			casefile.ScaleField("multiplies what it conducts, in steps: R becomes R/scale; 0 shuts it, a valve or a pump that trips, and stops a column at once"),
 		},
@@ -30,11 +30,9 @@ func lineTable() casefile.Table {
 }
 
 func buildLine(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	names := e.Names("between") // two, and different: casefile sees to it
-	from, okFrom := e.Node(names[0])
-	to, okTo := e.Node(names[1])
-	if !okFrom || !okTo {
-		return nil, []casefile.Diagnostic{e.Fault("between", "a name that is not a node", "the names of two nodes", "")}
+	from, to, faults := e.Ends()
+	if faults != nil {
+		return nil, faults
 	}
 	scale, faults := casefile.ScalingOf(e, c, b)
 	switch {
@@ -68,7 +66,7 @@ func buildColumn(e *casefile.Element, b *network.Builder, scale casefile.Scaling
 			return nil
 		})
 	}
-	return together(setters)
+	return casefile.Together(setters...)
 }
 
 // scaledColumn sets the resistance of a line with inertance, and shuts it.

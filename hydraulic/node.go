@@ -13,7 +13,7 @@ func nodeTable() casefile.Table {
 		Name: "node",
 		Help: "a place with one pressure: it takes up volume, or is held, or is a junction",
 		Fields: []casefile.Field{
-			positive("compliance", compliance, "C, volume taken up for each pascal: A/(ρ·g) of an open tank, V/K of liquid, V/(n·p) of gas"),
+			casefile.Positive("compliance", compliance, "C, volume taken up for each pascal: A/(ρ·g) of an open tank, V/K of liquid, V/(n·p) of gas"),
 			{Name: "held", Type: casefile.Wave, Dim: pressure, Kind: quantity.Level, Help: "its pressure is given, whatever flows"},
 			{Name: "start", Type: casefile.Number, Dim: pressure, Kind: quantity.Level, Help: "pressure at t = 0"},
 		},
@@ -23,10 +23,7 @@ func nodeTable() casefile.Table {
 }
 
 func buildNode(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	id := b.Node(e.FullName(), e.Ref)
-	c.BindNode(e.FullName(), id)
-	var setters []casefile.Setter
-	var faults []casefile.Diagnostic
+	id, setters, faults := e.AddNode(c, b)
 	if e.Has("compliance") {
 		at, slot := b.Capacity(id, e.Ref), e.Num("compliance")
 		setters = append(setters, func(v casefile.Values, p *network.Params) error {
@@ -34,24 +31,7 @@ func buildNode(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 			return nil
 		})
 	}
-	if e.Has("held") {
-		in, wave := b.Hold(id, e.Ref), e.Wave("held")
-		setters = append(setters, func(v casefile.Values, p *network.Params) error {
-			p.Wave[in] = v.Wave[wave]
-			return nil
-		})
-	}
-	if e.Has("start") {
-		if e.Has("held") {
-			faults = append(faults, e.Fault("start", "start of a held node: it starts where it is held", "", ""))
-		}
-		slot := e.Num("start")
-		setters = append(setters, func(v casefile.Values, p *network.Params) error {
-			p.Start[id], p.HasStart[id] = v.Num[slot], true
-			return nil
-		})
-	}
-	return together(setters), faults
+	return casefile.Together(setters...), faults
 }
 
 func deriveNode(e *casefile.Element, _ *casefile.Case, v casefile.Values) []casefile.Derivation {

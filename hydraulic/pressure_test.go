@@ -46,7 +46,7 @@ func TestGaugeAndAbsolute(t *testing.T) {
 		{`pressures = "gauge"`, "-0.4 bar", -4e4},
 	} {
 		m := read(t, "case.toml", held(c.head, c.level))
-		if got := m.respond(1, "a").At(0, 0); math.Abs(got-c.want) > 1e-9*(1e5+math.Abs(c.want)) {
+		if got := m.Respond(1, "a").At(0, 0); math.Abs(got-c.want) > 1e-9*(1e5+math.Abs(c.want)) {
 			t.Errorf("%s with %q is %.10g Pa, want %.10g", c.level, c.head, got, c.want)
 		}
 	}
@@ -70,8 +70,8 @@ inertance  = "120 MPa·s²/m³"
 between    = ["vessel", "drain"]
 resistance = "1 GPa·s/m³"
 `
-	gauge := read(t, "gauge.toml", "[hydraulic]\npressures = \"gauge\"\n"+plant).respond(10, "vessel", "flow of pipe", "main - vessel")
-	absolute := read(t, "absolute.toml", "[hydraulic]\npressures = \"absolute\"\n"+plant).respond(10, "vessel", "flow of pipe", "main - vessel")
+	gauge := read(t, "gauge.toml", "[hydraulic]\npressures = \"gauge\"\n"+plant).Respond(10, "vessel", "flow of pipe", "main - vessel")
+	absolute := read(t, "absolute.toml", "[hydraulic]\npressures = \"absolute\"\n"+plant).Respond(10, "vessel", "flow of pipe", "main - vessel")
 	for _, at := range []float64{0, 0.1, 1, 3, 10} {
 		if d := absolute.At(0, at) - gauge.At(0, at) - 101325; math.Abs(d) > 1e-8*101325 {
 			t.Errorf("vessel at %v s: %v Pa beside one atmosphere", at, d)

@@ -52,8 +52,8 @@ func TestLadders(t *testing.T) {
 		last := fmt.Sprintf("n%d", len(d.r))
 		straight, turned := read(t, "case.toml", d.text(1, false)), read(t, "case.toml", d.text(1, true))
 		slow := read(t, "case.toml", d.text(8, false))
-		a, b := straight.respond(20, last, "flow of b0"), turned.respond(20, last, "flow of b0")
-		c := slow.respond(160, last, "flow of b0")
+		a, b := straight.Respond(20, last, "flow of b0"), turned.Respond(20, last, "flow of b0")
+		c := slow.Respond(160, last, "flow of b0")
 		sign := 1.0
 		if d.turned[0] {
 			sign = -1
@@ -69,7 +69,7 @@ func TestLadders(t *testing.T) {
 				rt.Fatalf("pressure at %v s: %v, in stretched time %v", at, p, q)
 			}
 		}
-		for _, p := range straight.reduce().System.Poles() {
+		for _, p := range straight.Reduce().System.Poles() {
 			if real(p.P) > p.Radius {
 				rt.Fatalf("a passive network grows: pole %v", p.P)
 			}

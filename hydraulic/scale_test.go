@@ -3,6 +3,8 @@ package hydraulic
 import (
 	"strings"
 	"testing"
+
+	"lagbook/network/casefile/casetest"
 )
 
 // What a scale makes of a line: a share of its conductance, a resistance divided by it
@@ -14,22 +16,22 @@ func TestScale(t *testing.T) {
 		now, g, r float64
 		shut      bool
 	}{{1, 1e-6, 1e6, false}, {0.25, 0.25e-6, 4e6, false}, {0, 0, 1e6, true}} {
-		m.params.Now[0], column.params.Now[0] = c.now, c.now
-		for _, x := range []*model{m, column} {
-			for _, set := range x.set {
-				if err := set(x.v, x.params); err != nil {
+		m.Params.Now[0], column.Params.Now[0] = c.now, c.now
+		for _, x := range []*casetest.Model{m, column} {
+			for _, set := range x.Set {
+				if err := set(x.Values, x.Params); err != nil {
 					t.Fatal(err)
 				}
 			}
 		}
-		if g := m.params.G[0]; g != c.g {
+		if g := m.Params.G[0]; g != c.g {
 			t.Errorf("scale %v: conductance %v", c.now, g)
 		}
-		if r, shut := column.params.LR[0], column.params.Shut[0]; r != c.r || shut != c.shut || column.params.L[0] != 3 {
+		if r, shut := column.Params.LR[0], column.Params.Shut[0]; r != c.r || shut != c.shut || column.Params.L[0] != 3 {
 			t.Errorf("scale %v: resistance %v, shut %v", c.now, r, shut)
 		}
 	}
-	if v := m.params.Switch[0].At(1.5); v != 0.25 {
+	if v := m.Params.Switch[0].At(1.5); v != 0.25 {
 		t.Errorf("the wave handed over is %v at 1.5 s", v)
 	}
 }

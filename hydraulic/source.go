@@ -13,8 +13,8 @@ func sourceTable() casefile.Table {
 		Help:  "a flow into a node or out of it, whatever the pressure",
 		OneOf: [][]string{{"into", "out_of"}},
 		Fields: []casefile.Field{
-			nodeName("into", "the node it feeds"),
-			nodeName("out_of", "the node it draws from"),
+			casefile.NodeName("into", "the node it feeds"),
+			casefile.NodeName("out_of", "the node it draws from"),
 			{Name: "drive", Type: casefile.Wave, Dim: flow, Required: true, Help: "the flow"},
 		},
 		Build: buildSource,
@@ -22,17 +22,10 @@ func sourceTable() casefile.Table {
 }
 
 func buildSource(e *casefile.Element, _ *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	end, sign := "into", 1.0
-	if e.Has("out_of") {
-		end, sign = "out_of", -1
+	end, sign := e.SourceEnd()
+	node, faults := e.NodeAt(end)
+	if faults != nil {
+		return nil, faults
 	}
-	node, ok := e.Node(e.NameOf(end))
-	if !ok {
-		return nil, []casefile.Diagnostic{e.Fault(end, "a name that is not a node", "the name of a node", "")}
-	}
-	in, wave := b.Source(e.FullName(), node, sign, e.Ref), e.Wave("drive")
-	return func(v casefile.Values, p *network.Params) error {
-		p.Wave[in] = v.Wave[wave]
-		return nil
-	}, nil
+	return casefile.SetWave(b.Source(e.FullName(), node, sign, e.Ref), e.Wave("drive")), nil
 }

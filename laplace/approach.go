@@ -102,12 +102,14 @@ func (p *piece) bound(o *vector, d []float64, tau float64) float64 {
 	sum := 0.0
 	for k, pole := range p.m.real {
 		if pole < 0 && o.real[k] != 0 {
-			sum += math.Abs(o.real[k]) * (math.Abs(p.z.real[k])*math.Exp(pole*tau) + p.boundForced(complex(pole, 0), tau, func(in *vector) float64 { return math.Abs(in.real[k]) }))
+			driven := p.boundForced(complex(pole, 0), tau, func(in *vector) float64 { return math.Abs(in.real[k]) })
+			sum += math.Abs(o.real[k]) * (math.Abs(p.z.real[k])*math.Exp(pole*tau) + driven)
 		}
 	}
 	for k, pole := range p.m.pair {
 		if real(pole) < 0 && o.pair[k] != 0 {
-			sum += cmplx.Abs(o.pair[k]) * (cmplx.Abs(p.z.pair[k])*math.Exp(real(pole)*tau) + p.boundForced(pole, tau, func(in *vector) float64 { return cmplx.Abs(in.pair[k]) }))
+			driven := p.boundForced(pole, tau, func(in *vector) float64 { return cmplx.Abs(in.pair[k]) })
+			sum += cmplx.Abs(o.pair[k]) * (cmplx.Abs(p.z.pair[k])*math.Exp(real(pole)*tau) + driven)
 		}
 	}
 	for i := range p.blocks {

@@ -39,7 +39,7 @@ func (h *Transfer) settleAtRest(sub *System) {
 // have inertia and the elimination subtracts, those of the poles.
 func (h *Transfer) sizeOfRest(sub *System) float64 {
 	size := sub.sizeAtRest()
-	if sub.plant.stores != nil {
+	if sub.plant.coupled() {
 		size = max(size, 4*h.size())
 	}
 	return size

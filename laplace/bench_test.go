@@ -96,3 +96,28 @@ func BenchmarkTable(b *testing.B) {
 		}
 	}
 }
+
+// BenchmarkNew takes apart one system after another, as phases of a Schedule and
+// random variations of a network are.
+func BenchmarkNew(b *testing.B) {
+	for _, n := range []int{4, 10, 50} {
+		rc := Realisation{Balance: randomRC(n, uint64(1000+n)), B: [][]float64{make([]float64, n)}, Output: [][]float64{make([]float64, n)}}
+		rc.B[0][0], rc.Output[0][n-1] = 1, 1
+		general := rc
+		general.Balance.F = append([]float64(nil), rc.Balance.F...)
+		general.Balance.F[1*n] *= 1.5 // one way more than the other: no network of resistances
+		for _, r := range []struct {
+			name string
+			Realisation
+		}{{"rc", rc}, {"general", general}} {
+			b.Run(fmt.Sprintf("%s/n=%d", r.name, n), func(b *testing.B) {
+				b.ReportAllocs()
+				for b.Loop() {
+					if _, err := New(r.Realisation); err != nil {
+						b.Fatal(err)
+					}
+				}
+			})
+		}
+	}
+}

@@ -28,12 +28,12 @@ const (
 	ratioTol = 4 * epsilon
 )
 
-// ratio returns the whole numbers n and d, without a common factor, with
+// wholeRatio returns the whole numbers n and d, without a common factor, with
 // x = n/d within rounding, and false where there are none up to mostTurns.
 //
 // Method: the convergents of the continued fraction of x, which contain every
 // fraction closer to x than 1/(2d²) (Hardy, Wright 1979, theorem 184).
-func ratio(x float64) (n, d int, ok bool) {
+func wholeRatio(x float64) (n, d int, ok bool) {
 	h0, k0, h1, k1 := 0.0, 1.0, 1.0, 0.0
 	for y := x; ; {
 		a := math.Floor(y)
@@ -73,7 +73,7 @@ func common(beats []beat) (float64, error) {
 	}
 	turns := 1 // of ref
 	for _, b := range beats {
-		n, _, ok := ratio(b.period / ref.period) // n/d of ref: n turns of ref are d of b
+		n, _, ok := wholeRatio(b.period / ref.period) // n/d of ref: n turns of ref are d of b
 		if ok {
 			turns = turns / gcd(turns, n) * n
 		}

@@ -3,10 +3,6 @@ package laplace
 import (
 	"errors"
 	"math"
-
-	"gonum.org/v1/gonum/mat"
-
-	"lagbook/laplace/matrix"
 )
 
 // Transfer functions are connected as systems of equations, one block after another
@@ -45,54 +41,6 @@ func (h *Transfer) equations() (stateSpace, error) {
 	var err error
 	e.a, e.b, err = s.plant.matrix(s.b[0])
 	return e, err
-}
-
-// matrix returns the plant and the flows b as a plain matrix and rates.
-func (p *plant) matrix(b []float64) (a, rates []float64, err error) {
-	rates = append([]float64(nil), b...)
-	switch {
-	case p.balance != nil:
-		for i := range rates {
-			rates[i] /= p.balance.C[i]
-		}
-		return p.balance.Dense(), rates, nil
-	case p.stores == nil:
-		return p.dense, rates, nil
-	}
-	return storesMatrix(p.stores, rates)
-}
-
-// storesMatrix solves for x' where stores move together.
-func storesMatrix(s *matrix.Stores, flows []float64) (a, rates []float64, err error) {
-	n := s.N
-	m, right := mat.NewDense(n, n, nil), mat.NewDense(n, n+1, nil)
-	for i := range n {
-		out := s.Leak[i]
-		for j := range n {
-			k := 0.0
-			if s.K != nil {
-				k = s.K[i*n+j]
-			}
-			if j != i {
-				out += s.F[i*n+j]
-				k += s.F[i*n+j]
-			}
-			right.Set(i, j, k)
-			switch {
-			case s.Mass != nil:
-				m.Set(i, j, s.Mass[i*n+j])
-			case i == j:
-				m.Set(i, i, s.C[i])
-			}
-		}
-		right.Set(i, i, right.At(i, i)-out)
-		right.Set(i, n, flows[i])
-	}
-	var x mat.Dense
-	if err := x.Solve(m, right); err != nil && !errors.As(err, new(mat.Condition)) {
-		return nil, nil, err
-	}
-	return flat(x.Slice(0, n, 0, n)), flat(x.Slice(0, n, n, n+1)), nil
 }
 
 // transfer takes the equations apart.

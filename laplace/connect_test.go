@@ -88,7 +88,7 @@ func TestFormsAtRandomS(t *testing.T) {
 		sameAt(rt, "roots", h.Eval(s), want, 0)
 		f := h.TimeConstants()
 		sameAt(rt, "time constants", f.Eval(s), want, 0)
-		rate, direct, list := h.Fractions()
+		rate, direct, list := h.PartialFractions()
 		sum, size := complex(rate, 0)*s+complex(direct, 0), 0.0
 		for _, x := range list {
 			sum += x.Eval(s)

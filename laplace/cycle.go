@@ -9,7 +9,8 @@ import (
 // A Cycle is the periodic steady state of a system under inputs that repeat or
 // settle: what every response tends to, whatever its start. It holds one period,
 // from t = 0 of the inputs on, in closed form. It is never changed and may be used
-// from several goroutines.
+// from several goroutines; one of a Schedule uses that, and goroutines must not share
+// the two.
 type Cycle struct {
 	Period float64 // s; 0 where no input repeats and the cycle is a state of rest
 
@@ -81,7 +82,7 @@ func (s *System) Cycle(u []Waveform, base []float64) (*Cycle, error) {
 	if err != nil {
 		return nil, err
 	}
-	if err := first.steadies(c.Period); err != nil {
+	if err := first.checkDecay(c.Period); err != nil {
 		return nil, err
 	}
 	if c.z, err = first.fixedPoint(u, c); err != nil {

@@ -5,22 +5,22 @@ import (
 	"math/cmplx"
 )
 
-// fraction is the Fourier series of a response over a period 2T, taken on the line
+// fourierSeries is the Fourier series of a response over a period 2T, taken on the line
 // Re s = line and summed as a continued fraction whose coefficients come from the
 // quotient-difference scheme, with an estimate of the remainder: de Hoog, Knight
 // and Stokes, "An improved method for numerical inversion of Laplace transforms",
 // SIAM J. Sci. Stat. Comput. 3 (1982) 357-366. It sees F only right of its
 // singularities and so bears delays, jumps elsewhere and wrong branches to the left.
-type fraction struct {
+type fourierSeries struct {
 	line, half float64 // half is T
 	until      float64 // times above were not meant
 	d          []complex128
 	scale      float64
 }
 
-// fractionShape is the period in units of the last time, the wanted aliasing
+// seriesShape is the period in units of the last time, the wanted aliasing
 // e^{−2·line·T}, and the order of the fraction.
-type fractionShape struct {
+type seriesShape struct {
 	period, alias float64
 	order         int
 }
@@ -29,12 +29,12 @@ type fractionShape struct {
 // follow jumps and fast oscillations: the scheme keeps its digits at these orders,
 // and the two see different parts of the future wrapped into their periods.
 var (
-	checkShape = fractionShape{4, 1e-13, 20}
-	longShapes = [...]fractionShape{{2.4, 1e-11, 60}, {1.7, 1e-10, 100}}
+	checkShape = seriesShape{4, 1e-13, 20}
+	longShapes = [...]seriesShape{{2.4, 1e-11, 60}, {1.7, 1e-10, 100}}
 )
 
-func newFraction(g transform, abscissa, until float64, shape fractionShape) *fraction {
-	f := &fraction{half: shape.period * until / 2, until: until}
+func newFourierSeries(g transform, abscissa, until float64, shape seriesShape) *fourierSeries {
+	f := &fourierSeries{half: shape.period * until / 2, until: until}
 	f.line = abscissa - math.Log(shape.alias)/(2*f.half)
 	a := make([]complex128, 2*shape.order+1)
 	for k := range a {
@@ -86,7 +86,7 @@ func quotientDifference(a []complex128) []complex128 {
 }
 
 // at returns the inverse at the time t; NaN where the fraction failed.
-func (f *fraction) at(t float64) float64 {
+func (f *fourierSeries) at(t float64) float64 {
 	if f.scale == 0 {
 		return 0
 	}

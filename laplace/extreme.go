@@ -25,7 +25,7 @@ func (r *Response) extreme(out int, t0, t1 float64, sign float64) Extreme {
 	best := Extreme{Y: math.Inf(-1)}
 	before := 0.0 // what the window to the left ended with
 	r.windows(out, t0, t1, +1, &left, func(w *window) bool {
-		h := &heights{scan: scan{c: w.c, step: +1, sign: sign, tol: tol, left: &left}, best: &best}
+		h := &peakSearch{scan: scan{c: w.c, step: +1, sign: sign, tol: tol, left: &left}, best: &best}
 		if best.AtLeft && best.T == w.c.t0+w.l.t && math.Abs(w.l.y()-before) <= tol {
 			best.AtLeft = false // a bend, no jump
 		}
@@ -45,14 +45,14 @@ func (r *Response) extreme(out int, t0, t1 float64, sign float64) Extreme {
 	return best
 }
 
-// heights looks for the highest point of sign·y in one piece by branch and bound.
-type heights struct {
+// peakSearch looks for the highest point of sign·y in one piece by branch and bound.
+type peakSearch struct {
 	scan
 	best *Extreme
 }
 
 // offer keeps the jet if it is higher than what is known, or as high and earlier.
-func (h *heights) offer(j *jet) {
+func (h *peakSearch) offer(j *jet) {
 	y, t := h.sign*j.y(), h.c.t0+j.t
 	if y > h.best.Y+h.tol/4 || y > h.best.Y && t <= h.best.T || y >= h.best.Y-h.tol/4 && t < h.best.T {
 		*h.best = Extreme{T: t, Y: y, Capped: h.best.Capped}
@@ -60,7 +60,7 @@ func (h *heights) offer(j *jet) {
 }
 
 // search drops, decides or halves the interval between two jets already offered.
-func (h *heights) search(l, r *jet) {
+func (h *peakSearch) search(l, r *jet) {
 	if !(r.t > l.t) {
 		return
 	}

@@ -172,7 +172,7 @@ func (f *factors) logs(a, m, b float64) (lo, hi, down, up float64) {
 
 // unwind returns the phase of w followed from ω → 0: that of the product, moved to
 // the whole turn nearest to the phase itself.
-func (f *factors) unwind(w Swing) float64 {
+func (f *factors) unwind(w FrequencyPoint) float64 {
 	var sum float64
 	for _, x := range f.each {
 		v := x.turn(w.Omega, x.im)

@@ -4,8 +4,6 @@ import (
 	"fmt"
 	"math"
 	"math/cmplx"
-
-	"gonum.org/v1/gonum/mat"
 )
 
 // A NotDecaying error says that a pole does not lie left of the imaginary axis, so
@@ -52,9 +50,9 @@ func (e *Drifting) Error() string {
 // period must come to count as resonance.
 const harmonicTol = 1e-9
 
-// steadies refuses poles between an active input and an output that do not decay,
+// checkDecay refuses poles between an active input and an output that do not decay,
 // but for simple ones at 0, which fixedPoint judges.
-func (r *Response) steadies(period float64) error {
+func (r *Response) checkDecay(period float64) error {
 	for i, p := range r.s.poles {
 		if real(p.P) < -p.Radius || !r.inSight(p) {
 			continue
@@ -112,7 +110,7 @@ func (s *System) integrates(i int) bool {
 // from rest over one period of it.
 func (r *Response) fixedPoint(u []Waveform, c *Cycle) (vector, error) {
 	m, z := r.s.modal, r.end()
-	if err := r.balanced(c.Period, &z); err != nil {
+	if err := r.checkDrift(c.Period, &z); err != nil {
 		return z, err
 	}
 	for k, p := range m.real {
@@ -128,7 +126,7 @@ func (r *Response) fixedPoint(u []Waveform, c *Cycle) (vector, error) {
 			return z, err
 		}
 	}
-	return z, r.s.keep(u, c, &z)
+	return z, r.s.keepIntegrals(u, c, &z)
 }
 
 // end returns the state at the end of the response.
@@ -139,8 +137,8 @@ func (r *Response) end() vector {
 	return z
 }
 
-// balanced refuses a mode at 0 that takes in something in a period and is seen.
-func (r *Response) balanced(period float64, w *vector) error {
+// checkDrift refuses a mode at 0 that takes in something in a period and is seen.
+func (r *Response) checkDrift(period float64, w *vector) error {
 	worst := Drifting{Period: period}
 	for i := range r.s.poles {
 		if !r.s.integrates(i) {
@@ -178,24 +176,22 @@ const balanceTol = 1e-12
 func (q *block) fix(period float64, x []float64) error {
 	w := newBlockWork(q.n)
 	w.at(q.n, q.t, period)
-	part := mat.NewVecDense(q.n, x[q.first:q.first+q.n])
+	part := x[q.first : q.first+q.n]
 	for _, a := range [][]float64{q.t, w.p1} {
-		var lu mat.LU
-		lu.Factorize(mat.NewDense(q.n, q.n, append([]float64(nil), a...)))
-		y := mat.NewVecDense(q.n, nil)
-		if err := lu.SolveVecTo(y, false, part); err != nil {
-			if _, poor := err.(mat.Condition); !poor || math.IsInf(lu.Cond(), 1) {
-				return &NotDecaying{Pole: complex(q.t[0], 0)}
-			}
+		f := newRefinedLU(q.n, a)
+		if f == nil {
+			return &NotDecaying{Pole: complex(q.t[0], 0)}
 		}
-		part.CopyVec(y)
+		copy(part, f.solve(part))
 	}
-	part.ScaleVec(-1/period, part)
+	for i := range part {
+		part[i] /= -period
+	}
 	return nil
 }
 
-// keep sets the modes at 0 to what the response from rest to u itself leaves them.
-func (s *System) keep(u []Waveform, c *Cycle, z *vector) error {
+// keepIntegrals sets the modes at 0 to what the response from rest to u itself leaves them.
+func (s *System) keepIntegrals(u []Waveform, c *Cycle, z *vector) error {
 	var kept []int
 	for i := range s.poles {
 		if s.integrates(i) {
@@ -218,7 +214,7 @@ func (s *System) keep(u []Waveform, c *Cycle, z *vector) error {
 	}
 	now := r.end()
 	for _, k := range kept {
-		z.real[k] = now.real[k] + r.comes(k)
+		z.real[k] = now.real[k] + r.stillToCome(k)
 	}
 	return nil
 }
@@ -232,8 +228,8 @@ func (c *Cycle) from() float64 {
 	return t
 }
 
-// comes returns what mode k at 0 still takes in, after the end, of what dies away.
-func (r *Response) comes(k int) float64 {
+// stillToCome returns what mode k at 0 still takes in, after the end, of what dies away.
+func (r *Response) stillToCome(k int) float64 {
 	sum := 0.0
 	for j, in := range r.input {
 		w := r.wave[j]

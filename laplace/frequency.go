@@ -7,9 +7,9 @@ import (
 	"lagbook/laplace/matrix"
 )
 
-// A Swing is the steady answer to exp(iωt) at one frequency: a sine of amplitude 1
-// at the input becomes one of amplitude Gain at the output, Phase later in angle.
-type Swing struct {
+// A FrequencyPoint is the steady answer to exp(iωt) at one frequency: a sine of amplitude
+// 1 at the input becomes one of amplitude Gain at the output, ahead by the angle Phase.
+type FrequencyPoint struct {
 	Omega float64    // rad/s
 	H     complex128 // H(iω)
 	Gain  float64    // |H|, output per unit of input; +Inf at a pole on the imaginary axis
@@ -26,18 +26,18 @@ type Swing struct {
 }
 
 // Period returns 2π/ω in s.
-func (w Swing) Period() float64 { return 2 * math.Pi / w.Omega }
+func (w FrequencyPoint) Period() float64 { return 2 * math.Pi / w.Omega }
 
 // Lag returns in s how long after the input the output swings: the unwound phase as
 // a time. It is negative where the output leads.
-func (w Swing) Lag() float64 { return 0 - w.Unwound/360*w.Period() } // 0, not −0, where it is in step
+func (w FrequencyPoint) Lag() float64 { return 0 - w.Unwound/360*w.Period() } // 0, not −0, where it is in step
 
 // A FrequencyResponse evaluates one transfer function along the imaginary axis. It
 // is a workspace: two goroutines must not share one.
 type FrequencyResponse struct {
-	h     *Transfer
-	swing *matrix.Swing // nil: nothing stored
-	lines factors
+	h         *Transfer
+	resolvent *matrix.Resolvent // nil: nothing stored
+	lines     factors
 }
 
 // Frequency returns the frequency response of the transfer.
@@ -53,30 +53,20 @@ func (h *Transfer) Frequency() (*FrequencyResponse, error) {
 		return r, nil
 	}
 	var err error
-	if r.swing, err = h.system.plant.swing(); err != nil {
+	if r.resolvent, err = h.system.plant.resolvent(); err != nil {
 		return nil, err
 	}
 	r.lines = r.factors()
 	return r, nil
 }
 
-func (p *plant) swing() (*matrix.Swing, error) {
-	switch {
-	case p.balance != nil:
-		return matrix.NewSwing(p.balance)
-	case p.stores != nil:
-		return matrix.StoresSwing(p.stores)
-	}
-	return matrix.PlainSwing(p.n, p.dense)
-}
-
 // slackFactor is how many times the effect of one rounding a result may be off.
 const slackFactor = 4
 
 // At returns the answer at ω > 0 in rad/s.
-func (r *FrequencyResponse) At(omega float64) Swing {
-	w := Swing{Omega: omega, H: r.h.polynomial(complex(0, omega))}
-	if r.swing != nil {
+func (r *FrequencyResponse) At(omega float64) FrequencyPoint {
+	w := FrequencyPoint{Omega: omega, H: r.h.polynomial(complex(0, omega))}
+	if r.resolvent != nil {
 		w.H, w.Slack = r.solve(omega)
 		w.Slack *= slackFactor
 	}
@@ -93,7 +83,7 @@ func (r *FrequencyResponse) At(omega float64) Swing {
 // number moves by a rounding.
 func (r *FrequencyResponse) solve(omega float64) (h complex128, slack float64) {
 	s := r.h.system
-	h, slack = r.swing.Transfer(complex(0, omega), s.b[0], s.c[0], s.d[0][0])
+	h, slack = r.resolvent.Transfer(complex(0, omega), s.b[0], s.c[0], s.d[0][0])
 	if rate := r.h.rate; rate != 0 {
 		h += complex(0, rate*omega)
 		slack += epsilon / 2 * math.Abs(rate*omega)

@@ -20,7 +20,7 @@ func (s *System) Gain(in, out int) (float64, bool) {
 	if at == nil {
 		return s.gainOfModes(in, out)
 	}
-	if p.dense != nil && s.poleAtZero(in, out) {
+	if p.stores == nil && s.poleAtZero(in, out) {
 		return 0, false
 	}
 	g := s.d[out][in]

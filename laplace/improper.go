@@ -86,14 +86,9 @@ func (c *Cycle) Impulses(out int) ([]Impulse, error) {
 		if jump := w.At(0) - w.Left(c.Period); math.Abs(jump) > 1e-12*w.size(c.Period) {
 			list = append(list, Impulse{0, rate * jump, i})
 		}
-		times, err := w.JumpTimes(0, c.Period, MaxBreaks)
-		if err != nil {
+		var err error
+		if list, err = w.impulses(list, rate, i, math.Nextafter(c.Period, 0)); err != nil {
 			return nil, err
-		}
-		for _, t := range times {
-			if t > 0 && t < c.Period {
-				list = append(list, Impulse{t, rate * (w.At(t) - w.Left(t)), i})
-			}
 		}
 	}
 	sort.SliceStable(list, func(a, b int) bool { return list[a].T < list[b].T })
@@ -115,16 +110,23 @@ func (r *Response) Impulses(out int) ([]Impulse, error) {
 		if first := w.At(0); first != 0 {
 			list = append(list, Impulse{0, rate * first, i})
 		}
-		times, err := w.JumpTimes(0, r.until, MaxBreaks)
-		if err != nil {
+		var err error
+		if list, err = w.impulses(list, rate, i, r.until); err != nil {
 			return nil, err
-		}
-		for _, t := range times {
-			if t > 0 {
-				list = append(list, Impulse{t, rate * (w.At(t) - w.Left(t)), i})
-			}
 		}
 	}
 	sort.SliceStable(list, func(a, b int) bool { return list[a].T < list[b].T })
 	return list, nil
+}
+
+// impulses appends those that a share rate of the derivative makes of the jumps of w in
+// (0, until].
+func (w *Waveform) impulses(list []Impulse, rate float64, input int, until float64) ([]Impulse, error) {
+	times, err := w.JumpTimes(0, until, MaxBreaks)
+	for _, t := range times {
+		if t > 0 {
+			list = append(list, Impulse{t, rate * (w.At(t) - w.Left(t)), input})
+		}
+	}
+	return list, err
 }

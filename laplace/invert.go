@@ -108,7 +108,7 @@ func Invert(F func(s complex128) complex128, t []float64, o InvertOptions) ([]Es
 		return v.out, nil
 	}
 	lo, hi := v.times[rest[0]], v.times[rest[len(rest)-1]]
-	if err := v.suspect(lo, hi); err != nil {
+	if err := v.inspect(lo, hi); err != nil {
 		return nil, err
 	}
 	for len(rest) > 0 {
@@ -134,10 +134,10 @@ type inversion struct {
 	out      []Estimate
 	span     float64 // range found so far
 	base     float64 // range of the response times e^{−Abscissa·t}
-	hidden   []hidden
+	hidden   []unresolvedPole
 	contours [len(contourPoints)]*contour
 	euler    [len(eulerOrders)]*eulerSum
-	check    *fraction
+	check    *fourierSeries
 }
 
 func (o *InvertOptions) check(F func(complex128) complex128, t []float64) ([]int, error) {

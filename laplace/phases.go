@@ -25,6 +25,14 @@ func (p *phases) starts(until float64) []float64 {
 	return append([]float64(nil), p.at[:n]...)
 }
 
+// end returns where phase k ends, until at the latest.
+func (p *phases) end(k int, until float64) float64 {
+	if k+1 < len(p.at) {
+		return min(until, p.at[k+1])
+	}
+	return until
+}
+
 // kindAt returns the kind in force at t, after a switch there.
 func (p *phases) kindAt(t float64) int {
 	if len(p.at) == 1 {
@@ -41,11 +49,7 @@ func (p *phases) growth(r *Response) float64 {
 	}
 	sum := 0.0
 	for k, at := range p.at {
-		end := r.until
-		if k+1 < len(p.at) {
-			end = min(end, p.at[k+1])
-		}
-		sum += rate[p.kind[k]] * max(end-at, 0)
+		sum += rate[p.kind[k]] * max(p.end(k, r.until)-at, 0)
 	}
 	return sum
 }

@@ -5,23 +5,45 @@ import (
 	"fmt"
 	"math"
 
-	"gonum.org/v1/gonum/mat"
-
 	"lagbook/laplace/matrix"
 )
 
-// A plant holds the equations of the stores in one of three forms: as the balance
-// of a network, with couplings of its own where flows are stores too, or as a plain
-// matrix a with x' = a x.
+// A plant holds the equations of the stores, as they were stated or as a plain matrix a
+// with x' = a x.
 type plant struct {
-	n       int
-	balance *matrix.Balance
-	stores  *matrix.Stores
-	dense   []float64 // n×n row-major, where balance and stores are nil
+	n      int
+	stores *matrix.Stores // nil: a plain matrix
+	dense  []float64      // n×n row-major
+}
+
+// balance returns the stores where they are levels alone, without couplings of their
+// own; nil otherwise.
+func (p *plant) balance() *matrix.Balance {
+	if p.stores == nil || p.coupled() {
+		return nil
+	}
+	return &p.stores.Balance
+}
+
+// coupled reports that flows are stores too.
+func (p *plant) coupled() bool {
+	return p.stores != nil && (p.stores.K != nil || p.stores.Mass != nil)
+}
+
+// asStores returns the plant as stores, a plain matrix as couplings of capacities 1.
+func (p *plant) asStores() *matrix.Stores {
+	if p.stores != nil {
+		return p.stores
+	}
+	b := matrix.Balance{N: p.n, C: make([]float64, p.n), F: make([]float64, p.n*p.n), Leak: make([]float64, p.n)}
+	for i := range b.C {
+		b.C[i] = 1
+	}
+	return &matrix.Stores{Balance: b, K: p.dense}
 }
 
 func (p *plant) check() error {
-	b, n := p.balance, p.n
+	b, n := &p.stores.Balance, p.n
 	if n < 0 || len(b.C) != n || len(b.F) != n*n || len(b.Leak) != n {
 		return errors.New("laplace: C, F and Leak do not have the shapes that N asks for")
 	}
@@ -41,49 +63,54 @@ func (p *plant) check() error {
 	return nil
 }
 
-func (p *plant) isRC() bool { return p.balance != nil && p.balance.IsRC() }
+func (p *plant) isRC() bool {
+	b := p.balance()
+	return b != nil && b.IsRC()
+}
 
-func (p *plant) blockForm() (*matrix.BlockForm, error) {
-	if p.balance != nil {
-		return p.balance.BlockForm()
-	}
+func (p *plant) blockForm(w *matrix.BlockWork) (*matrix.BlockForm, error) {
 	if p.stores != nil {
-		return p.stores.BlockForm()
+		return w.Stores(p.stores)
 	}
 	for _, v := range p.dense {
 		if !isNumber(v) {
 			return nil, errors.New("a number of the matrix is not finite")
 		}
 	}
-	return matrix.DenseBlockForm(p.n, p.dense, nil)
+	return w.Dense(p.n, p.dense, nil)
+}
+
+func (p *plant) resolvent() (*matrix.Resolvent, error) {
+	if p.stores != nil {
+		return p.stores.Resolvent()
+	}
+	return matrix.DenseResolvent(p.n, p.dense)
+}
+
+// matrix returns the plant and the flows b as a plain matrix and rates.
+func (p *plant) matrix(b []float64) (a, rates []float64, err error) {
+	if p.stores != nil {
+		return p.stores.Dense(b)
+	}
+	return p.dense, b, nil
 }
 
 // pattern returns a balance with the same graph, for questions of structure only.
 func (p *plant) pattern() *matrix.Balance {
-	if p.balance != nil {
-		return p.balance
+	if b := p.balance(); b != nil {
+		return b
 	}
-	if p.stores != nil {
-		return p.stores.Pattern()
-	}
-	b := &matrix.Balance{N: p.n, C: make([]float64, p.n), F: p.dense, Leak: make([]float64, p.n)}
-	for i := range b.C {
-		b.C[i] = 1
-	}
-	return b
+	return p.asStores().Pattern()
 }
 
 // restrict returns the plant of the stores in keep with all others held at 0.
 func (p *plant) restrict(keep []int) plant {
-	if p.balance != nil {
-		b := p.balance.Restrict(keep)
-		return plant{n: len(keep), balance: &b}
-	}
+	r := plant{n: len(keep)}
 	if p.stores != nil {
 		b := p.stores.Restrict(keep)
-		return plant{n: len(keep), stores: &b}
+		r.stores = &b
+		return r
 	}
-	r := plant{n: len(keep)}
 	for _, i := range keep {
 		for _, j := range keep {
 			r.dense = append(r.dense, p.dense[i*p.n+j])
@@ -92,66 +119,28 @@ func (p *plant) restrict(keep []int) plant {
 	return r
 }
 
-// solver returns what solves the balance at rest, 0 = a x + b, for x; nil where a
-// is singular. A balance is eliminated without subtraction where it is a network,
-// a plain matrix by LU with one step of refinement.
+// maxCondition is the condition from which a plain matrix counts as singular.
+const maxCondition = 1e16
+
+// solver returns what solves the balance at rest, 0 = a x + b, for x; nil where a is
+// singular. A network is eliminated without subtraction, stores that are flows in
+// doubled precision, a plain matrix by LU with one step of refinement.
 func (p *plant) solver() func(b []float64) []float64 {
+	if b := p.balance(); b != nil {
+		if e, err := b.Eliminate(); err == nil {
+			return e.Solve
+		}
+		return nil
+	}
 	if p.stores != nil {
 		if r := p.stores.AtRest(); r != nil {
 			return r.Solve
 		}
 		return nil
 	}
-	if p.balance == nil {
-		if solveDense(p.n, p.dense, make([]float64, p.n)) == nil {
-			return nil
-		}
-		return func(b []float64) []float64 { return solveDense(p.n, p.dense, b) }
-	}
-	e, err := p.balance.Eliminate()
-	if err != nil {
+	f := newRefinedLU(p.n, p.dense)
+	if f == nil || !(f.condition() < maxCondition) {
 		return nil
 	}
-	return e.Solve
-}
-
-// solveDense returns x of 0 = a x + b, nil where a is singular to rounding.
-func solveDense(n int, a, b []float64) []float64 {
-	if n == 0 {
-		return []float64{}
-	}
-	var lu mat.LU
-	lu.Factorize(mat.NewDense(n, n, append([]float64(nil), a...)))
-	if !(lu.Cond() < 1e16) {
-		return nil
-	}
-	x, r := mat.NewVecDense(n, nil), mat.NewVecDense(n, nil)
-	for i, v := range b {
-		r.SetVec(i, -v)
-	}
-	for range 2 {
-		step := mat.NewVecDense(n, nil)
-		if err := lu.SolveVecTo(step, false, r); err != nil && !errors.As(err, new(mat.Condition)) {
-			return nil
-		}
-		x.AddVec(x, step)
-		for i := range n {
-			r.SetVec(i, residual(a[i*n:(i+1)*n], x.RawVector().Data, b[i]))
-		}
-	}
-	return x.RawVector().Data
-}
-
-// residual returns −b − a·x with products and sums in twice the precision.
-func residual(a, x []float64, b float64) float64 {
-	hi, lo := -b, 0.0
-	for j, v := range a {
-		p := -v * x[j]
-		lo += math.FMA(-v, x[j], -p)
-		s := hi + p
-		t := s - hi
-		lo += (hi - (s - t)) + (p - t)
-		hi = s
-	}
-	return hi + lo
+	return f.solveNegative
 }

@@ -7,10 +7,7 @@ func (h *Transfer) polynomials(sub *System, cancelled bool) {
 	if sub.plant.n > MaxRatioOrder {
 		return
 	}
-	num, den, err := sub.plant.ratio(sub.b[0], sub.c[0], sub.d[0][0], sub.rateOf(0, 0))
-	for len(num) > 0 && num[len(num)-1] == 0 {
-		num = num[:len(num)-1]
-	}
+	num, den, err := sub.plant.asStores().Ratio(sub.b[0], sub.c[0], sub.d[0][0], sub.rateOf(0, 0))
 	if err != nil || len(num) == 0 {
 		return
 	}
@@ -18,8 +15,10 @@ func (h *Transfer) polynomials(sub *System, cancelled bool) {
 		h.Numerator, h.Denominator = num, den
 		return
 	}
-	h.Denominator = product(1, h.Poles)
-	h.Numerator = product(num[len(num)-1], h.Zeros)
+	den, num = product(1, h.Poles), product(num[len(num)-1], h.Zeros)
+	if finite("", den...) == nil && finite("", num...) == nil {
+		h.Numerator, h.Denominator = num, den
+	}
 }
 
 // product returns lead·Π(s − p)^mult, ascending. Conjugates are multiplied as one

@@ -81,7 +81,7 @@ func TestPowersOfTwo(t *testing.T) {
 
 // inTime is the same system with every time constant times 2^k.
 func (s *System) inTime(t *rapid.T, k int) *System {
-	b := *s.plant.balance
+	b := *s.plant.balance()
 	b.C = append([]float64(nil), b.C...)
 	for i := range b.C {
 		b.C[i] = math.Ldexp(b.C[i], k)
@@ -153,14 +153,14 @@ func horner(c []float64, s complex128) complex128 {
 // equations solves (sI − A)x = b for input 0 and output 0.
 func (s *System) equations(at complex128) complex128 {
 	q := block{n: s.plant.n, t: s.plant.dense}
-	if s.plant.balance != nil {
-		q.t = s.plant.balance.Dense()
+	if s.plant.balance() != nil {
+		q.t = s.plant.balance().Dense()
 	}
 	x := make([]complex128, q.n)
 	for i, v := range s.b[0] {
 		x[i] = complex(v, 0)
-		if s.plant.balance != nil {
-			x[i] /= complex(s.plant.balance.C[i], 0)
+		if s.plant.balance() != nil {
+			x[i] /= complex(s.plant.balance().C[i], 0)
 		}
 	}
 	q.resolve(at, x)
@@ -257,16 +257,16 @@ func TestMarchAgrees(t *testing.T) {
 // march takes x from t0 to t1 in n steps.
 func (s *System) march(u []Waveform, x []float64, t0, t1 float64, n int) {
 	a := s.plant.dense
-	if s.plant.balance != nil {
-		a = s.plant.balance.Dense()
+	if s.plant.balance() != nil {
+		a = s.plant.balance().Dense()
 	}
 	slope := func(t float64, x []float64, last bool) []float64 {
 		v := make([]float64, len(x))
 		for i := range v {
 			for k := range u {
 				b := s.b[k][i]
-				if s.plant.balance != nil {
-					b /= s.plant.balance.C[i]
+				if s.plant.balance() != nil {
+					b /= s.plant.balance().C[i]
 				}
 				if last {
 					v[i] += b * u[k].Left(t1)

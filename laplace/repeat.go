@@ -3,6 +3,7 @@ package laplace
 import (
 	"fmt"
 	"math"
+	"slices"
 )
 
 // MaxBreaks is the largest number of breaks a response, or a period of a repeated
@@ -82,6 +83,23 @@ func (w *Waveform) starts(until float64, limit int) ([]float64, error) {
 			return list, nil
 		}
 	}
+}
+
+// sameInstant is the share of a span of time within which two instants count as one.
+const sameInstant = 32 * epsilon
+
+// distinct sorts instants and keeps the first of those that lie within near of each
+// other.
+func distinct(t []float64, near float64) []float64 {
+	slices.Sort(t)
+	n := min(len(t), 1)
+	for _, next := range t[n:] {
+		if next > t[n-1]+near {
+			t[n] = next
+			n++
+		}
+	}
+	return t[:n]
 }
 
 // stuck reports that the next repetition is lost in the rounding of time.

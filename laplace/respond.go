@@ -3,6 +3,7 @@ package laplace
 import (
 	"fmt"
 	"math"
+	"slices"
 	"sort"
 	"sync/atomic"
 )
@@ -194,18 +195,8 @@ func (r *Response) findTimes() error {
 		}
 		r.times = append(r.times, list...)
 	}
-	if len(r.wave)+len(r.phases.kind) > 2 {
-		sort.Float64s(r.times)
-	}
-	n := 1
-	for _, t := range r.times[1:] {
-		if t > r.times[n-1] {
-			r.times[n] = t
-			n++
-		}
-	}
-	r.times = r.times[:n:n]
-	if n > MaxBreaks {
+	r.times = slices.Clip(distinct(r.times, 0))
+	if n := len(r.times); n > MaxBreaks {
 		return &TooMany{Found: n, Limit: MaxBreaks}
 	}
 	return nil

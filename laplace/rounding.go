@@ -74,9 +74,6 @@ func (r *Response) levels(s *System) []float64 {
 	}
 	for i := range n {
 		c := 1.0
-		if b := s.plant.balance; b != nil {
-			c = b.C[i]
-		}
 		if b := s.plant.stores; b != nil {
 			c = b.C[i]
 		}

@@ -19,7 +19,7 @@ func (r *Response) points(p *piece, t []float64, at int, y [][]float64) {
 			r.curve(p, m).withoutReal().fill(tau, y[m][at:])
 		}
 	}
-	f := r.faders(p, y)
+	f := r.sharedTerms(p, y)
 	var parts [3][chunk]float64
 	for from := 0; from < len(tau); from += chunk {
 		to := min(from+chunk, len(tau))
@@ -47,17 +47,17 @@ func (c *curve) fill(tau, y []float64) {
 	}
 }
 
-// A fader is one real mode as all outputs see it.
-type fader struct {
+// A sharedTerm is one real mode as all outputs see it.
+type sharedTerm struct {
 	p       float64
 	h, a, b []float64 // for each output
 	ramps   bool
 }
 
-func (r *Response) faders(p *piece, y [][]float64) []fader {
-	var list []fader
+func (r *Response) sharedTerms(p *piece, y [][]float64) []sharedTerm {
+	var list []sharedTerm
 	for k, pole := range p.m.real {
-		f := fader{p: pole, ramps: p.b.real[k] != 0}
+		f := sharedTerm{p: pole, ramps: p.b.real[k] != 0}
 		for m := range y {
 			o := 0.0
 			if y[m] != nil {
@@ -76,7 +76,7 @@ func (r *Response) faders(p *piece, y [][]float64) []fader {
 
 // fill adds the mode at each time. Once it has died out it leaves a constant and a
 // ramp, which take no exponential.
-func (f *fader) fill(tau []float64, at int, y [][]float64, parts *[3][chunk]float64) {
+func (f *sharedTerm) fill(tau []float64, at int, y [][]float64, parts *[3][chunk]float64) {
 	alive := sort.Search(len(tau), func(i int) bool { return f.p*tau[i] < -dead })
 	e, f1, f2 := parts[0][:alive], parts[1][:alive], parts[2][:alive]
 	for i, v := range tau[:alive] {
@@ -95,7 +95,7 @@ func (f *fader) fill(tau []float64, at int, y [][]float64, parts *[3][chunk]floa
 }
 
 // addTo adds the mode to one output.
-func (f *fader) addTo(y, tau []float64, alive, m int, e, f1, f2 []float64) {
+func (f *sharedTerm) addTo(y, tau []float64, alive, m int, e, f1, f2 []float64) {
 	h, a, b := f.h[m], f.a[m], f.b[m]
 	for i, v := range e {
 		y[i] += v*h + f1[i]*a

@@ -4,13 +4,14 @@ import (
 	"errors"
 	"fmt"
 	"math"
-	"sort"
 )
 
 // A Schedule is a system with numbers that switch: piecewise constant waves, and the
 // linear system in force while they have given values. The stores are the same in
 // all systems and keep what they hold over a switch; so are inputs and outputs. Where
 // a system has fewer stores than another, a Carry says what becomes of the rest.
+//
+// It remembers the systems it has met, so that two goroutines must not share it.
 //
 // Pick is asked once for each set of values that occurs; every System it hands out
 // must come from NewCarrying or, all of them with the same quantities, from
@@ -109,12 +110,8 @@ func (s *Schedule) phases(waves []Waveform, until float64) (phases, error) {
 		}
 		at = append(at, list...)
 	}
-	sort.Float64s(at)
 	p := phases{last: -1}
-	for i, t := range at {
-		if i > 0 && t == at[i-1] {
-			continue
-		}
+	for _, t := range distinct(at, 0) {
 		k, err := s.kind(waves, func(w *Waveform) float64 { return w.At(t) })
 		if err != nil {
 			return phases{}, &SwitchError{t, err}

@@ -185,13 +185,7 @@ func TestScheduleCycle(t *testing.T) {
 			if !ok {
 				continue
 			}
-			excess := func(cycle float64) (worst float64) {
-				for k := range 1200 {
-					at := 0.005 * float64(k)
-					worst = max(worst, math.Abs(r.At(i, cycle*6+at)-c.At(i, at)))
-				}
-				return worst
-			}
+			excess := func(cycle float64) float64 { return farthest(r, c, i, cycle*6, cycle*6+6, 1200) }
 			band := 0.02 * c.Swing(i)
 			if worst := excess(n); worst > band*(1+1e-9) {
 				t.Errorf("after %v cycles %v off, band %v", n, worst, band)

@@ -124,11 +124,7 @@ func (c *Cycle) sight(out int) float64 {
 	p := &c.r.phases
 	most, size := 0.0, 1.0
 	for k := range p.at {
-		end := c.Period
-		if k+1 < len(p.at) {
-			end = p.at[k+1]
-		}
-		s, h := p.kinds[p.kind[k]].System, end-p.at[k]
+		s, h := p.kinds[p.kind[k]].System, p.end(k, c.Period)-p.at[k]
 		most = max(most, size*s.sight(&s.modal.out[out], h))
 		grown := 0.0
 		for i := range s.carry.out {

@@ -114,13 +114,9 @@ func (p *phases) change(period float64) *mat.Dense {
 			}
 		}
 		for k := range p.at {
-			end := period
-			if k+1 < len(p.at) {
-				end = p.at[k+1]
-			}
 			s := p.kinds[p.kind[k]].System
 			by(s.carry.entered(x))
-			by(s.changed(x, end-p.at[k]))
+			by(s.changed(x, p.end(k, period)-p.at[k]))
 		}
 		e.SetCol(j, sum)
 	}
@@ -174,22 +170,11 @@ func (c *Cycle) balance(v []float64) ([]float64, error) {
 			return nil, &NotContracting{Multiplier: 1 + e, Period: c.Period}
 		}
 	}
-	var lu mat.LU
-	lu.Factorize(c.change)
-	x, r := mat.NewVecDense(n, nil), mat.NewVecDense(n, append([]float64(nil), v...))
-	for range 2 { // once more with the residual
-		step := mat.NewVecDense(n, nil)
-		if err := lu.SolveVecTo(step, false, r); err != nil {
-			if _, poor := err.(mat.Condition); !poor {
-				return nil, &NotContracting{Multiplier: 1, Period: c.Period}
-			}
-		}
-		x.SubVec(x, step)
-		for i := range n {
-			r.SetVec(i, -residual(c.change.RawRowView(i), x.RawVector().Data, v[i]))
-		}
+	f := newRefinedLU(n, c.change.RawMatrix().Data)
+	if f == nil {
+		return nil, &NotContracting{Multiplier: 1, Period: c.Period}
 	}
-	return x.RawVector().Data, nil
+	return f.solveNegative(v), nil
 }
 
 // multiplierTol is how near to 1 the square of a multiplier cannot be told from it:

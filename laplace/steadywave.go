@@ -3,7 +3,6 @@ package laplace
 import (
 	"fmt"
 	"math"
-	"sort"
 	"strconv"
 )
 
@@ -169,22 +168,15 @@ func together(list []steadyWave, period float64) ([]Waveform, error) {
 	if total > MaxBreaks {
 		return nil, &TooMany{Found: int(min(total, 1e15)), Limit: MaxBreaks}
 	}
-	near := 32 * epsilon * period
+	near := sameInstant * period
 	var times []float64
 	for i := range list {
 		times = list[i].starts(times, period-near)
 	}
-	sort.Float64s(times)
-	n := 1
-	for _, t := range times[1:] {
-		if t > times[n-1]+near {
-			times[n] = t
-			n++
-		}
-	}
+	times = distinct(times, near)
 	waves := make([]Waveform, len(list))
 	for i := range list {
-		waves[i] = list[i].over(times[:n], near)
+		waves[i] = list[i].over(times, near)
 	}
 	return waves, nil
 }

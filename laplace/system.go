@@ -14,10 +14,11 @@ import (
 //
 //	C x' = exchange of the Balance + K x + B u,   y = Output x + D u + Rate u'.
 //
-// B[k] is the flow into each store per unit of input k, Output[m] the weight of
-// each store in output m, D[m][k] the share of input k that reaches output m at once, Rate[m][k] the share of its derivative: an output with such a share is
-// improper. K and Mass couple stores as in matrix.Stores, levels with flows; a
-// network of levels alone leaves them nil.
+// B[k] is the flow into each store per unit of input k, Output[m] the weight of each
+// store in output m, D[m][k] the share of input k that reaches output m at once,
+// Rate[m][k] the share of its derivative: an output with such a share is improper. K and
+// Mass couple stores as in matrix.Stores, levels with flows; a network of levels alone
+// leaves them nil.
 type Realisation struct {
 	Balance matrix.Balance
 	K, Mass []float64   // N×N row-major, or nil
@@ -56,12 +57,9 @@ type System struct {
 // slices. An error says which number of r is not usable, or that the modes did
 // not converge. The cost is that of the modes, of order N³.
 func New(r Realisation) (*System, error) {
-	p := plant{n: r.Balance.N, balance: &r.Balance}
+	p := plant{n: r.Balance.N, stores: &matrix.Stores{Balance: r.Balance, K: r.K, Mass: r.Mass}}
 	if err := p.check(); err != nil {
 		return nil, err
-	}
-	if r.K != nil || r.Mass != nil {
-		p = plant{n: p.n, stores: &matrix.Stores{Balance: r.Balance, K: r.K, Mass: r.Mass}}
 	}
 	s, err := newSystem(p, r.B, r.Output, r.D)
 	if err != nil {
@@ -120,12 +118,21 @@ func newSystem(p plant, b, c, d [][]float64) (*System, error) {
 	return s, nil
 }
 
+// A workspace is room for taking a system apart, used again by the next one.
+type workspace struct {
+	rc     matrix.RCWork
+	blocks matrix.BlockWork
+}
+
+var workspaces = sync.Pool{New: func() any { return new(workspace) }}
+
 // takeApart fills modal and returns every pole with its seat.
 func (s *System) takeApart() ([]seated, error) {
+	w := workspaces.Get().(*workspace)
+	defer workspaces.Put(w)
 	if s.plant.isRC() {
-		var w matrix.RCWork
 		ports := append(append([][]float64(nil), s.b...), s.c...)
-		m, err := w.Modes(s.plant.balance, ports)
+		m, err := w.rc.Modes(s.plant.balance(), ports)
 		if err != nil {
 			return nil, fmt.Errorf("laplace: %w", err)
 		}
@@ -136,7 +143,7 @@ func (s *System) takeApart() ([]seated, error) {
 		}
 		return list, nil
 	}
-	f, err := s.plant.blockForm()
+	f, err := s.plant.blockForm(&w.blocks)
 	if err != nil {
 		return nil, fmt.Errorf("laplace: %w", err)
 	}

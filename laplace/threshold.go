@@ -48,7 +48,7 @@ func (r *FrequencyResponse) FallsBelow(level float64) (Crossing, bool) {
 	if r.h.rate != 0 { // it rises for ever
 		return Crossing{}, false
 	}
-	if r.swing == nil {
+	if r.resolvent == nil {
 		return Crossing{}, math.Abs(r.h.direct) < level
 	}
 	b := r.band()
@@ -102,11 +102,11 @@ func (s *gainSearch) last(a, b float64) (Crossing, bool) {
 	case high < s.goal:
 		return Crossing{}, false
 	case high-low < touches+2*f.off: // flat to rounding
-		return s.hair(a, m, b)
+		return s.undecided(a, m, b)
 	case up <= 0 || down >= 0:
 		return s.ends(a, b)
 	case b-a <= closest*b || !(m > a && m < b):
-		return s.hair(a, m, b)
+		return s.undecided(a, m, b)
 	}
 	if c, ok := s.last(m, b); ok {
 		return c, ok
@@ -135,8 +135,8 @@ func (s *gainSearch) reached(omega float64) bool {
 	return v >= 0
 }
 
-// hair decides an interval too short to halve.
-func (s *gainSearch) hair(a, m, b float64) (Crossing, bool) {
+// undecided decides an interval too short to halve.
+func (s *gainSearch) undecided(a, m, b float64) (Crossing, bool) {
 	if s.r.lines.log(m) < s.goal-touches-s.r.lines.off {
 		return Crossing{}, false
 	}
@@ -192,7 +192,7 @@ func (r *FrequencyResponse) Peak() GainPeak {
 	if r.h.rate != 0 {
 		return GainPeak{Omega: math.Inf(1), Gain: math.Inf(1)}
 	}
-	if r.swing == nil {
+	if r.resolvent == nil {
 		return GainPeak{Gain: math.Abs(r.h.direct)}
 	}
 	for _, p := range r.h.Poles {
@@ -201,7 +201,7 @@ func (r *FrequencyResponse) Peak() GainPeak {
 		}
 	}
 	b := r.band()
-	best := &highest{f: &r.lines, left: maxGainParts, log: math.Inf(-1)}
+	best := &gainPeakSearch{f: &r.lines, left: maxGainParts, log: math.Inf(-1)}
 	if r.h.HasGain && r.h.Gain != 0 {
 		best.offer(0, math.Log(math.Abs(r.h.Gain)))
 	}
@@ -224,8 +224,8 @@ func (r *FrequencyResponse) Peak() GainPeak {
 	return p
 }
 
-// highest looks for the highest point of ln|H| by branch and bound.
-type highest struct {
+// gainPeakSearch looks for the highest point of ln|H| by branch and bound.
+type gainPeakSearch struct {
 	f     *factors
 	left  int
 	omega float64
@@ -235,13 +235,13 @@ type highest struct {
 // gainRounding is by how much ln|H| must be higher to count as a hump of its own.
 const gainRounding = 1e-12
 
-func (h *highest) offer(omega, log float64) {
+func (h *gainPeakSearch) offer(omega, log float64) {
 	if log > h.log+gainRounding {
 		h.omega, h.log = omega, log
 	}
 }
 
-func (h *highest) search(a, b float64) {
+func (h *gainPeakSearch) search(a, b float64) {
 	if h.left <= 0 {
 		return
 	}
@@ -275,7 +275,7 @@ func (h *highest) search(a, b float64) {
 }
 
 // top offers the stationary point of a short interval, or its ends.
-func (h *highest) top(a, b float64) {
+func (h *gainPeakSearch) top(a, b float64) {
 	if h.f.slope(a) > 0 && h.f.slope(b) < 0 {
 		m, _, _ := descend(h.f.slope, a, b)
 		if v := h.f.log(m); v > h.log {

@@ -93,28 +93,28 @@ func (l Lag) eval(s complex128) complex128 {
 	return y
 }
 
-// A Fraction is Coef/(s − Pole)^Power.
-type Fraction struct {
+// A PartialFraction is Coef/(s − Pole)^Power.
+type PartialFraction struct {
 	Pole  complex128
 	Power int
 	Coef  complex128
 }
 
-// Fractions returns H(s) = rate·s + direct + Σ fractions, poles slowest first, powers
+// PartialFractions returns H(s) = rate·s + direct + Σ fractions, poles slowest first, powers
 // ascending. In the response to an impulse a fraction is Coef·t^(Power−1)·
 // exp(Pole·t)/(Power−1)!. Where poles nearly coincide the coefficients are huge and
 // cancel: for numbers use Eval, Respond or Frequency, which do not add them up.
-func (h *Transfer) Fractions() (rate, direct float64, list []Fraction) {
+func (h *Transfer) PartialFractions() (rate, direct float64, list []PartialFraction) {
 	for i, p := range h.Poles {
 		for k, c := range h.Residues[i] {
-			list = append(list, Fraction{p.P, k + 1, c})
+			list = append(list, PartialFraction{p.P, k + 1, c})
 		}
 	}
 	return h.rate, h.direct, list
 }
 
 // Eval returns the fraction at s.
-func (f Fraction) Eval(s complex128) complex128 {
+func (f PartialFraction) Eval(s complex128) complex128 {
 	x := f.Coef
 	for range f.Power {
 		x /= s - f.Pole
@@ -124,7 +124,7 @@ func (f Fraction) Eval(s complex128) complex128 {
 
 // Impulse returns the fraction's part of the response to an impulse at t ≥ 0 in s; of
 // a conjugate pair each member its half.
-func (f Fraction) Impulse(t float64) float64 {
+func (f PartialFraction) Impulse(t float64) float64 {
 	x := f.Coef * cexp(f.Pole, t)
 	return real(x) * math.Pow(t, float64(f.Power-1)) / math.Gamma(float64(f.Power))
 }

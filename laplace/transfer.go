@@ -29,7 +29,8 @@ type Transfer struct {
 	Residues [][]complex128
 
 	// Numerator and Denominator are the coefficients in ascending powers of s, the
-	// denominator monic; nil above MaxRatioOrder.
+	// denominator monic; nil above MaxRatioOrder and where a coefficient leaves the
+	// range of numbers.
 	Numerator, Denominator []float64
 
 	Behaviour string

@@ -40,15 +40,12 @@ func (s *steadyWave) changes(w *Waveform) []float64 {
 			list = append(list, at)
 		}
 	}
-	sort.Float64s(list)
-	n, near := 1, 32*epsilon*s.from
-	for _, t := range list[1:] {
-		if t > list[n-1]+near && t < s.from-near {
-			list[n] = t
-			n++
-		}
+	near := sameInstant * s.from
+	list = distinct(list, near)
+	for len(list) > 1 && list[len(list)-1] >= s.from-near {
+		list = list[:len(list)-1]
 	}
-	return list[:n]
+	return list
 }
 
 // at returns the steady wave as a segment that begins at t.
@@ -56,7 +53,7 @@ func (s *steadyWave) at(t float64) Segment {
 	if s.pattern == nil {
 		return s.rest.from(t)
 	}
-	near := 32 * epsilon * max(t, s.period)
+	near := sameInstant * max(t, s.period)
 	tau := math.Mod(t-s.phase, s.period)
 	if tau < 0 {
 		tau += s.period

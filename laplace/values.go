@@ -1,9 +1,6 @@
 package laplace
 
-import (
-	"math"
-	"math/cmplx"
-)
+import "math/cmplx"
 
 // Lead returns lim s^r·H(s) for s → ∞ with r the relative degree: the ratio of the
 // leading coefficients, by which the response to a step begins as Lead·t^r/r!. It is
@@ -49,23 +46,21 @@ func (h *Transfer) leadOfRoots() float64 { return h.Gain / real(rootRatio(h.Zero
 
 // Initial returns the value of the response to a unit step from rest at t = 0⁺, and
 // its slope there in 1/s: the theorem of the initial value, lim s·H(s)/s for s → ∞.
-// Both come from the equations, D and C·B, not from a limit taken in numbers.
+// Both come from the equations, D and C·B, not from a limit taken in numbers. Of an
+// improper transfer they are what follows the impulse.
 func (h *Transfer) Initial() (value, slope float64) {
 	value = h.direct
 	if h.system == nil {
 		return value, 0
 	}
-	e, err := h.equations()
-	if err != nil {
-		return value, math.NaN()
-	}
-	for i, c := range e.c {
-		slope += c * e.b[i]
-	}
 	if h.RelativeDegree > 1 { // by structure, whatever the rounding
-		slope = 0
+		return value, 0
 	}
-	return value, slope
+	_, rates, err := h.system.plant.matrix(h.system.b[0])
+	if err != nil {
+		panic("laplace: equations that were taken apart have no matrix")
+	}
+	return value, dot(h.system.c[0], rates)
 }
 
 // Final returns the limit of the response to a unit step for t → ∞, which is H(0)

@@ -25,14 +25,10 @@ type facts struct {
 // zero or a pole at 0 is exactly 0 in what package matrix returns.
 func (s *System) facts(zeros []seated) facts {
 	var f facts
-	if w := s.withCouplings(); w != nil && s.plant.n <= MaxExactOrder && !s.rounded {
+	if w := s.plant.stores; w != nil && s.plant.n <= MaxExactOrder && !s.rounded {
 		if e, err := w.Exact(s.b[0], s.c[0], s.d[0][0], s.rateOf(0, 0)); err == nil {
 			return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
 		}
-	}
-	if b := s.plant.balance; b != nil && s.plant.n <= MaxExactOrder && !s.rounded {
-		e := b.Exact(s.b[0], s.c[0], s.d[0][0])
-		return facts{ok: true, common: e.Common, zerosAt0: e.OriginZeros, polesAt0: e.OriginPoles}
 	}
 	for _, z := range zeros {
 		if z.p == 0 {
@@ -52,12 +48,10 @@ func (s *System) facts(zeros []seated) facts {
 // zero although a path leads through it.
 func (s *System) zeros() (list []seated, vanishes bool, err error) {
 	var found []matrix.Root
-	if w := s.withCouplings(); w != nil {
+	if w := s.plant.stores; w != nil {
 		found, err = w.Zeros(s.b[0], s.c[0], s.d[0][0], s.rateOf(0, 0))
-	} else if b := s.plant.balance; b != nil {
-		found, err = b.Zeros(s.b[0], s.c[0], s.d[0][0])
 	} else {
-		found, err = matrix.StoreZeros(s.plant.n, nil, s.plant.dense, s.b[0], s.c[0], s.d[0][0])
+		found, err = matrix.DenseZeros(s.plant.n, s.plant.dense, s.b[0], s.c[0], s.d[0][0])
 	}
 	if errors.Is(err, matrix.ErrZeroTransfer) {
 		return nil, true, nil
@@ -69,18 +63,6 @@ func (s *System) zeros() (list []seated, vanishes bool, err error) {
 		list = append(list, seated{p: complex(z.Re, z.Im), radius: z.Radius})
 	}
 	return list, false, err
-}
-
-// withCouplings returns the plant as stores where it has couplings or an improper
-// output, nil where it is a balance or a plain matrix with proper ones.
-func (s *System) withCouplings() *matrix.Stores {
-	switch {
-	case s.plant.stores != nil:
-		return s.plant.stores
-	case s.plant.balance != nil && s.rate != nil:
-		return &matrix.Stores{Balance: *s.plant.balance}
-	}
-	return nil
 }
 
 // beyondAll is how many times the fastest pole a zero lies that rounding of a leading

@@ -15,19 +15,20 @@ const module = "lagbook"
 // ending in "/..." stands for all packages below; the longest name that fits a
 // package is its rule.
 var arrows = map[string][]string{
-	"laplace/matrix":       {},
-	"laplace":              {"laplace/matrix"},
-	"network":              {"laplace", "laplace/matrix", "network/internal/..."},
-	"network/internal/...": {"laplace/matrix", "network/internal/..."},
-	"network/quantity":     {},
-	"network/casefile":     {"network/quantity", "laplace", "network"},
-	"network/study":        {"network/casefile", "network", "laplace", "network/quantity"},
-	"thermal":              {"network/casefile", "network", "network/quantity", "laplace", "thermal/material", "hydraulic/fluid"},
-	"thermal/material":     {"network/quantity"},
-	"hydraulic":            {"network/casefile", "network", "network/quantity", "laplace", "hydraulic/fluid", "thermal/material"},
-	"hydraulic/fluid":      {"network/quantity"},
-	"testdata/...":         {},
-	"cmd/...":              {"..."},
+	"laplace/matrix":            {},
+	"laplace":                   {"laplace/matrix"},
+	"network":                   {"laplace", "laplace/matrix", "network/internal/..."},
+	"network/internal/...":      {"laplace/matrix", "network/internal/..."},
+	"network/quantity":          {},
+	"network/casefile":          {"network/quantity", "laplace", "network"},
+	"network/casefile/casetest": {"network/casefile", "network", "laplace", "network/quantity", "testdata/demo"}, // for tests of domains
+	"network/study":             {"network/casefile", "network", "laplace", "network/quantity"},
+	"thermal":                   {"network/casefile", "network", "network/quantity", "laplace", "thermal/material", "hydraulic/fluid"},
+	"thermal/material":          {"network/quantity"},
+	"hydraulic":                 {"network/casefile", "network", "network/quantity", "laplace", "hydraulic/fluid", "thermal/material"},
+	"hydraulic/fluid":           {"network/quantity"},
+	"testdata/...":              {},
+	"cmd/...":                   {"..."},
 }
 
 // topLevel are the only folders at the top of the module.

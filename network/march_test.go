@@ -141,21 +141,7 @@ func TestMarchAgrees(t *testing.T) {
 		}
 		m := s.build(t)
 		at := s.fastSpan(t)
-		x, u := make([]float64, len(s.kinds)), make([]float64, len(s.kinds))
-		m.p.HasAllStart = false
-		for i, k := range s.kinds {
-			u[i] = rapid.Float64Range(-5, 5).Draw(t, "u")
-			switch k {
-			case held:
-				m.p.Wave[m.hold[i]] = laplace.Step(0, u[i], 0)
-			case store:
-				x[i] = rapid.Float64Range(-5, 5).Draw(t, "start")
-				m.p.Start[m.nodes[i]], m.p.HasStart[m.nodes[i]] = x[i], true
-			}
-		}
-		for k, n := range s.sources {
-			m.p.Wave[m.source[k]] = laplace.Step(0, u[n], 0)
-		}
+		x, u := s.stepped(t, m)
 		resp := m.respond(t, m.levels(), at)
 		want := s.march(x, u, at, 24)
 		scale := 1.0
@@ -189,4 +175,25 @@ func (s *spec) fastSpan(t *rapid.T) float64 {
 		fastest = max(fastest, G/s.C[i])
 	}
 	return rapid.Float64Range(0.1, 20).Draw(t, "span") / fastest
+}
+
+// stepped draws a start for every store and a step at t = 0 for every input, and
+// returns both by node.
+func (s *spec) stepped(t *rapid.T, m *built) (x, u []float64) {
+	x, u = make([]float64, len(s.kinds)), make([]float64, len(s.kinds))
+	m.p.HasAllStart = false
+	for i, k := range s.kinds {
+		u[i] = rapid.Float64Range(-5, 5).Draw(t, "u")
+		switch k {
+		case held:
+			m.p.Wave[m.hold[i]] = laplace.Step(0, u[i], 0)
+		case store:
+			x[i] = rapid.Float64Range(-5, 5).Draw(t, "start")
+			m.p.Start[m.nodes[i]], m.p.HasStart[m.nodes[i]] = x[i], true
+		}
+	}
+	for k, n := range s.sources {
+		m.p.Wave[m.source[k]] = laplace.Step(0, u[n], 0)
+	}
+	return x, u
 }

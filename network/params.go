@@ -1,6 +1,7 @@
 package network
 
 import (
+	"fmt"
 	"math"
 	"strconv"
 
@@ -233,9 +234,9 @@ func wrong(v float64, positive bool) string {
 	case positive && v <= 0:
 		return ", must be positive"
 	case size > hugest:
-		return ", beyond the range of the arithmetic"
+		return fmt.Sprintf(", must be %.0g or below", hugest)
 	case positive && v < tiniest:
-		return ", beyond the range of the arithmetic"
+		return fmt.Sprintf(", must be %.0g or above", tiniest)
 	}
 	return ""
 }

@@ -22,28 +22,36 @@ type riser struct {
 
 const riserL, riserR, tankC, drainG = 2.0, 0.3, 0.5, 0.8
 
-func newRiser(t *testing.T, wave laplace.Waveform) *riser {
+// fedTank is a line with inertance from a held main (node 0) into a tank (node 1), and
+// an outlet from there into a held drain; one of the two turns.
+func fedTank(t *testing.T) *network.Network {
 	t.Helper()
 	b := network.NewBuilder()
 	main, tank, drain := b.Node("main", network.NoRef), b.Node("tank", network.NoRef), b.Node("drain", network.NoRef)
 	b.Hold(main, network.NoRef)
 	b.Hold(drain, network.NoRef)
 	b.Capacity(tank, network.NoRef)
-	line := b.Inertance("riser", main, tank, network.NoRef)
-	out := b.Resistance("outlet", tank, drain, network.NoRef)
-	b.Switch("riser", network.NoRef)
+	b.Inertance("line", main, tank, network.NoRef)
+	b.Resistance("outlet", tank, drain, network.NoRef)
+	b.Switch("turns", network.NoRef)
 	n, err := b.Build()
 	if err != nil {
 		t.Fatal(err)
 	}
+	return n
+}
+
+func newRiser(t *testing.T, wave laplace.Waveform) *riser {
+	t.Helper()
+	n := fedTank(t)
 	p := n.NewParams()
-	p.C[0], p.L[line], p.G[out], p.Switch[0] = tankC, riserL, drainG, wave
+	p.C[0], p.L[0], p.G[0], p.Switch[0] = tankC, riserL, drainG, wave
 	p.Wave[0] = laplace.Constant(3)
 	p.Turn = func(now []float64) (*network.Params, error) {
 		c := p.Clone()
-		c.Now, c.Shut[line], c.LR[line] = now, now[0] == 0, riserR
+		c.Now, c.Shut[0], c.LR[0] = now, now[0] == 0, riserR
 		if now[0] > 0 {
-			c.LR[line] = riserR / now[0]
+			c.LR[0] = riserR / now[0]
 		}
 		return c, nil
 	}
@@ -51,7 +59,7 @@ func newRiser(t *testing.T, wave laplace.Waveform) *riser {
 	if err != nil {
 		t.Fatal(err)
 	}
-	return &riser{n, first, []network.Output{n.Level(tank), n.InertanceFlowOf(line), n.FlowOf(out), n.SupplyOf(main)}}
+	return &riser{n, first, []network.Output{n.Level(1), n.InertanceFlowOf(0), n.FlowOf(0), n.SupplyOf(0)}}
 }
 
 func (r *riser) respond(t *testing.T, until float64) *laplace.Response {

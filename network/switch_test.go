@@ -233,29 +233,18 @@ func TestCycleFromNowhere(t *testing.T) {
 // A line with inertance into a vessel whose outlet turns, against the exponential of
 // the two equations.
 func TestSwitchBesideInertance(t *testing.T) {
-	b := network.NewBuilder()
-	main, tank, drain := b.Node("main", network.NoRef), b.Node("tank", network.NoRef), b.Node("drain", network.NoRef)
-	b.Hold(main, network.NoRef)
-	b.Hold(drain, network.NoRef)
-	b.Capacity(tank, network.NoRef)
-	line := b.Inertance("line", main, tank, network.NoRef)
-	outlet := b.Resistance("outlet", tank, drain, network.NoRef)
-	b.Switch("outlet", network.NoRef)
-	n, err := b.Build()
-	if err != nil {
-		t.Fatal(err)
-	}
+	n := fedTank(t)
 	const L, R, C, G = 2.0, 0.3, 0.5, 0.8
 	p := n.NewParams()
-	p.C[0], p.L[line], p.LR[line], p.G[outlet] = C, L, R, G
+	p.C[0], p.L[0], p.LR[0], p.G[0] = C, L, R, G
 	p.Wave[0], p.Wave[1] = laplace.Step(1, 3, 0), laplace.Constant(0)
 	p.Switch[0] = laplace.Step(1, 0.25, 2)
 	p.Turn = func(now []float64) (*network.Params, error) {
 		c := p.Clone()
-		c.Now, c.G[outlet] = now, G*now[0]
+		c.Now, c.G[0] = now, G*now[0]
 		return c, nil
 	}
-	r, err := n.Reduce(p, []network.Output{n.Level(tank), {Name: "line", Flow: &network.FlowTerm{Kind: network.InertanceFlow, Inertance: line, Sign: 1}}})
+	r, err := n.Reduce(p, []network.Output{n.Level(1), n.InertanceFlowOf(0)})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -303,21 +292,7 @@ func TestSwitchedMarchAgrees(t *testing.T) {
 			c.Now, c.G[which] = now, now[0]/s.wires[which].value
 			return c, nil
 		}
-		x, u := make([]float64, len(s.kinds)), make([]float64, len(s.kinds))
-		m.p.HasAllStart = false
-		for i, k := range s.kinds {
-			u[i] = rapid.Float64Range(-5, 5).Draw(t, "u")
-			switch k {
-			case held:
-				m.p.Wave[m.hold[i]] = laplace.Step(0, u[i], 0)
-			case store:
-				x[i] = rapid.Float64Range(-5, 5).Draw(t, "start")
-				m.p.Start[m.nodes[i]], m.p.HasStart[m.nodes[i]] = x[i], true
-			}
-		}
-		for k, n := range s.sources {
-			m.p.Wave[m.source[k]] = laplace.Step(0, u[n], 0)
-		}
+		x, u := s.stepped(t, m)
 		resp := m.respond(t, m.levels(), 3*at)
 		wires := append([]wire(nil), s.wires...)
 		for k, f := range scale {

@@ -1,142 +1,24 @@
 package thermal
 
 import (
-	"strings"
+	"os"
 	"testing"
 
-	"lagbook/laplace"
-	"lagbook/network"
-	"lagbook/network/casefile"
+	"lagbook/network/casefile/casetest"
+	"lagbook/testdata/demo"
 )
 
-// A model is a case with its network and numbers, as a study would hold it.
-type model struct {
-	t      *testing.T
-	c      *casefile.Case
-	v      casefile.Values
-	net    *network.Network
-	set    []casefile.Setter
-	params *network.Params
-}
-
 // read reads a case that must be free of errors.
-func read(t *testing.T, name, text string) *model {
+func read(t *testing.T, name, text string) *casetest.Model {
 	t.Helper()
-	c, diags := casefile.Read(name, []byte(text), nil, Vocabulary()...)
-	if casefile.Failed(diags) {
-		t.Fatalf("%s\n%s", name, casefile.Listing(diags))
-	}
-	m := &model{t: t, c: c}
-	if m.net, m.set, diags = c.Build(); casefile.Failed(diags) {
-		t.Fatalf("%s\n%s", name, casefile.Listing(diags))
-	}
-	if m.v, diags = c.Eval(nil); casefile.Failed(diags) {
-		t.Fatalf("%s\n%s", name, casefile.Listing(diags))
-	}
-	m.params = m.net.NewParams()
-	m.apply()
-	return m
+	return casetest.Read(t, name, text, Vocabulary()...)
 }
 
-// apply runs the setters, and puts in the start that [run] states.
-func (m *model) apply() {
-	m.t.Helper()
-	for _, set := range m.set {
-		if err := set(m.v, m.params); err != nil {
-			m.t.Fatalf("%s: %v", m.c.File, err)
-		}
-	}
-	if m.c.Questions.Start == casefile.StartLevel {
-		m.params.AllStart, m.params.HasAllStart = m.v.Num[m.c.Questions.StartAt], true
-	}
-}
+// faults is everything said about a case, each with its code in front.
+func faults(text string) string { return casetest.Said(text, Vocabulary()...) }
 
-// faults reads a case and returns everything said about it, as one text, each with its code in front: "range: …". What
-// casefile says of tables in general is known here by its code, since its words are tested there.
-func faults(t *testing.T, text string) string {
-	t.Helper()
-	_, diags := casefile.Read("case.toml", []byte(text), nil, Vocabulary()...)
-	var said strings.Builder
-	for _, d := range diags {
-		said.WriteString(d.Code + ": " + d.String() + "\n")
-	}
-	return said.String()
-}
+const published = "../testdata/thermal"
 
-// output is a node, a difference "a - b", or "flow of X".
-func (m *model) output(name string) network.Output {
-	m.t.Helper()
-	if part, ok := strings.CutPrefix(name, "flow of "); ok {
-		for _, b := range m.net.Branches() {
-			if b.Kind == network.ResistanceBranch && b.Name == part {
-				return m.net.FlowOf(network.ResistanceID(b.Index))
-			}
-		}
-		m.t.Fatalf("%s: no resistance %q", m.c.File, part)
-	}
-	if a, b, ok := strings.Cut(name, " - "); ok {
-		return m.net.Difference(m.node(a), m.node(b))
-	}
-	return m.net.Level(m.node(name))
-}
+func TestPublished(t *testing.T) { casetest.Published(t, published, Vocabulary()...) }
 
-func (m *model) node(name string) network.NodeID {
-	m.t.Helper()
-	id, ok := m.c.Node(name)
-	if !ok {
-		m.t.Fatalf("%s: no node %q", m.c.File, name)
-	}
-	return id
-}
-
-func (m *model) reduce(outputs ...string) *network.Reduction {
-	m.t.Helper()
-	list := make([]network.Output, len(outputs))
-	for i, name := range outputs {
-		list[i] = m.output(name)
-	}
-	r, err := m.net.Reduce(m.params, list)
-	if err != nil {
-		m.t.Fatalf("%s: %v", m.c.File, err)
-	}
-	return r
-}
-
-// respond answers the outputs named up to a time.
-func (m *model) respond(until float64, outputs ...string) *laplace.Response {
-	m.t.Helper()
-	r, err := m.reduce(outputs...).Respond(m.params, until)
-	if err != nil {
-		m.t.Fatalf("%s: %v", m.c.File, err)
-	}
-	return r
-}
-
-// poles returns the real parts, each as often as it occurs, slowest first.
-func (m *model) poles() []float64 {
-	m.t.Helper()
-	var list []float64
-	for _, p := range m.reduce().System.Poles() {
-		for range p.Mult {
-			list = append(list, real(p.P))
-		}
-	}
-	return list
-}
-
-// derived returns the value that the derivation of that name shows.
-func (m *model) derived(quantity string) casefile.Derivation {
-	m.t.Helper()
-	for _, e := range m.c.Elements {
-		if e.Table.Derive == nil {
-			continue
-		}
-		for _, d := range e.Table.Derive(e, m.c, m.v) {
-			if d.Quantity == quantity {
-				return d
-			}
-		}
-	}
-	m.t.Fatalf("%s: nothing derives %q", m.c.File, quantity)
-	return casefile.Derivation{}
-}
+func FuzzCase(f *testing.F) { casetest.Fuzz(f, Vocabulary(), demo.Cases, os.DirFS(published)) }

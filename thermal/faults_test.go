@@ -34,6 +34,8 @@ times = ["0 s", "1 s"]
 		{"own without density", "[material.m]\nspecific_heat = \"1 kJ/(kg·K)\"\n[thermal.node.x]\nlump = { material = \"m\", volume = \"1 L\" }", `material "m" states no density`},
 		{"both lump and capacitance", "[thermal.node.x]\ncapacitance = \"1 J/K\"\nlump = { material = \"copper\", mass = \"1 kg\" }", "stated-twice: "},
 		{"both volume and mass", "[thermal.node.x]\nlump = { material = \"copper\", mass = \"1 kg\", volume = \"1 L\" }", "stated-twice: "},
+		{"conductivity against temperature", "[material.m]\nconductivity = [[\"0 °C\", \"1 W/(m·K)\"], [\"90 °C\", \"2 W/(m·K)\"]]", "not-built: "},
+		{"follows with nothing", "[thermal.source.s]\ninto = \"body\"\ndrive = \"1 W\"\nfollows = \"air\"", "follows needs slope or per_kelvin beside it"},
 		{"start of a held node", "[thermal.node.x]\nheld = \"20 °C\"\nstart = \"20 °C\"", "start of a held node"},
 		{"negative resistance", "[thermal.resistance.x]\nbetween = [\"body\", \"air\"]\nvalue = \"-1 K/W\"", "range: "},
 		{"efficiency above one", "[thermal.resistance.x]\nbetween = [\"body\", \"air\"]\nfilm = { coefficient = \"5 W/(m²·K)\", area = \"1 m²\", efficiency = 1.2 }", "range: "},
@@ -61,7 +63,7 @@ times = ["0 s", "1 s"]
 		{"per_kelvin alone", "[thermal.source.x]\ninto = \"body\"\ndrive = \"1 W\"\nper_kelvin = \"1 %/K\"", "per_kelvin needs at beside it"},
 		{"degrees for a slope", "[thermal.source.x]\ninto = \"body\"\ndrive = \"20 °C\"", "dimension: "},
 	} {
-		if got := faults(t, base+c.text+"\n"); !strings.Contains(got, c.want) {
+		if got := faults(base + c.text + "\n"); !strings.Contains(got, c.want) {
 			t.Errorf("%s: %q is not among\n%s", c.name, c.want, got)
 		}
 	}
@@ -83,7 +85,7 @@ func TestWordsNotBuiltAreRefused(t *testing.T) {
 		{"emissivity", "[material.x]\nemissivity = 0.9"},
 		{"air", "[air]\naltitude = \"1 km\""},
 	} {
-		got := faults(t, "[thermal.node.a]\ncapacitance = \"1 J/K\"\n[thermal.node.b]\nheld = \"20 °C\"\n"+c.text+"\n")
+		got := faults("[thermal.node.a]\ncapacitance = \"1 J/K\"\n[thermal.node.b]\nheld = \"20 °C\"\n" + c.text + "\n")
 		line, _, _ := strings.Cut(got[max(0, strings.Index(got, `"`+c.word+`"`)):], "\n")
 		if !strings.Contains(line, "not") || !strings.Contains(line, c.word) {
 			t.Errorf("%s is not refused by name:\n%s", c.word, got)

@@ -27,25 +27,9 @@ var (
 	massFlow      = quantity.Dim{1, 0, -1, 0, 0}
 )
 
-// positive is a key that holds a number above zero.
-func positive(name string, dim quantity.Dim, help string) casefile.Field {
-	return casefile.Field{Name: name, Type: casefile.Number, Dim: dim, HasMin: true, MinOpen: true, Help: help}
-}
-
 // level is a key that holds a temperature, not a difference of two.
 func level(name, help string) casefile.Field {
 	return casefile.Field{Name: name, Type: casefile.Number, Dim: temperature, Kind: quantity.Level, HasMin: true, MinOpen: true, Help: help}
-}
-
-// nodeName is a key that names a node of the case.
-func nodeName(name, help string) casefile.Field {
-	return casefile.Field{Name: name, Type: casefile.Name, Refers: "node", Structural: true, Help: help}
-}
-
-// between names the two ends of a part; its flow is positive from the first to the second.
-func between() casefile.Field {
-	return casefile.Field{Name: "between", Type: casefile.Names, Refers: "node", Structural: true, Required: true,
-		HasMin: true, Min: 2, HasMax: true, Max: 2, Help: "the two nodes it joins; flow from the first to the second is positive"}
 }
 
 // materialName is a key that names an own material or one of the handbook.

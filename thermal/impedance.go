@@ -22,10 +22,10 @@ func impedanceTable() casefile.Table {
 		Help:  "a transient thermal impedance; the first-named end is the hot one",
 		OneOf: [][]string{{"foster", "cauer"}},
 		Fields: []casefile.Field{
-			between(),
-			pairs("foster", positive("", resistance, ""), positive("τ", duration, "τ"),
+			casefile.Between(),
+			pairs("foster", casefile.Positive("", resistance, ""), casefile.Positive("τ", duration, "τ"),
 				"terms R·(1 − exp(−t/τ)) of the impedance at the first end, as [R, τ]; built as the ladder equal to them"),
-			pairs("cauer", positive("", capacitance, ""), positive("R", resistance, "R"),
+			pairs("cauer", casefile.Positive("", capacitance, ""), casefile.Positive("R", resistance, "R"),
 				"cells [C, R] of a ladder; the first C lies at the first end, the last R ends at the second"),
 			scaleField(),
 		},
@@ -39,7 +39,7 @@ func buildImpedance(e *casefile.Element, c *casefile.Case, b *network.Builder) (
 		return nil, d
 	}
 	cells := ladderOf(e)
-	hot, far, faults := ends(e, c)
+	hot, far, faults := e.Ends()
 	scale, wrong := casefile.ScalingOf(e, c, b)
 	if faults = append(faults, wrong...); faults != nil {
 		return nil, faults

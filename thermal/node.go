@@ -14,13 +14,13 @@ func nodeTable() casefile.Table {
 		Help:  "a place with one temperature: it stores heat, or is held, or is massless",
 		OneOf: [][]string{{"capacitance", "lump", ""}},
 		Fields: []casefile.Field{
-			positive("capacitance", capacitance, "heat stored for each kelvin"),
+			casefile.Positive("capacitance", capacitance, "heat stored for each kelvin"),
 			{Name: "lump", Type: casefile.Group, OneOf: [][]string{{"volume", "mass"}},
 				Help: "capacitance of a body of one temperature: ρ·V·c or m·c, and a share of it extra",
 				Fields: []casefile.Field{
 					required(materialName("an own material or one of the handbook")),
-					positive("volume", volume, "V"),
-					positive("mass", mass, "m"),
+					casefile.Positive("volume", volume, "V"),
+					casefile.Positive("mass", mass, "m"),
 					{Name: "extra", Type: casefile.Number, Dim: dimless, HasMin: true, Help: "what is fixed to the body, as a share of it"},
 				}},
 			{Name: "held", Type: casefile.Wave, Dim: temperature, Kind: quantity.Level, HasMin: true, MinOpen: true,
@@ -33,31 +33,16 @@ func nodeTable() casefile.Table {
 }
 
 func buildNode(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	id := b.Node(e.FullName(), e.Ref)
-	c.BindNode(e.FullName(), id)
-	var setters []casefile.Setter
-	store, stores, faults := capacityLaw(e, c)
-	if stores && faults == nil {
+	id, setters, faults := e.AddNode(c, b)
+	store, stores, more := capacityLaw(e, c)
+	if stores && more == nil {
 		at := b.Capacity(id, e.Ref)
 		setters = append(setters, func(v casefile.Values, p *network.Params) error {
 			p.C[at] = store.value(v)
 			return nil
 		})
 	}
-	if e.Has("held") {
-		in, wave := b.Hold(id, e.Ref), e.Wave("held")
-		setters = append(setters, func(v casefile.Values, p *network.Params) error {
-			p.Wave[in] = v.Wave[wave]
-			return nil
-		})
-	}
-	if e.Has("start") {
-		if e.Has("held") {
-			faults = append(faults, e.Fault("start", "start of a held node: it starts where it is held", "", ""))
-		}
-		setters = append(setters, setStart(id, e.Num("start")))
-	}
-	return together(setters), faults
+	return casefile.Together(setters...), append(faults, more...)
 }
 
 // capacityLaw returns the law of the node's capacitance; stores is false where it has none.
@@ -108,30 +93,4 @@ func deriveNode(e *casefile.Element, c *casefile.Case, v casefile.Values) []case
 		return nil
 	}
 	return []casefile.Derivation{l.derive("capacitance of "+e.Name, capacitance, v)}
-}
-
-// setStart gives a node its level at t = 0.
-func setStart(id network.NodeID, slot casefile.Slot) casefile.Setter {
-	return func(v casefile.Values, p *network.Params) error {
-		p.Start[id], p.HasStart[id] = v.Num[slot], true
-		return nil
-	}
-}
-
-// together makes one setter of several, nil of none.
-func together(setters []casefile.Setter) casefile.Setter {
-	switch len(setters) {
-	case 0:
-		return nil
-	case 1:
-		return setters[0]
-	}
-	return func(v casefile.Values, p *network.Params) error {
-		for _, set := range setters {
-			if err := set(v, p); err != nil {
-				return err
-			}
-		}
-		return nil
-	}
 }

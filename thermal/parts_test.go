@@ -4,6 +4,8 @@ import (
 	"math"
 	"strings"
 	"testing"
+
+	"lagbook/network/casefile/casetest"
 )
 
 // near fails unless got is want to a relative 1e-12, or what is given.
@@ -59,12 +61,12 @@ func TestResistances(t *testing.T) {
 			"1/(h·A·η)", "1/(11 W/(m²·K) · 0.3 m² · 85 %)"},
 	} {
 		m := read(t, c.name, twoNodes(c.text))
-		d := m.derived("resistance of part")
+		d := m.Derived("resistance of part")
 		near(t, c.name, d.SI, c.want, 1e-15)
 		if d.Formula != c.formula || d.Numbers != c.numbers {
 			t.Errorf("%s: derived as %q with %q, want %q with %q", c.name, d.Formula, d.Numbers, c.formula, c.numbers)
 		}
-		near(t, c.name+", flow", m.respond(1, "flow of part").At(0, 0), 60/(1+c.want), 1e-13)
+		near(t, c.name+", flow", m.Respond(1, "flow of part").At(0, 0), 60/(1+c.want), 1e-13)
 	}
 }
 
@@ -73,7 +75,7 @@ func TestThinShell(t *testing.T) {
 	m := read(t, "thin", twoNodes(`shell = { conductivity = "1 W/(m·K)", inner_radius = "1 m", outer_radius = "1.0000001 m", length = "1 m" }`))
 	outer := 1.0000001
 	x := outer - 1
-	near(t, "shell", m.derived("resistance of part").SI, (x-x*x/2+x*x*x/3)/(2*math.Pi), 1e-14)
+	near(t, "shell", m.Derived("resistance of part").SI, (x-x*x/2+x*x*x/3)/(2*math.Pi), 1e-14)
 }
 
 func TestLumps(t *testing.T) {
@@ -104,9 +106,9 @@ value   = "2 K/W"
 show  = ["body"]
 times = ["0 s", "1 s"]
 `)
-		d := m.derived("capacitance of body")
+		d := m.Derived("capacitance of body")
 		near(t, c.name, d.SI, c.want, 1e-14)
-		near(t, c.name+", time constant", -1/m.poles()[0], 2*c.want)
+		near(t, c.name+", time constant", m.TimeConstants()[0], 2*c.want)
 		if d.Formula != c.formula || !strings.Contains(d.Source, c.source) {
 			t.Errorf("%s: derived as %q from %q", c.name, d.Formula, d.Source)
 		}
@@ -140,19 +142,21 @@ times = ["0 s", "1 s"]
 	}
 	m := read(t, "runaway", text("into = \"body\"\ndrive = \"1 W\"\nslope = \"3 W/K\"\nabout = \"20 °C\""))
 	// C dT/dt = 1 + 3(T−20) − 2(T−20): the excess e = T − 20 + 1 grows as exp(t/100 s) from 6
-	r := m.respond(100, "body")
+	r := m.Respond(100, "body")
 	near(t, "runaway", r.At(0, 100)-293.15, 6*math.E-1)
-	if p := m.poles(); !hasPole(p, 0.01) {
+	if p := m.RealParts(); !hasPole(p, 0.01) {
 		t.Errorf("poles %v, want 0.01 1/s among them: unstable", p)
 	}
 	m = read(t, "stable", text("out_of = \"body\"\ndrive = \"1 W\"\nslope = \"3 W/K\"\nabout = \"20 °C\""))
-	if p := m.poles(); !hasPole(p, -0.05) {
+	if p := m.RealParts(); !hasPole(p, -0.05) {
 		t.Errorf("cooling that grows: poles %v, want -0.05 1/s among them", p)
 	}
 	m = read(t, "follows", text("into = \"body\"\ndrive = \"1 W\"\nslope = \"3 W/K\"\nabout = \"20 °C\"\nfollows = \"other\""))
 	// other decays from 5 K as exp(−t/50 s), and so does body's own: C e' = 1 + 3·5·exp(−t/50) − 2e, double pole
 	at := func(x float64) float64 { return 0.5 + (4.5+0.15*x)*math.Exp(-x/50) }
-	near(t, "follows", m.respond(100, "body").At(0, 70)-293.15, at(70), 1e-11)
+	near(t, "follows", m.Respond(100, "body").At(0, 70)-293.15, at(70), 1e-11)
+	m = read(t, "per kelvin of another", text("into = \"body\"\ndrive = \"1 W\"\nper_kelvin = \"300 %/K\"\nat = \"20 °C\"\nfollows = \"other\""))
+	near(t, "per kelvin of another", m.Respond(100, "body").At(0, 70)-293.15, at(70), 1e-11)
 }
 
 func hasPole(poles []float64, want float64) bool {
@@ -186,31 +190,31 @@ times = ["0 s", "1 s"]
 // Terms with one time constant are one cell, however it is written; and a Foster set and its own ladder are one network.
 func TestImpedanceForms(t *testing.T) {
 	m := read(t, "equal times", ladderCase+`foster = [["0.2 K/W", "2 ms"], ["0.3 K/W", "0.5 s"], ["0.1 K/W", "0.002 s"]]`+ladderAsk)
-	if n := m.net.StoreCount(); n != 2 {
+	if n := m.Net.StoreCount(); n != 2 {
 		t.Errorf("%d stores, want 2: two of the three terms share a time constant", n)
 	}
 	for _, at := range []float64{1e-4, 2e-3, 0.1, 3} {
 		want := 0.3*-math.Expm1(-at/0.002) + 0.3*-math.Expm1(-at/0.5)
-		near(t, "Zth", m.respond(at, "junction").At(0, at)-273.15, want, 1e-11)
+		near(t, "Zth", m.Respond(at, "junction").At(0, at)-273.15, want, 1e-11)
 	}
 	m = read(t, "by chance", "[given]\na = \"1 s\"\nb = \"1 s\"\n"+ladderCase+`foster = [["1 K/W", "= a"], ["2 K/W", "= b"]]`+ladderAsk)
-	near(t, "Zth of given times that meet", m.respond(2, "junction").At(0, 2)-273.15, 3*-math.Expm1(-2), 1e-12)
+	near(t, "Zth of given times that meet", m.Respond(2, "junction").At(0, 2)-273.15, 3*-math.Expm1(-2), 1e-12)
 	f := read(t, "foster", ladderCase+`foster = [["1.5 K/W", "1 s"], ["= 1 K/W / 6", "= 1 s / 3"]]`+ladderAsk)
 	c := read(t, "cauer", ladderCase+`cauer = [["0.5 J/K", "= 4 K/W / 3"], ["1.5 J/K", "= 1 K/W / 3"]]`+ladderAsk)
-	for k, p := range f.poles() {
-		near(t, "pole", c.poles()[k], p, 1e-14)
+	for k, p := range f.RealParts() {
+		near(t, "pole", c.RealParts()[k], p, 1e-14)
 	}
-	near(t, "inner node", f.respond(1, "z.1").At(0, 1), c.respond(1, "z.1").At(0, 1), 1e-14)
-	near(t, "flow into the ladder", f.respond(1, "flow of z").At(0, 1), (f.respond(1, "junction - z.1").At(0, 1))/(4.0/3), 1e-12)
+	near(t, "inner node", f.Respond(1, "z.1").At(0, 1), c.Respond(1, "z.1").At(0, 1), 1e-14)
+	near(t, "flow into the ladder", f.Respond(1, "flow of z").At(0, 1), (f.Respond(1, "junction - z.1").At(0, 1))/(4.0/3), 1e-12)
 }
 
 // Setters are called thousands of times by a sweep: they take no memory.
 func TestSettersTakeNoMemory(t *testing.T) {
 	for _, name := range []string{"servo-drive.toml", "curing-oven.toml", "wash-tank.toml"} {
-		m := read(t, name, demoText(t, name))
+		m := casetest.Demo(t, name, Vocabulary()...)
 		n := testing.AllocsPerRun(20, func() {
-			for _, set := range m.set {
-				if err := set(m.v, m.params); err != nil {
+			for _, set := range m.Set {
+				if err := set(m.Values, m.Params); err != nil {
 					t.Fatal(err)
 				}
 			}
@@ -223,20 +227,20 @@ func TestSettersTakeNoMemory(t *testing.T) {
 
 // What varies may be varied: the network's numbers follow the given values.
 func TestGivenValuesVary(t *testing.T) {
-	m := read(t, "servo-drive.toml", demoText(t, "servo-drive.toml"))
-	slow := -1 / m.poles()[0]
-	given := m.c.GivenValues()
-	for i, g := range m.c.Given {
+	m := casetest.Demo(t, "servo-drive.toml", Vocabulary()...)
+	slow := m.TimeConstants()[0]
+	given := m.Case.GivenValues()
+	for i, g := range m.Case.Given {
 		if g.Name == "fan" {
 			given[i].SI /= 2
 			given[i].Exact = nil
 		}
 	}
-	v, diags := m.c.Eval(given)
+	v, diags := m.Case.Eval(given)
 	if diags != nil {
 		t.Fatal(diags)
 	}
-	m.v = v
-	m.apply()
-	near(t, "time constant with half the film", -1/m.poles()[0], 2*slow, 1e-3)
+	m.Values = v
+	m.Apply()
+	near(t, "time constant with half the film", m.TimeConstants()[0], 2*slow, 1e-3)
 }

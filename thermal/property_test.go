@@ -68,10 +68,10 @@ show  = ["a"]
 times = ["0 s", "1 s"]
 `, strings.Join(layers, ", "), lumps))
 		r, c := 0.0, 0.0
-		for _, g := range m.params.G {
+		for _, g := range m.Params.G {
 			r += 1 / g
 		}
-		for _, x := range m.params.C {
+		for _, x := range m.Params.C {
 			c += x
 		}
 		if math.Abs(r/total-1) > 1e-13 || math.Abs(c/store-1) > 1e-13 {
@@ -104,9 +104,9 @@ times = ["0 s", "1 s"]
 		`{ coefficient = "1.5 BTU/(h·ft²·°F)", area = "2 ft²" }`, "212 °F", "3 BTU/°F"))
 	si := read(t, "SI", text(`{ conductivity = "13.84587733097113 W/(m·K)", thickness = "6.35 mm", area = "0.18580608 m²" }`,
 		`{ coefficient = "8.517395011670232 W/(m²·K)", area = "0.18580608 m²" }`, "100 °C", "5697.301604148 J/K"))
-	for i := range us.params.G {
-		near(t, "conductance", us.params.G[i], si.params.G[i], 4*0x1p-52)
+	for i := range us.Params.G {
+		near(t, "conductance", us.Params.G[i], si.Params.G[i], 4*0x1p-52)
 	}
-	near(t, "capacitance", us.params.C[0], si.params.C[0], 4*0x1p-52)
-	near(t, "level", us.params.Wave[0].Before, si.params.Wave[0].Before, 4*0x1p-52)
+	near(t, "capacitance", us.Params.C[0], si.Params.C[0], 4*0x1p-52)
+	near(t, "level", us.Params.Wave[0].Before, si.Params.Wave[0].Before, 4*0x1p-52)
 }

@@ -13,7 +13,7 @@ import (
 func resistanceTable() casefile.Table {
 	made := func(own ...casefile.Field) []casefile.Field {
 		return append([]casefile.Field{
-			positive("conductivity", conductivity, "k"),
+			casefile.Positive("conductivity", conductivity, "k"),
 			materialName("an own material or one of the handbook, in place of conductivity"),
 		}, own...)
 	}
@@ -24,18 +24,18 @@ func resistanceTable() casefile.Table {
 		Help:  "a resistance between two nodes",
 		OneOf: [][]string{{"value", "conductance", "layer", "shell", "contact", "film"}},
 		Fields: []casefile.Field{
-			between(),
-			positive("value", resistance, "R"),
-			positive("conductance", conductance, "1/R"),
+			casefile.Between(),
+			casefile.Positive("value", resistance, "R"),
+			casefile.Positive("conductance", conductance, "1/R"),
 			{Name: "layer", Type: casefile.Group, OneOf: ofWhat, Help: "a flat layer: t/(k·A)",
-				Fields: made(required(positive("thickness", length, "t")), required(positive("area", area, "A")))},
+				Fields: made(required(casefile.Positive("thickness", length, "t")), required(casefile.Positive("area", area, "A")))},
 			{Name: "shell", Type: casefile.Group, OneOf: ofWhat, Help: "a tube wall: ln(ro/ri)/(2π·k·L)",
-				Fields: made(required(positive("inner_radius", length, "ri")), required(positive("outer_radius", length, "ro")),
-					required(positive("length", length, "L")))},
+				Fields: made(required(casefile.Positive("inner_radius", length, "ri")), required(casefile.Positive("outer_radius", length, "ro")),
+					required(casefile.Positive("length", length, "L")))},
 			{Name: "contact", Type: casefile.Group, Help: "a joint: 1/(h·A)",
-				Fields: []casefile.Field{required(positive("coefficient", coefficient, "h")), required(positive("area", area, "A"))}},
+				Fields: []casefile.Field{required(casefile.Positive("coefficient", coefficient, "h")), required(casefile.Positive("area", area, "A"))}},
 			{Name: "film", Type: casefile.Group, Help: "convection at a surface: 1/(h·A·η)",
-				Fields: []casefile.Field{required(positive("coefficient", coefficient, "h")), required(positive("area", area, "A")),
+				Fields: []casefile.Field{required(casefile.Positive("coefficient", coefficient, "h")), required(casefile.Positive("area", area, "A")),
 					{Name: "efficiency", Type: casefile.Number, Dim: dimless, HasMin: true, MinOpen: true, HasMax: true, Max: 1, Help: "η of a finned surface; 1 unless stated"}}},
 			scaleField(),
 		},
@@ -45,7 +45,7 @@ func resistanceTable() casefile.Table {
 }
 
 func buildResistance(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	from, to, faults := ends(e, c)
+	from, to, faults := e.Ends()
 	l, more := conductanceLaw(e, c)
 	scale, wrong := casefile.ScalingOf(e, c, b)
 	if faults = append(append(faults, more...), wrong...); faults != nil {

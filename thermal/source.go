@@ -11,10 +11,9 @@ import (
 // sourceTable is [thermal.source.NAME]: heat put into a node or taken out of
 // it, drive + slope·(T − about), or drive·(1 + per_kelvin·(T − at)).
 func sourceTable() casefile.Table {
-	into := nodeName("into", "the node it heats")
-	outOf := nodeName("out_of", "the node it cools")
-	follows := nodeName("follows", "the node whose temperature the slope goes by, if not its own")
-	follows.With = []string{"slope"}
+	into := casefile.NodeName("into", "the node it heats")
+	outOf := casefile.NodeName("out_of", "the node it cools")
+	follows := casefile.NodeName("follows", "the node whose temperature slope and per_kelvin go by, if not its own")
 	return casefile.Table{
 		Name:  "source",
 		Stage: 1,
@@ -36,29 +35,23 @@ func sourceTable() casefile.Table {
 }
 
 func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	end, sign := "into", 1.0
-	if e.Has("out_of") {
-		end, sign = "out_of", -1
-	}
-	var faults []casefile.Diagnostic
-	node, ok := e.Node(e.NameOf(end))
-	if !ok {
-		faults = append(faults, e.Fault(end, "a name that is not a node", "the name of a node", ""))
-	}
+	end, sign := e.SourceEnd()
+	node, faults := e.NodeAt(end)
 	on := node
 	if e.Has("follows") {
-		if on, ok = e.Node(e.NameOf("follows")); !ok {
-			faults = append(faults, e.Fault("follows", "a name that is not a node", "the name of a node", ""))
+		if !e.Has("slope") && !e.Has("per_kelvin") {
+			d := e.Fault("follows", "follows needs slope or per_kelvin beside it", "", "")
+			d.Code, d.Hint = "missing-key", `add slope = "1 W/K" and about, or per_kelvin = "0.4 %/K" and at`
+			faults = append(faults, d)
 		}
+		followed, more := e.NodeAt("follows")
+		on, faults = followed, append(faults, more...)
 	}
 	if faults != nil {
 		return nil, faults
 	}
-	in, wave := b.Source(e.FullName(), node, sign, e.Ref), e.Wave("drive")
-	setters := []casefile.Setter{func(v casefile.Values, p *network.Params) error {
-		p.Wave[in] = v.Wave[wave]
-		return nil
-	}}
+	in := b.Source(e.FullName(), node, sign, e.Ref)
+	setters := []casefile.Setter{casefile.SetWave(in, e.Wave("drive"))}
 	if e.Has("slope") {
 		fb := b.Feedback(e.FullName(), node, on, e.Ref)
 		slope, about := e.Num("slope"), e.Num("about")
@@ -74,7 +67,7 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 		}
 		setters = append(setters, set)
 	}
-	return together(setters), intoHeld(e, c, end)
+	return casefile.Together(setters...), intoHeld(e, c, end)
 }
 
 // perKelvinOf builds drive·(1 + α·(T − at)) as a feedback α·drive beside the drive: one
@@ -105,10 +98,15 @@ func intoHeld(e *casefile.Element, c *casefile.Case, end string) []casefile.Diag
 
 func deriveSource(e *casefile.Element, c *casefile.Case, v casefile.Values) []casefile.Derivation {
 	var list []casefile.Derivation
+	on := e.NameOf("follows")
+	if on == "" {
+		end, _ := e.SourceEnd()
+		on = e.NameOf(end)
+	}
 	if e.Has("per_kelvin") {
 		alpha, at := typed(e, "per_kelvin"), typed(e, "at")
 		list = append(list, casefile.Derivation{
-			Quantity: "share per kelvin of " + e.Name, Formula: "drive·(1 + α·(T − at))", Numbers: alpha.text + " at " + at.text,
+			Quantity: "share per kelvin of " + e.Name, Formula: "drive·(1 + α·(" + on + " − at))", Numbers: alpha.text + " at " + at.text,
 			Source: sources(alpha, at), SI: alpha.at(v), Dim: inverseKelvin,
 		})
 	}
@@ -116,10 +114,6 @@ func deriveSource(e *casefile.Element, c *casefile.Case, v casefile.Values) []ca
 		return list
 	}
 	slope, about := typed(e, "slope"), typed(e, "about")
-	on := e.NameOf("follows")
-	if on == "" {
-		on = e.NameOf("into") + e.NameOf("out_of") // one of them is ""
-	}
 	return append(list, casefile.Derivation{
 		Quantity: "slope of " + e.Name, Formula: "drive + slope·(" + on + " − about)", Numbers: slope.text + " about " + about.text,
 		Source: sources(slope, about), SI: slope.at(v), Dim: conductance,

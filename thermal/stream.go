@@ -14,7 +14,7 @@ import (
 // streamTable is [thermal.stream.NAME]: a fluid that flows from node to node,
 // each of them stirred.
 func streamTable() casefile.Table {
-	flow := with(positive("flow", volumeFlow, "flow of the fluid, a volume or a mass in a time"), "fluid")
+	flow := with(casefile.Positive("flow", volumeFlow, "flow of the fluid, a volume or a mass in a time"), "fluid")
 	flow.Also = []quantity.Dim{massFlow}
 	return casefile.Table{
 		Name:  "stream",
@@ -23,7 +23,7 @@ func streamTable() casefile.Table {
 		OneOf: [][]string{{"capacity_rate", "fluid"}},
 		Fields: []casefile.Field{
 			{Name: "path", Type: casefile.Names, Refers: "node", Structural: true, Required: true, HasMin: true, Min: 2, Help: "the nodes it passes, in order; fluid nodes only"},
-			positive("capacity_rate", conductance, "w, heat carried for each kelvin: flow·ρ·c"),
+			casefile.Positive("capacity_rate", conductance, "w, heat carried for each kelvin: flow·ρ·c"),
 			{Name: "fluid", Type: casefile.Name, Structural: true, Help: "an own material or a liquid or gas of the handbook"},
 			flow,
 			with(level("flow_at", "temperature at which the flow is meant: must be stated for a gas; 20 °C for a liquid unless stated"), "fluid"),

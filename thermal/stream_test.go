@@ -27,11 +27,11 @@ capacity_rate = "5 W/K"
 show  = ["outlet"]
 times = ["0 s", "1 s"]
 `)
-	for _, p := range m.poles() {
+	for _, p := range m.RealParts() {
 		near(t, "pole", p, -0.1, 1e-13)
 	}
 	x := 1.7
-	near(t, "outlet", m.respond(17, "outlet").At(0, 17)-273.15, 1-math.Exp(-x)*(1+x+x*x/2), 1e-11)
+	near(t, "outlet", m.Respond(17, "outlet").At(0, 17)-273.15, 1-math.Exp(-x)*(1+x+x*x/2), 1e-11)
 }
 
 func TestCapacityRates(t *testing.T) {
@@ -66,8 +66,8 @@ path = ["inlet", "tank"]
 show  = ["tank"]
 times = ["0 s", "1 s"]
 `)
-		near(t, c.name, m.derived("capacity rate of s").SI, c.want, 1e-12)
-		near(t, c.name+": pole", m.poles()[0], -c.want/1000, 1e-12)
+		near(t, c.name, m.Derived("capacity rate of s").SI, c.want, 1e-12)
+		near(t, c.name+": pole", m.RealParts()[0], -c.want/1000, 1e-12)
 	}
 }
 
@@ -105,14 +105,14 @@ func TestPassage(t *testing.T) {
 		{`conductance = "1 MW/K"`, 1e6},
 	} {
 		m := read(t, "held plate", passageCase(`held = "60 °C"`, c.contact))
-		near(t, "outlet", m.respond(1, "outlet").At(0, 0)-273.15, 60-40*math.Exp(-c.ua/240), 1e-14)
+		near(t, "outlet", m.Respond(1, "outlet").At(0, 0)-273.15, 60-40*math.Exp(-c.ua/240), 1e-14)
 		m = read(t, "heated plate", passageCase("capacitance = \"400 J/K\"\n[thermal.source.heat]\ninto = \"plate\"\ndrive = \"72 W\"", c.contact))
-		r := m.respond(1, "outlet", "plate", "outlet - inlet", "plate - inlet")
+		r := m.Respond(1, "outlet", "plate", "outlet - inlet", "plate - inlet")
 		near(t, "warming of the stream", r.At(2, 0), 72.0/240)
 		carried := -240 * math.Expm1(-c.ua/240) // between entry and plate
 		near(t, "rise of the plate", r.At(3, 0), 72/carried)
-		near(t, "pole", m.poles()[0], -carried/400)
-		near(t, "effectiveness", m.derived("effectiveness of p").SI, carried/240, 1e-14)
+		near(t, "pole", m.RealParts()[0], -carried/400)
+		near(t, "effectiveness", m.Derived("effectiveness of p").SI, carried/240, 1e-14)
 	}
 }
 
@@ -164,7 +164,7 @@ drive = "88 W"
 show  = ["outlet"]
 times = ["0 s", "1 s"]
 `)
-	r := m.respond(300, "outlet - inlet", "p1", "p2", "p3")
+	r := m.Respond(300, "outlet - inlet", "p1", "p2", "p3")
 	const h = 1e-2 // s, for the rates: central differences, off by h²/6 of the third derivative
 	for _, at := range []float64{3, 20, 100} {
 		stored := 0.0
@@ -219,11 +219,11 @@ times = ["0 s", "1 s"]
 		{"film without area", stream + "[thermal.passage.p]\nstream = \"s\"\nalong = \"b\"\nbetween = [\"in\", \"a\"]\nfilm = \"1 W/(m²·K)\"", "missing-key: "},
 		{"turns back", "[thermal.stream.s]\npath = [\"in\", \"a\", \"a\"]\ncapacity_rate = \"4 W/K\"", "\"a\" follows itself"},
 	} {
-		if got := faults(t, base+c.text+"\n"); !strings.Contains(got, c.want) {
+		if got := faults(base + c.text + "\n"); !strings.Contains(got, c.want) {
 			t.Errorf("%s: %q is not among\n%s", c.name, c.want, got)
 		}
 	}
-	if got := faults(t, base+stream); strings.Contains(got, "case.toml") && strings.Contains(got, "more leaves") {
+	if got := faults(base + stream); strings.Contains(got, "case.toml") && strings.Contains(got, "more leaves") {
 		t.Errorf("a stream that ends in a node with nothing after it is legal:\n%s", got)
 	}
 }

@@ -122,9 +122,9 @@ func materialTable() casefile.Table {
 		Name: "material",
 		Help: "a material of the case's own; it hides one of the handbook by the same name",
 		Fields: []casefile.Field{
-			positive("density", density, "ρ"),
-			positive("specific_heat", specificHeat, "c"),
-			positive("conductivity", conductivity, "k"),
+			casefile.Positive("density", density, "ρ"),
+			casefile.Positive("specific_heat", specificHeat, "c"),
+			casefile.Positive("conductivity", conductivity, "k"),
 		},
 	}
 }

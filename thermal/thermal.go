@@ -22,9 +22,9 @@
 //
 // # Not modelled
 //
-// Everything here is linear, with numbers that stay or change in steps (scale): films, conductivities and capacities that depend on
-// temperature, radiation, melting and controlled heaters are words of the
-// vocabulary that casefile refuses by name. The heat a lump conducts inside itself,
+// Everything here is linear, with numbers that stay or change in steps (scale): films,
+// conductivities and capacities that depend on temperature, radiation, melting and
+// controlled heaters are words of the vocabulary that casefile refuses by name. The heat a lump conducts inside itself,
 // heat stored in a stream between its nodes, and the travel time of a stream are
 // left out.
 //
@@ -59,8 +59,9 @@ func Vocabulary() []casefile.Vocabulary {
 			Check: check,
 		},
 		{
-			Tables:   []casefile.Table{materialTable()},
-			NotBuilt: []string{"air", "material.emissivity"},
+			Tables: []casefile.Table{materialTable()},
+			NotBuilt: []string{"air", "material.emissivity",
+				"material.density.points", "material.specific_heat.points", "material.conductivity.points"},
 		},
 	}
 }

@@ -20,18 +20,18 @@ func wallTable() casefile.Table {
 		Stage: 1,
 		Help:  "flat layers that store heat, from the first-named node to the second",
 		Fields: []casefile.Field{
-			between(),
+			casefile.Between(),
 			{Name: "layers", Type: casefile.Groups, Structural: true, Required: true, OneOf: [][]string{{"material", "conductivity"}},
 				Help: "in order from the first-named node",
 				Fields: []casefile.Field{
 					materialName("an own material or one of the handbook"),
-					positive("conductivity", conductivity, "k, with density and specific_heat in place of a material"),
-					positive("density", density, "ρ"),
-					positive("specific_heat", specificHeat, "c"),
-					required(positive("thickness", length, "t")),
-					positive("area", area, "A of this layer, where it differs"),
+					casefile.Positive("conductivity", conductivity, "k, with density and specific_heat in place of a material"),
+					casefile.Positive("density", density, "ρ"),
+					casefile.Positive("specific_heat", specificHeat, "c"),
+					required(casefile.Positive("thickness", length, "t")),
+					casefile.Positive("area", area, "A of this layer, where it differs"),
 				}},
-			positive("area", area, "A of every layer that states none"),
+			casefile.Positive("area", area, "A of every layer that states none"),
 			{Name: "lumps", Type: casefile.Count, Structural: true, Required: true, HasMin: true, Min: 1, HasMax: true, Max: maxLumps,
 				Help: "number of lumps in each layer, each with its capacitance in its middle"},
 			level("start", "temperature of the whole wall at t = 0"),
@@ -54,7 +54,7 @@ func (w *wallLayer) store(v casefile.Values, n int) float64 {
 }
 
 func buildWall(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
-	from, to, faults := ends(e, c)
+	from, to, faults := e.Ends()
 	layers, more := wallLayers(e, c)
 	if faults = append(faults, more...); faults != nil {
 		return nil, faults
@@ -90,10 +90,10 @@ func buildWall(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 	if e.Has("start") {
 		slot := e.Num("start")
 		for _, node := range inner {
-			setters = append(setters, setStart(node, slot))
+			setters = append(setters, casefile.SetStart(node, slot))
 		}
 	}
-	return together(setters), nil
+	return casefile.Together(setters...), nil
 }
 
 // wallLayers reads the layers.

@@ -71,7 +71,7 @@ func TestWallConvergesAtSecondOrder(t *testing.T) {
 				var errors []float64
 				for _, n := range []int{8, 16, 32, 64} {
 					m := read(t, "slab", slab(n, h))
-					errors = append(errors, math.Abs(m.respond(at, place.node).At(0, at)-273.15-exact))
+					errors = append(errors, math.Abs(m.Respond(at, place.node).At(0, at)-273.15-exact))
 				}
 				for i := 1; i < len(errors); i++ {
 					if order := math.Log2(errors[i-1] / errors[i]); order < 1.9 || order > 2.2 {
@@ -111,7 +111,7 @@ lumps   = 100
 show  = ["outside"]
 times = ["0 s", "480 s"]
 `)
-	r := m.respond(480, "outside", "inside")
+	r := m.Respond(480, "outside", "inside")
 	out, in := r.At(0, 480)-273.15, r.At(1, 480)-273.15
 	if math.Abs(out-43.01745141519361) > 2e-3 || math.Abs(in-45.363548120648815) > 2e-3 {
 		t.Errorf("%.4f °C outside, %.4f °C inside after 8 min, want 43.0175 and 45.3635", out, in)
@@ -139,21 +139,21 @@ show  = ["a"]
 times = ["0 s", "1 s"]
 `)
 	total := 5e-3/(401*2e-4) + 0.1/(0.72*300e-4) + 1e-2/(237*300e-4)
-	final, _ := m.respond(1, "flow of w").Final(0)
+	final, _ := m.Respond(1, "flow of w").Final(0)
 	near(t, "flow in the end", final, 100/total)
 	store := 0.0
-	for _, c := range m.params.C {
+	for _, c := range m.Params.C {
 		store += c
 	}
 	near(t, "heat stored", store, 8933*385*5e-3*2e-4+1920*835*0.1*300e-4+2702*903*1e-2*300e-4)
-	if n := len(m.params.C); n != 9 {
+	if n := len(m.Params.C); n != 9 {
 		t.Errorf("%d lumps, want 9", n)
 	}
-	r := m.respond(0, "w.1", "w.9")
+	r := m.Respond(0, "w.1", "w.9")
 	near(t, "start", r.At(0, 0), 283.15)
 	near(t, "start", r.At(1, 0), 283.15)
-	near(t, "resistance of layer 2", m.derived("resistance of layer 2 of w").SI, 0.1/(0.72*300e-4))
-	near(t, "capacitance of layer 1", m.derived("capacitance of layer 1 of w").SI, 8933*385*5e-3*2e-4)
+	near(t, "resistance of layer 2", m.Derived("resistance of layer 2 of w").SI, 0.1/(0.72*300e-4))
+	near(t, "capacitance of layer 1", m.Derived("capacitance of layer 1 of w").SI, 8933*385*5e-3*2e-4)
 }
 
 // A slab whose faces step to one temperature, Carslaw and Jaeger, Conduction of Heat in Solids, sections 3.3 and 3.4:
@@ -174,7 +174,7 @@ lumps   = 150
 show  = ["middle"]
 times = ["0 s", "1 s"]
 `)
-	r := m.respond(100, "middle")
+	r := m.Respond(100, "middle")
 	for fo, want := range map[float64]float64{0.05: 0.9968691954839949, 0.1: 0.9493053626844704, 0.2: 0.7723116068585906, 0.5: 0.3707774297995239, 1: 0.10797704444410901} {
 		if got := r.At(0, 100*fo) - 273.15; math.Abs(got-want) > 3e-5 {
 			t.Errorf("Fo = %g: %.6f of the step is left in the middle, want %.6f", fo, got, want)

@@ -2,9 +2,12 @@ package main
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
 	"io"
 	"strings"
+
+	"lagbook/network/quantity"
 
 	"github.com/spf13/cobra"
 	"github.com/spf13/pflag"
@@ -106,3 +109,28 @@ func firstOf(a, b string) string {
 	}
 	return b
 }
+
+// flagFault says which flag was probably meant, or what the flag takes.
+func flagFault(c *cobra.Command, err error) error {
+	var unknown *pflag.NotExistError
+	var value *pflag.InvalidValueError
+	text := err.Error()
+	switch {
+	case errors.As(err, &unknown):
+		var names []string
+		c.Flags().VisitAll(func(f *pflag.Flag) { names = append(names, f.Name) })
+		if near, ok := quantity.Nearest(unknown.GetSpecifiedName(), names); ok {
+			return &fault{exitUsage, text + fmt.Sprintf("; did you mean --%s?", near)}
+		}
+	case errors.As(err, &value):
+		text = fmt.Sprintf("--%s %q is no %s", value.GetFlag().Name, value.GetValue(), flagWants[value.GetFlag().Value.Type()])
+	}
+	verb := ""
+	if c.HasParent() {
+		verb = " " + c.Name()
+	}
+	return &fault{exitUsage, fmt.Sprintf("%s: \"lagbook help%s\" lists the flags", text, verb)}
+}
+
+// flagWants puts the types of flags that can fail in words.
+var flagWants = map[string]string{"int": "whole number", "bool": "true or false"}

@@ -39,6 +39,9 @@ func (a *app) modelOr(example string, args []string) (*study.Model, error) {
 		a.diagnose(ds)
 		return nil, &fault{code: exitCase}
 	}
+	if err := a.keepsInput(name, c.Files()); err != nil {
+		return nil, err
+	}
 	m, more := study.New(c)
 	ds = append(ds, more...)
 	a.diagnose(ds)

@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"strings"
 
 	"lagbook/network/quantity"
 
@@ -39,9 +40,13 @@ func unknownVerb(c *cobra.Command, word string) error {
 		names = append(names, v.Name())
 	}
 	text := fmt.Sprintf("%q is not a verb", word)
-	if near, ok := quantity.Nearest(word, names); ok {
+	near, ok := quantity.Nearest(word, names)
+	switch {
+	case ok:
 		text += fmt.Sprintf("; did you mean %q?", near)
-	} else {
+	case strings.HasSuffix(word, ".toml"):
+		text += fmt.Sprintf(": the verb comes first, as in \"lagbook demo %s\"", word)
+	default:
 		text += `: "lagbook help" lists them`
 	}
 	return &fault{exitUsage, text}

@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"path/filepath"
 	"syscall"
 
 	"lagbook/cmd/lagbook/internal/present"
@@ -67,6 +68,24 @@ func (a *app) publish(b []byte) error {
 	defer a.filing.Unlock()
 	if err := present.WriteFile(a.file, a.out, write); err != nil {
 		return &fault{exitCase, fmt.Sprintf("cannot write %s: %v", a.file, last(err))}
+	}
+	return nil
+}
+
+// keepsInput refuses to write over the case, or over a data file beside it.
+func (a *app) keepsInput(name string, data []string) error {
+	out, err := os.Stat(a.file)
+	if a.file == "" || a.file == "-" || err != nil {
+		return nil // nothing there to lose
+	}
+	files := []string{name}
+	for _, d := range data {
+		files = append(files, filepath.Join(filepath.Dir(name), d))
+	}
+	for _, f := range files {
+		if in, err := os.Stat(f); err == nil && os.SameFile(in, out) && out.Mode().IsRegular() {
+			return &fault{exitUsage, fmt.Sprintf("-o %s would write over %s, which the case is read from: choose another name", a.file, f)}
+		}
 	}
 	return nil
 }

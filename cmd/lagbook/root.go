@@ -46,6 +46,7 @@ func (a *app) root() *cobra.Command {
 	root.SetOut(a.out)
 	root.SetErr(a.err)
 	root.SetHelpFunc(a.help)
+	root.SetFlagErrorFunc(flagFault)
 
 	f := root.PersistentFlags()
 	f.StringVar(&a.format, "format", "text", "`FORMAT` to print in: "+strings.Join(formats(), ", "))

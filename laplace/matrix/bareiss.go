@@ -27,11 +27,19 @@ func (s *Stores) Ratio(in, out []float64, direct, rate float64) (num, den []floa
 	}
 	p, q = interpolate(at, p), interpolate(at, q)
 	den, num = make([]float64, n+1), make([]float64, last+1)
+	ok := true
 	for k := range den {
-		den[k] = rounded(q[k], q[n], (n-k)*e.time)
+		var good bool
+		den[k], good = rounded(q[k], q[n], (n-k)*e.time)
+		ok = ok && good
 	}
 	for k := range num {
-		num[k] = rounded(p[k], q[n], (n-k)*e.time-e.border)
+		var good bool
+		num[k], good = rounded(p[k], q[n], (n-k)*e.time-e.border)
+		ok = ok && good
+	}
+	if !ok {
+		return nil, nil, ErrRange
 	}
 	for len(num) > 0 && num[len(num)-1] == 0 {
 		num = num[:len(num)-1]

@@ -26,9 +26,9 @@ type householder struct {
 }
 
 func (h *householder) size(rows, n int) {
-	h.row, h.col = grow(h.row, rows), grow(h.col, rows)
-	h.x, h.v, h.t = grow(h.x, rows), grow(h.v, rows), grow(h.t, rows)
-	h.u, h.w, h.sum = grow(h.u, n+padding), grow(h.w, n+padding), grow(h.sum, n+padding)
+	h.row, h.col = resized(h.row, rows), resized(h.col, rows)
+	h.x, h.v, h.t = resized(h.x, rows), resized(h.v, rows), resized(h.t, rows)
+	h.u, h.w, h.sum = resized(h.u, n+padding), resized(h.w, n+padding), resized(h.sum, n+padding)
 	for _, s := range [][]float64{h.u, h.w, h.sum} {
 		clear(s[n:])
 	}

@@ -73,7 +73,7 @@ func scaledPlain(n int, a, scale []float64) (*system, error) {
 	if scale != nil && len(scale) != n {
 		return nil, ErrShape
 	}
-	s, err := plain(n, nil, a)
+	s, err := plain(n, a)
 	if err != nil {
 		return nil, err
 	}
@@ -84,17 +84,6 @@ func scaledPlain(n int, a, scale []float64) (*system, error) {
 		s.scale[i] = int(math.Round(math.Log2(v)))
 	}
 	return s, nil
-}
-
-// StoreBlockForm uncouples capacity[i] x[i]' = Σ_j g[i,j] x[j]: pressures and flows
-// with their compliances and inertances, g n×n row-major. In then takes inputs
-// in the units of g·x.
-func StoreBlockForm(n int, capacity, g []float64) (*BlockForm, error) {
-	s, err := plain(n, capacity, g)
-	if err != nil {
-		return nil, err
-	}
-	return s.blockForm()
 }
 
 func (s *system) blockForm() (*BlockForm, error) { return s.blockFormBy(new(BlockWork)) }

@@ -1,7 +1,7 @@
 package matrix
 
 // BlockWork is a workspace for uncoupling systems one after another: it gives what
-// Balance.BlockForm and DenseBlockForm give, bit for bit, and allocates no more than
+// Balance.BlockForm, Stores.BlockForm and DenseBlockForm give, bit for bit, and allocates no more than
 // the result where no system is larger than those before. The zero value is ready;
 // two goroutines must not share one. A BlockForm keeps nothing of it.
 type BlockWork struct {
@@ -28,6 +28,15 @@ func (w *BlockWork) BlockForm(b *Balance) (*BlockForm, error) {
 		return nil, err
 	}
 	return b.system().blockFormBy(w)
+}
+
+// Stores is Stores.BlockForm.
+func (w *BlockWork) Stores(s *Stores) (*BlockForm, error) {
+	y, err := s.system()
+	if err != nil {
+		return nil, err
+	}
+	return y.blockFormBy(w)
 }
 
 // Dense is DenseBlockForm.

@@ -104,7 +104,7 @@ func polesOf(start []int, poles []complex128, a int) []complex128 {
 // groupTol, a pole and its conjugate counting as one.
 func (u *decoupling) group(start []int, poles []complex128, linked func(i, j int) bool) {
 	atoms := len(start) - 1
-	u.cluster = resizedInts(u.cluster, atoms)
+	u.cluster = resized(u.cluster, atoms)
 	for i := range u.cluster {
 		u.cluster[i] = i
 	}
@@ -116,13 +116,6 @@ func (u *decoupling) group(start []int, poles []complex128, linked func(i, j int
 			}
 		}
 	}
-}
-
-func resizedInts(v []int, n int) []int {
-	if cap(v) < n {
-		return make([]int, n)
-	}
-	return v[:n]
 }
 
 // near reports a pole of p and one of q with a relative gap of at most tol; those
@@ -188,7 +181,7 @@ func (u *decoupling) solve(t []float64, start []int, level []float64) {
 }
 
 func (u *decoupling) countClusters() {
-	u.members = resizedInts(u.members, len(u.cluster))
+	u.members = resized(u.members, len(u.cluster))
 	clear(u.members)
 	for _, c := range u.cluster {
 		u.members[c]++
@@ -285,7 +278,7 @@ func submatrix(t []float64, n, i0, p int) []float64 {
 	return s
 }
 
-// members lists the atoms of each cluster, clusters in order of their first atom.
+// clusters lists the atoms of each cluster, clusters in order of their first atom.
 func (u *decoupling) clusters() [][]int {
 	var list [][]int
 	where := map[int]int{}

@@ -61,12 +61,16 @@ func (r refNetwork) balance() *Balance {
 	return &Balance{N: r.N, C: r.Capacity, F: r.dense(), Leak: r.Leak}
 }
 
+func (r refNetwork) stores() *Stores {
+	return &Stores{Balance: Balance{N: r.N, C: r.Capacity, F: make([]float64, r.N*r.N), Leak: make([]float64, r.N)}, K: r.dense()}
+}
+
 func (r refNetwork) blockForm(t testing.TB) *BlockForm {
 	t.Helper()
 	var f *BlockForm
 	var err error
 	if r.Form == "stores" {
-		f, err = StoreBlockForm(r.N, r.Capacity, r.dense())
+		f, err = r.stores().BlockForm()
 	} else {
 		f, err = r.balance().BlockForm()
 	}

@@ -27,10 +27,10 @@ type network struct {
 
 func (t *network) size(n int) {
 	t.stride = (n + 2*padding - 1) &^ (padding - 1)
-	t.a = grow(t.a, n*t.stride+padding)
-	t.c, t.inv, t.leak = grow(t.c, n), grow(t.inv, n), grow(t.leak, n)
-	t.sum, t.pivot = grow(t.sum, n), grow(t.pivot, n)
-	t.store, t.place = growInts(t.store, n), growInts(t.place, n)
+	t.a = resized(t.a, n*t.stride+padding)
+	t.c, t.inv, t.leak = resized(t.c, n), resized(t.inv, n), resized(t.leak, n)
+	t.sum, t.pivot = resized(t.sum, n), resized(t.pivot, n)
+	t.store, t.place = resized(t.store, n), resized(t.place, n)
 }
 
 // begin takes the stores of an island.

@@ -56,7 +56,7 @@ func (q *implicitQR) run(d, e []float64, right, left [][]float64) error {
 			continue
 		}
 		if budget--; budget == 0 {
-			return errIteration
+			return ErrNoConvergence
 		}
 		safe = q.sweep(lo, hi, q.shift(lo, hi, safe))
 	}
@@ -76,7 +76,7 @@ func (q *implicitQR) top(hi int) int {
 func (q *implicitQR) take(right, left [][]float64) {
 	n := len(q.d)
 	q.half = len(right)
-	q.z = grow(q.z, 2*q.half*n)
+	q.z = resized(q.z, 2*q.half*n)
 	if cap(q.swap) < n {
 		q.swap = make([]bool, n)
 	}

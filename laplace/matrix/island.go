@@ -1,9 +1,6 @@
 package matrix
 
-import (
-	"errors"
-	"math"
-)
+import "math"
 
 // island finds the modes of island i and writes them to the lists of w.
 func (w *RCWork) island(b *Balance, ports [][]float64, i int, m *RCModes) error {
@@ -175,9 +172,5 @@ func (w *RCWork) sign(k int) {
 
 // powers returns two factors whose product is 2^e, |e| ≤ 2000.
 func powers(e int) (a, b float64) { return pow2(e / 2), pow2(e - e/2) }
-
-// errIteration is returned where an iteration has not come to its end; none
-// has been seen.
-var errIteration = errors.New("matrix: the singular values did not converge")
 
 const minNormal = 0x1p-1022

@@ -80,7 +80,7 @@ func (b *Balance) refusal() error {
 // join links the stores that exchange: root[i] becomes the smallest store of
 // the island of i (disjoint sets, the smaller root wins).
 func (s *islands) join(n int) {
-	s.root, s.degree = growInts(s.root, n), growInts(s.degree, n)
+	s.root, s.degree = resized(s.root, n), resized(s.degree, n)
 	if cap(s.near) < 2*n {
 		s.near = make([]edge, 2*n)
 	}
@@ -118,8 +118,8 @@ func (s *islands) top(i int) int {
 
 // group lists the stores island by island, by their smallest store.
 func (s *islands) group(n int) {
-	s.order, s.next = growInts(s.order, n), growInts(s.next, n)
-	s.first = growInts(s.first, n+1)
+	s.order, s.next = resized(s.order, n), resized(s.next, n)
+	s.first = resized(s.first, n+1)
 	s.count = 0
 	for i := range n { // count the stores of each island at its root's place
 		if s.root[i] = s.top(i); s.root[i] == i {

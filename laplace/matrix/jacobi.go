@@ -20,7 +20,7 @@ func (w *RCWork) rotate(d []float64) error {
 			return nil
 		}
 	}
-	return errIteration
+	return ErrNoConvergence
 }
 
 // maxJacobi bounds the rounds; eight are many.
@@ -36,7 +36,7 @@ type jacobi struct {
 
 func (j *jacobi) begin(t *network, left [][]float64) {
 	j.left = left
-	j.square = grow(j.square, t.rows)
+	j.square = resized(j.square, t.rows)
 	j.rows = j.rows[:0]
 	wide := (t.n + padding - 1) &^ (padding - 1) // zeros beyond n
 	for k := range t.rows {

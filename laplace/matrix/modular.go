@@ -69,7 +69,7 @@ func modFloat(v float64) residue {
 // modular is the matrix A of the given states, row-major.
 func (s *system) modular(states []int) []residue {
 	if s.stores != nil {
-		return s.submodular(states)
+		return s.modularPart(states)
 	}
 	m := len(states)
 	a := make([]residue, m*m)

@@ -38,9 +38,9 @@ func (s *system) without(p int, v []dd) *system {
 		r.c[i], r.scale[i] = 1, s.scale[at(i)]
 		share := v[at(i)].div(v[p])
 		for j := range n {
-			a, size := s.whole(at(i), at(j)), s.uncertain(at(i), at(j))
+			a, size := s.element(at(i), at(j)), s.uncertain(at(i), at(j))
 			if !share.zero() {
-				b := s.whole(p, at(j))
+				b := s.element(p, at(j))
 				a = a.sub(share.mul(b))
 				size += math.Abs(share.hi) * (s.uncertain(p, at(j)) + 2*math.Abs(b.hi))
 			}
@@ -65,7 +65,7 @@ func (s *system) nullVector() []dd {
 	for i := range n {
 		col[i] = i
 		for j := range n {
-			a[i*n+j] = s.whole(i, j)
+			a[i*n+j] = s.element(i, j)
 		}
 	}
 	first, rank := 0.0, 0

@@ -115,27 +115,9 @@ func ulps(k, v float64) float64 { return k * eps * math.Abs(v) }
 // and capacitances: exchange symmetric bit for bit and not negative, and what
 // it loses to the reference and to the parts it feels not negative either.
 func (s *system) rcWithin(states []int) (*Balance, bool) {
-	m := len(states)
-	inside := make([]bool, s.n)
-	for _, i := range states {
-		inside[i] = true
-	}
-	b := &Balance{N: m, C: make([]float64, m), F: make([]float64, m*m), Leak: make([]float64, m)}
-	for p, i := range states {
-		leak := toDD(s.leak[i])
-		for j := 0; j < s.n; j++ {
-			if !inside[j] {
-				leak = leak.addFloat(s.g[i*s.n+j])
-			}
-		}
-		b.C[p], b.Leak[p] = s.c[i], leak.float()
-		for q, j := range states {
-			if p != q {
-				b.F[p*m+q] = s.g[i*s.n+j]
-			}
-		}
-	}
-	return b, b.IsRC()
+	whole := Balance{N: s.n, C: s.c, F: s.g, Leak: s.leak}
+	b := whole.Restrict(states)
+	return &b, b.IsRC()
 }
 
 // rcPart takes the modes of a network of resistances and capacitances with a

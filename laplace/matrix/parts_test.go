@@ -114,9 +114,9 @@ func TestDefectivePole(t *testing.T) {
 }
 
 // Zeros of a plain matrix: (s+2)/(s²+3s+5), and with d = 1 those of the sum.
-func TestPlainZeros(t *testing.T) {
+func TestDenseZeros(t *testing.T) {
 	a, b, c := []float64{0, 1, -5, -3}, []float64{0, 1}, []float64{2, 1}
-	z, err := Zeros(2, a, b, c, 0, 1)
+	z, err := DenseZeros(2, a, b, c, 0)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -124,22 +124,23 @@ func TestPlainZeros(t *testing.T) {
 		t.Errorf("zeros %+v, want −2", z)
 	}
 	// s²+4s+7 = 0: −2 ± i√3
-	if z, err = Zeros(2, a, b, c, 1, 0); err != nil {
+	if z, err = DenseZeros(2, a, b, c, 1); err != nil {
 		t.Fatal(err)
 	}
 	if len(z) != 2 || math.Abs(z[0].Re+2) > 1e-15 || math.Abs(z[0].Im+math.Sqrt(3)) > 4e-16 {
 		t.Errorf("zeros %+v, want −2 ± i√3", z)
 	}
-	if _, err = Zeros(2, a, b, []float64{0, 0}, 0, 1); !errors.Is(err, ErrZeroTransfer) {
+	if _, err = DenseZeros(2, a, b, []float64{0, 0}, 0); !errors.Is(err, ErrZeroTransfer) {
 		t.Errorf("no output: %v, want ErrZeroTransfer", err)
 	}
-	if _, err = Zeros(2, a, b[:1], c, 0, 1); !errors.Is(err, ErrShape) {
+	if _, err = DenseZeros(2, a, b[:1], c, 0); !errors.Is(err, ErrShape) {
 		t.Errorf("short b: %v, want ErrShape", err)
 	}
-	if _, err = Zeros(2, a, b, []float64{math.NaN(), 0}, 0, 1); !errors.Is(err, ErrValue) {
+	if _, err = DenseZeros(2, a, b, []float64{math.NaN(), 0}, 0); !errors.Is(err, ErrValue) {
 		t.Errorf("NaN in c: %v, want ErrValue", err)
 	}
-	if _, err = StoreZeros(2, []float64{1, 0}, a, b, c, 0); !errors.Is(err, ErrValue) {
+	s := &Stores{Balance: Balance{N: 2, C: []float64{1, 0}, F: make([]float64, 4), Leak: []float64{0, 0}}, K: a}
+	if _, err = s.Zeros(b, c, 0, 0); !errors.Is(err, ErrValue) {
 		t.Errorf("capacity 0: %v, want ErrValue", err)
 	}
 }

@@ -19,8 +19,8 @@ var ErrOrder = errors.New("matrix: the order is too high for a ratio of polynomi
 // are kept; take Restrict of Path first to be rid of those of other stores.
 //
 // Accuracy: the doubles are taken as the rational numbers they are and every
-// coefficient is rounded once, at the end. It returns ErrOrder above order 10,
-// ErrShape and ErrValue.
+// coefficient is rounded once, at the end. It returns ErrOrder above order 10, ErrShape,
+// ErrValue, and ErrRange where a coefficient is too large or too small for a double.
 //
 // Method: the doubles are scaled to integers; sE − A bordered by in and out is
 // eliminated without fractions (E. H. Bareiss, Math. Comp. 22 (1968) 565) at N + 1
@@ -51,10 +51,11 @@ func allFinite(v []float64) bool {
 	return true
 }
 
-// rounded returns p/q·2^k.
-func rounded(p, q *big.Rat, k int) float64 {
-	v, _ := new(big.Rat).Quo(p, q).Float64()
-	return math.Ldexp(v, k)
+// rounded returns p/q·2^k; not ok where that is no number of its size.
+func rounded(p, q *big.Rat, k int) (v float64, ok bool) {
+	v, _ = new(big.Rat).Quo(p, q).Float64()
+	v = math.Ldexp(v, k)
+	return v, v-v == 0 && (v != 0 || p.Sign() == 0)
 }
 
 // odd returns v = m·2^e with m odd, or 0, 0.

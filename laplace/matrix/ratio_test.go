@@ -144,3 +144,17 @@ func BenchmarkRatio(b *testing.B) {
 		})
 	}
 }
+
+// Coefficients that no double holds are refused, not returned as 0 or infinite.
+func TestRatioRange(t *testing.T) {
+	n := 8
+	b := Balance{N: n, C: make([]float64, n), F: make([]float64, n*n), Leak: make([]float64, n)}
+	for _, rate := range []float64{1e50, 1e-50} {
+		for i := range n {
+			b.C[i], b.Leak[i] = 1, rate
+		}
+		if _, _, err := b.Ratio(unit(n, 0), unit(n, 0), 0); !errors.Is(err, ErrRange) {
+			t.Errorf("rates of %g: %v, want ErrRange", rate, err)
+		}
+	}
+}

@@ -66,7 +66,8 @@ const maxGrowth = 40
 // for the first port j that sees the mode.
 //
 // It returns ErrShape, ErrValue, ErrNotRC or ErrRange, the last where the
-// capacities, or the exchanges, of a network differ by more than about 1e108.
+// capacities, or the exchanges, of a network differ by more than about 1e108, and
+// ErrNoConvergence, which has not been seen.
 //
 // Method: elimination with a pivot of the largest F/C (gth.go) gives X with
 // C^-½ G C^-½ = X Xᵀ; Xᵀ is bidiagonalised (bidiagonal.go) and its singular
@@ -153,44 +154,18 @@ const maxExponent = 1000
 // size makes room for n stores and the ports.
 func (w *RCWork) size(n, ports int) {
 	w.net.size(n)
-	w.d, w.e = grow(w.d, n), grow(w.e, n)
-	w.lambda = grow(w.lambda, n)
-	w.order = growInts(w.order, n)
-	w.scratch = grow(w.scratch, n+padding)
+	w.d, w.e = resized(w.d, n), resized(w.e, n)
+	w.lambda = resized(w.lambda, n)
+	w.order = resized(w.order, n)
+	w.scratch = resized(w.scratch, n+padding)
 	w.port = slices.Grow(w.port[:0], ports)[:ports]
-	w.value = growRows(w.value, ports, n)
+	w.value = resizedRows(w.value, ports, n)
 	for i := range w.side {
-		w.side[i] = growRows(w.side[i], ports, n+padding)
+		w.side[i] = resizedRows(w.side[i], ports, n+padding)
 	}
-}
-
-// grow returns a slice of length n, the old one where it is long enough.
-func grow(s []float64, n int) []float64 {
-	if cap(s) < n {
-		return make([]float64, n)
-	}
-	return s[:n]
 }
 
 func abs(i int) int { return max(i, -i) }
-
-func growInts(s []int, n int) []int {
-	if cap(s) < n {
-		return make([]int, n)
-	}
-	return s[:n]
-}
-
-func growRows(s [][]float64, rows, n int) [][]float64 {
-	if cap(s) < rows {
-		s = append(make([][]float64, 0, rows), s[:cap(s)]...)
-	}
-	s = s[:rows]
-	for i := range s {
-		s[i] = grow(s[i], n)
-	}
-	return s
-}
 
 // largest returns the largest magnitude in v.
 func largest(v []float64) float64 {

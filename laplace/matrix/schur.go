@@ -5,7 +5,7 @@ import (
 	"math"
 )
 
-// ErrNoConvergence reports an eigenvalue iteration that gave up.
+// ErrNoConvergence reports an iteration for eigenvalues or singular values that gave up.
 var ErrNoConvergence = errors.New("matrix: the eigenvalues did not converge")
 
 // schurWork holds a matrix while it is brought to real Schur form, and what
@@ -61,15 +61,6 @@ func schurStride(n int) int {
 	return ld
 }
 
-// resized returns a slice of length n, v where it is long enough; what is in it
-// is of no use.
-func resized(v []float64, n int) []float64 {
-	if cap(v) < n {
-		return make([]float64, n)
-	}
-	return v[:n]
-}
-
 // schur returns T and orthogonal Q with a = Q T Qᵀ for a small matrix.
 func schur(n int, a []float64) (t, q []float64, err error) {
 	var s schurWork
@@ -106,9 +97,7 @@ func appendAtoms(start []int, n, ld int, t []float64) []int {
 // eigen2 returns the eigenvalues of [a b; c d]: two reals, the larger in modulus
 // first, or a pair re ± i·im with im > 0.
 func eigen2(a, b, c, d float64) (p, q complex128) {
-	half := toDD(a).sub(toDD(d)).scale(0.5)
-	disc := half.mul(half).add(toDD(b).mul(toDD(c)))
-	mean := toDD(a).add(toDD(d)).scale(0.5)
+	mean, disc := pairTerms(toDD(a), toDD(b), toDD(c), toDD(d))
 	if disc.hi < 0 {
 		im := disc.neg().sqrt().float()
 		return complex(mean.float(), im), complex(mean.float(), -im)

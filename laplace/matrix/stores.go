@@ -54,12 +54,18 @@ func (s *Stores) capacity(i int) float64 {
 	return s.Mass[i*s.N+i]
 }
 
+// uncoupled reports stores that are a Balance and nothing more.
+func (s *Stores) uncoupled() bool { return s.K == nil && s.Mass == nil }
+
 // system assembles the stores; those that a mass matrix ties to others are solved
 // for x' in doubled precision.
 func (s *Stores) system() (*system, error) {
 	n := s.N
 	if err := s.check(); err != nil {
 		return nil, err
+	}
+	if s.uncoupled() {
+		return s.Balance.system(), nil
 	}
 	y := &system{n: n, c: make([]float64, n), g: make([]float64, n*n), low: make([]float64, n*n),
 		diag: make([]dd, n), noise: make([]float64, n*n), scale: make([]int, n), stores: s}
@@ -77,12 +83,12 @@ func (s *Stores) system() (*system, error) {
 		}
 	}
 	for _, states := range s.tied() {
-		h, err := newHeavy(s, states)
+		h, err := newMassGroup(s, states)
 		if err != nil {
 			return nil, err
 		}
 		h.solve(y)
-		y.heavy = append(y.heavy, h)
+		y.massGroups = append(y.massGroups, h)
 	}
 	return y, nil
 }
@@ -140,11 +146,29 @@ func (s *Stores) tied() (groups [][]int) {
 
 // BlockForm uncouples the stores, see Balance.BlockForm. In takes flows f.
 func (s *Stores) BlockForm() (*BlockForm, error) {
+	return new(BlockWork).Stores(s)
+}
+
+// Dense returns x' = a x + rates for the flows f into the stores, a in 1/s, N×N
+// row-major, every number formed in doubled precision and rounded once. As with
+// Balance.Dense a slow pole of a stiff network is lost in it. It returns ErrShape or
+// ErrValue.
+func (s *Stores) Dense(f []float64) (a, rates []float64, err error) {
+	if len(f) != s.N {
+		return nil, nil, ErrShape
+	}
 	y, err := s.system()
 	if err != nil {
-		return nil, err
+		return nil, nil, err
 	}
-	return y.blockForm()
+	a, rates = make([]float64, s.N*s.N), make([]float64, s.N)
+	for i, r := range y.rates(f) {
+		rates[i] = r.float()
+		for j := range s.N {
+			a[i*s.N+j] = quotient(y.element(i, j), y.c[i]).float()
+		}
+	}
+	return a, rates, nil
 }
 
 // Pattern returns a balance that has an exchange wherever one store acts on another,

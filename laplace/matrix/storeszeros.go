@@ -1,5 +1,7 @@
 package matrix
 
+import "math"
+
 // Zeros returns the zeros of the transfer from the flows in to the weights out with
 // direct + rate·s passed on at once, of the stores that take part in it, see
 // Balance.Zeros. With rate ≠ 0 the transfer is improper and has one zero more than
@@ -11,6 +13,9 @@ func (s *Stores) Zeros(in, out []float64, direct, rate float64) ([]Root, error) 
 	}
 	if rate != 0 {
 		return s.improperZeros(in, out, direct, rate)
+	}
+	if s.uncoupled() {
+		return s.Balance.Zeros(in, out, direct)
 	}
 	keep := s.Path(in, out)
 	if len(keep) == 0 && direct == 0 {
@@ -38,17 +43,14 @@ func (s *Stores) improperZeros(in, out []float64, direct, rate float64) ([]Root,
 	if err != nil {
 		return nil, err
 	}
-	roots, err := w.poles()
-	if err != nil {
-		return nil, err
-	}
-	return roots, nil
+	return w.poles()
 }
 
 // withInput adds the input as a store of its own.
 func (s *Stores) withInput(in, out []float64, direct, rate float64) *Stores {
 	n, w := s.N, s.N+1
-	b := Balance{N: w, C: append(append([]float64(nil), s.C...), max(rate, -rate)), F: widened(n, s.F), Leak: append(append([]float64(nil), s.Leak...), 0)}
+	more := func(v []float64, x float64) []float64 { return append(append([]float64(nil), v...), x) }
+	b := Balance{N: w, C: more(s.C, math.Abs(rate)), F: widened(n, s.F), Leak: more(s.Leak, 0)}
 	e := &Stores{Balance: b, K: make([]float64, w*w)}
 	if s.K != nil {
 		e.K = widened(n, s.K)
@@ -80,27 +82,14 @@ func widened(n int, a []float64) []float64 {
 
 // Exact decides what Balance.Exact does, for direct + rate·s passed on at once.
 func (s *Stores) Exact(in, out []float64, direct, rate float64) (Exact, error) {
+	if err := s.checkTransfer(in, out, direct+rate); err != nil {
+		return Exact{}, err
+	}
 	w, err := s.system()
 	if err != nil {
 		return Exact{}, err
 	}
-	states, y := make([]int, s.N), make([]residue, s.N)
-	for i := range states {
-		states[i], y[i] = i, modFloat(out[i])
-	}
-	num, den := modNumerator(s.N, w.modular(states), w.exactRates(in), y, modFloat(direct))
-	if rate != 0 {
-		num = append(num, make([]residue, s.N+2-len(num))...)
-		for k, v := range den {
-			num[k+1] = modAdd(num[k+1], modMul(modFloat(rate), v))
-		}
-		num = modTrim(num)
-	}
-	e := Exact{Order: s.N, Degree: len(num) - 1, OriginPoles: modOrder(den), OriginZeros: modOrder(num)}
-	if len(num) > 0 {
-		e.Common = modCommon(den, num)
-	}
-	return e, nil
+	return w.exact(in, out, direct, rate), nil
 }
 
 func (s *Stores) checkTransfer(in, out []float64, direct float64) error {

@@ -15,10 +15,10 @@ type system struct {
 	leak  []float64 // of a Balance; nil for a plain matrix
 	scale []int     // x[i]·2^scale[i] are comparable states
 
-	rootsOnly bool      // no response is asked for, so that close poles may stay apart
-	stores    *Stores   // what it was made from, where that has couplings of its own
-	heavy     []*heavy  // the groups tied by a mass matrix
-	exactly   []residue // of submodular
+	rootsOnly  bool         // no response is asked for, so that close poles may stay apart
+	stores     *Stores      // what it was made from, where that has couplings of its own
+	massGroups []*massGroup // the groups tied by a mass matrix
+	residues   []residue    // of modularPart
 }
 
 func (b *Balance) system() *system {
@@ -41,24 +41,18 @@ func halfExponent(c float64) int {
 	return int(math.Round(math.Log2(c) / 2))
 }
 
-// plain is capacity[i] x[i]' = Σ g[i,j] x[j] as a system; capacity nil is 1.
-func plain(n int, capacity, g []float64) (*system, error) {
-	if n < 0 || n*n != len(g) || capacity != nil && len(capacity) != n {
+// plain is x' = a x, a n×n row-major, as a system.
+func plain(n int, a []float64) (*system, error) {
+	if n < 0 || n*n != len(a) {
 		return nil, ErrShape
 	}
-	if !allFinite(g) || !allFinite(capacity) {
+	if !allFinite(a) {
 		return nil, ErrValue
 	}
-	s := &system{n: n, c: make([]float64, n), g: g, diag: make([]dd, n), scale: make([]int, n)}
+	s := &system{n: n, c: make([]float64, n), g: a, diag: make([]dd, n), scale: make([]int, n)}
 	for i := range s.c {
 		s.c[i] = 1
-		s.diag[i] = toDD(g[i*n+i])
-		if capacity != nil {
-			if !(capacity[i] > 0) {
-				return nil, ErrValue
-			}
-			s.c[i], s.scale[i] = capacity[i], halfExponent(capacity[i])
-		}
+		s.diag[i] = toDD(a[i*n+i])
 	}
 	return s, nil
 }
@@ -72,11 +66,19 @@ func (s *system) entry(i, j int) dd {
 	return v
 }
 
+// element is entry i, j of g with the diagonal.
+func (s *system) element(i, j int) dd {
+	if i == j {
+		return s.diag[i]
+	}
+	return s.entry(i, j)
+}
+
 // feels is the exact pattern of g.
 func (s *system) feels(i, j int) bool { return s.g[i*s.n+j] != 0 }
 
-// over returns a/c in doubled precision.
-func over(a dd, c float64) dd {
+// quotient returns a/c in doubled precision.
+func quotient(a dd, c float64) dd {
 	if c == 1 {
 		return a
 	}
@@ -84,7 +86,7 @@ func over(a dd, c float64) dd {
 }
 
 // rate is the pole of state i alone.
-func (s *system) rate(i int) float64 { return over(s.diag[i], s.c[i]).float() }
+func (s *system) rate(i int) float64 { return quotient(s.diag[i], s.c[i]).float() }
 
 // scaledMatrix is the matrix A of m states in scaled form: hi + lo holds
 // A[i,j]·2^(scale[i]−scale[j]+time), where z = 2^scale·x are comparable states and
@@ -100,7 +102,7 @@ type scaledMatrix struct {
 // matrix fills a with the given states.
 func (s *system) matrix(states []int, a *scaledMatrix) {
 	m := len(states)
-	a.m, a.time, a.scale = m, 0, resizedInts(a.scale, m)
+	a.m, a.time, a.scale = m, 0, resized(a.scale, m)
 	a.hi, a.lo, a.noise = resized(a.hi, m*m), resized(a.lo, m*m), resized(a.noise, m*m)
 	clear(a.hi)
 	clear(a.lo)
@@ -108,14 +110,11 @@ func (s *system) matrix(states []int, a *scaledMatrix) {
 	for p, i := range states {
 		a.scale[p] = s.scale[i]
 		for q, j := range states {
-			v := s.diag[i]
-			if i != j {
-				v = s.entry(i, j)
-			}
+			v := s.element(i, j)
 			if v.zero() && s.noise == nil {
 				continue
 			}
-			v = over(v, s.c[i])
+			v = quotient(v, s.c[i])
 			k := 1.0
 			if d := s.scale[i] - s.scale[j]; d != 0 {
 				k = math.Ldexp(1, d)

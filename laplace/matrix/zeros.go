@@ -9,20 +9,24 @@ import (
 // passes from the input to the output.
 var ErrZeroTransfer = errors.New("matrix: the transfer is identically zero")
 
-// Zeros returns the zeros of x' = a x + b u, y = c x + d u, a n×n row-major, r the
-// structural relative degree (StructuralDegree; 0 where d ≠ 0): n − r of them,
-// fewer where routes cancel exactly. They include the decoupling zeros, equal to
-// the poles that cancel. A zero at 0 is exactly 0. Slowest first.
+// DenseZeros returns the zeros of x' = a x + b u, y = c x + d u, a n×n row-major. They
+// include the decoupling zeros, equal to the poles that cancel. A zero at 0 is exactly
+// 0. Slowest first.
+//
+// Their number is n less the relative degree, which is counted in the graph
+// (StructuralDegree) and up to 64 states from the exact numerator, not judged by size:
+// routes that cancel exactly leave fewer. It returns ErrShape, ErrValue,
+// ErrZeroTransfer, ErrRange or ErrNoConvergence.
 //
 // Accuracy: simple zeros to a few 1e-16 relative for the numbers as given,
-// stated in Radius; an m-fold zero of one strongly connected part to ε^(1/m).
+// stated in Radius; an m-fold zero of one strongly connected part to ε^(1/m), or where
+// the exact numerator says that it is one, at its mean.
 //
 // Method: output-nulling reduction, a state at a time (A. Emami-Naeini, P. Van
-// Dooren, Automatica 18 (1982) 415), r counted and not judged by size, in
-// doubled precision; the eigenvalues of what is left as in BlockForm. Cost: 60 n³
-// for the part refined.
-func Zeros(n int, a, b, c []float64, d float64, r int) ([]Root, error) {
-	s, err := plain(n, nil, a)
+// Dooren, Automatica 18 (1982) 415), in doubled precision; the eigenvalues of what is
+// left as in BlockForm. Cost: 60 n³ for the part refined.
+func DenseZeros(n int, a, b, c []float64, d float64) ([]Root, error) {
+	s, err := plain(n, a)
 	if err != nil {
 		return nil, err
 	}
@@ -32,24 +36,7 @@ func Zeros(n int, a, b, c []float64, d float64, r int) ([]Root, error) {
 	if !allFinite(b) || !allFinite(c) || d-d != 0 {
 		return nil, ErrValue
 	}
-	return s.zeros(b, c, d, r)
-}
-
-// StoreZeros is Zeros for capacity[i] x[i]' = Σ_j g[i,j] x[j] + b[i] u, y = c x + d u,
-// the relative degree counted here: the numbers are taken as given, before any
-// division by a capacity.
-func StoreZeros(n int, capacity, g, b, c []float64, d float64) ([]Root, error) {
-	s, err := plain(n, capacity, g)
-	if err != nil {
-		return nil, err
-	}
-	if len(b) != n || len(c) != n {
-		return nil, ErrShape
-	}
-	if !allFinite(b) || !allFinite(c) || d-d != 0 {
-		return nil, ErrValue
-	}
-	r, reachable := StructuralDegree(&Balance{N: n, F: g}, b, c, d)
+	r, reachable := StructuralDegree(&Balance{N: n, F: a}, b, c, d)
 	if !reachable {
 		return nil, ErrZeroTransfer
 	}
@@ -127,7 +114,7 @@ func (s *system) poles() ([]Root, error) {
 	return list, nil
 }
 
-// exactZeros is the number up to which degree and zeros at 0 are always decided
+// exactZeros is the number of states up to which degree and zeros at 0 are always decided
 // exactly before the zeros are computed.
 const exactZeros = 64
 
@@ -135,7 +122,7 @@ func (s *system) zeros(b, c []float64, d float64, r int) ([]Root, error) {
 	origin := 0
 	var num []residue
 	if s.n <= exactZeros {
-		num = s.modularNumerator(b, c, d)
+		num, _ = s.modularRatio(b, c, d)
 		if len(num) == 0 {
 			return nil, ErrZeroTransfer
 		}
@@ -171,42 +158,33 @@ func (s *system) zeros(b, c []float64, d float64, r int) ([]Root, error) {
 	return roots, nil
 }
 
-func (s *system) modularNumerator(b, c []float64, d float64) []residue {
-	states, x, y := make([]int, s.n), s.exactRates(b), make([]residue, s.n)
-	for i := range states {
-		states[i] = i
-		y[i] = modFloat(c[i])
-	}
-	num, _ := modNumerator(s.n, s.modular(states), x, y, modFloat(d))
-	return num
-}
-
 // nuller is x' = a x + b u, y = c x + d u in doubled precision while states are
-// taken out of it.
+// taken out of it. The matrices stay where they are; left says which states count.
 type nuller struct {
 	n       int
+	left    []int // states not taken out, ascending
 	a, b, c []dd
 	d       dd
-	scale   []int
 	noise   []float64 // of a: size of the numbers it was made from
 	cNoise  []float64 // of c likewise; nil where c is as given
+
+	m, row   []dd // of a step
+	rowNoise []float64
 }
 
 // nulling returns the system whose poles are the zeros: what is left of x' = A x
 // + b u when u keeps y at 0.
 func (s *system) nulling(b, c []float64, d float64, r int) (*system, error) {
 	n, in := s.n, s.rates(b)
-	z := &nuller{n: n, a: make([]dd, n*n), b: make([]dd, n), c: make([]dd, n), d: toDD(d), scale: append([]int(nil), s.scale...), noise: make([]float64, n*n)}
+	z := &nuller{n: n, left: make([]int, n), a: make([]dd, n*n), b: make([]dd, n), c: make([]dd, n), d: toDD(d),
+		noise: make([]float64, n*n)}
 	for i := 0; i < n; i++ {
+		z.left[i] = i
 		up := math.Ldexp(1, s.scale[i])
 		z.b[i], z.c[i] = in[i].scale(up), toDD(c[i]).scale(1/up)
 		for j := 0; j < n; j++ {
-			v := s.diag[i]
-			if i != j {
-				v = s.entry(i, j)
-			}
 			k := math.Ldexp(1, s.scale[i]-s.scale[j])
-			z.a[i*n+j] = over(v, s.c[i]).scale(k)
+			z.a[i*n+j] = quotient(s.element(i, j), s.c[i]).scale(k)
 			z.noise[i*n+j] = s.uncertain(i, j) / s.c[i] * k
 		}
 	}
@@ -219,65 +197,72 @@ func (s *system) nulling(b, c []float64, d float64, r int) (*system, error) {
 }
 
 // step takes one state out: y = 0 for good gives the state of the largest weight
-// in terms of the others, and y' takes the place of y.
+// in terms of the others, and y' takes the place of y. A row that neither the state
+// nor the output touches stays as it is, so that a chain costs n² in all.
 func (z *nuller) step() bool {
-	n, j := z.n, 0
-	for i := range z.c {
-		if math.Abs(z.c[i].hi) > math.Abs(z.c[j].hi) {
-			j = i
-		}
-	}
-	if n == 0 || z.c[j].zero() {
+	if len(z.left) == 0 {
 		return false
 	}
-	m := make([]dd, n) // y/c[j] = x[j] + Σ m[i] x[i]
-	for i := range m {
-		if m[i] = z.c[i].div(z.c[j]); i == j {
-			m[i] = toDD(1)
+	at := 0
+	for k, i := range z.left {
+		if math.Abs(z.c[i].hi) > math.Abs(z.c[z.left[at]].hi) {
+			at = k
 		}
 	}
-	next := &nuller{n: n - 1}
-	next.c = make([]dd, 0, n-1)
-	row := make([]dd, n)
-	next.cNoise = make([]float64, 0, n-1)
-	rowNoise := make([]float64, n)
-	for i := 0; i < n; i++ {
-		var drop dd
-		if drop = z.a[i*n+j]; i != j {
-			next.b = append(next.b, z.b[i])
-			next.scale = append(next.scale, z.scale[i])
+	j := z.left[at]
+	if z.c[j].zero() {
+		return false
+	}
+	z.solveFor(j)
+	z.d = dd{}
+	for _, i := range z.left {
+		if !z.m[i].zero() && !z.b[i].zero() {
+			z.d = z.d.add(z.m[i].mul(z.b[i]))
 		}
-		if !m[i].zero() && !z.b[i].zero() {
-			next.d = next.d.add(m[i].mul(z.b[i]))
-		}
-		for k := 0; k < n; k++ {
-			if k == j {
-				continue
-			}
-			v, e := z.a[i*n+k], z.noise[i*n+k]
-			if !drop.zero() && !m[k].zero() {
-				v = v.sub(drop.mul(m[k]))
-				e += (z.noise[i*n+j] + 2*math.Abs(drop.hi)) * math.Abs(m[k].hi)
-				v = v.orZero(e)
-			}
-			if i != j {
-				next.a = append(next.a, v)
-				next.noise = append(next.noise, e)
-			}
-			if !m[i].zero() {
-				row[k] = row[k].add(m[i].mul(v))
-				rowNoise[k] += math.Abs(m[i].hi) * (e + 2*math.Abs(v.hi))
-			}
+		if !z.a[i*z.n+j].zero() || !z.m[i].zero() {
+			z.replace(i, j)
 		}
 	}
-	for k, v := range row {
-		if k != j {
-			next.c = append(next.c, v.orZero(rowNoise[k]))
-			next.cNoise = append(next.cNoise, rowNoise[k])
-		}
+	z.left = append(z.left[:at], z.left[at+1:]...)
+	if z.cNoise == nil {
+		z.cNoise = make([]float64, z.n)
 	}
-	*z = *next
+	for _, k := range z.left {
+		z.c[k], z.cNoise[k] = z.row[k].orZero(z.rowNoise[k]), z.rowNoise[k]
+	}
 	return true
+}
+
+// solveFor writes y/c[j] = x[j] + Σ m[i] x[i].
+func (z *nuller) solveFor(j int) {
+	if z.m == nil {
+		z.m, z.row, z.rowNoise = make([]dd, z.n), make([]dd, z.n), make([]float64, z.n)
+	}
+	for _, i := range z.left {
+		z.row[i], z.rowNoise[i] = dd{}, 0
+		if z.m[i] = z.c[i].div(z.c[j]); i == j {
+			z.m[i] = toDD(1)
+		}
+	}
+}
+
+// replace puts the others for state j into the equation of state i, and that into y'.
+func (z *nuller) replace(i, j int) {
+	a, noise, m := z.a[i*z.n:(i+1)*z.n], z.noise[i*z.n:(i+1)*z.n], z.m[i]
+	drop, dropNoise := a[j], noise[j]
+	for _, k := range z.left {
+		if k == j {
+			continue
+		}
+		if !drop.zero() && !z.m[k].zero() {
+			noise[k] += (dropNoise + 2*math.Abs(drop.hi)) * math.Abs(z.m[k].hi)
+			a[k] = a[k].sub(drop.mul(z.m[k])).orZero(noise[k])
+		}
+		if !m.zero() {
+			z.row[k] = z.row[k].add(m.mul(a[k]))
+			z.rowNoise[k] += math.Abs(m.hi) * (noise[k] + 2*math.Abs(a[k].hi))
+		}
+	}
 }
 
 // noiseOf is the noise of c[j].
@@ -290,24 +275,25 @@ func (z *nuller) noiseOf(j int) float64 {
 
 // close puts u = −c x/d into x' = a x + b u.
 func (z *nuller) close() (*system, error) {
-	n := z.n
-	s := &system{n: n, c: make([]float64, n), g: make([]float64, n*n), low: make([]float64, n*n), noise: z.noise, diag: make([]dd, n), scale: make([]int, n)}
+	n := len(z.left)
+	s := &system{n: n, c: make([]float64, n), g: make([]float64, n*n), low: make([]float64, n*n),
+		noise: make([]float64, n*n), diag: make([]dd, n), scale: make([]int, n)}
 	if n > 0 && z.d.zero() {
 		return nil, ErrZeroTransfer
 	}
-	for i := 0; i < n; i++ {
-		s.c[i] = 1
-		for j := 0; j < n; j++ {
-			v := z.a[i*n+j]
+	for p, i := range z.left {
+		s.c[p] = 1
+		for q, j := range z.left {
+			v, e := z.a[i*z.n+j], z.noise[i*z.n+j]
 			if !z.b[i].zero() && !z.c[j].zero() {
 				f := z.b[i].div(z.d)
 				v = v.sub(f.mul(z.c[j]))
-				s.noise[i*n+j] += math.Abs(f.hi) * (3*math.Abs(z.c[j].hi) + z.noiseOf(j))
-				v = v.orZero(s.noise[i*n+j])
+				e += math.Abs(f.hi) * (3*math.Abs(z.c[j].hi) + z.noiseOf(j))
+				v = v.orZero(e)
 			}
-			s.g[i*n+j], s.low[i*n+j] = v.hi, v.lo
-			if i == j {
-				s.diag[i] = v
+			s.g[p*n+q], s.low[p*n+q], s.noise[p*n+q] = v.hi, v.lo, e
+			if p == q {
+				s.diag[p] = v
 			}
 		}
 	}

@@ -10,7 +10,7 @@ func (r refNetwork) zeros(p refPair) ([]Root, error) {
 	if r.Form == "balance" {
 		return r.balance().Zeros(p.In, p.Out, p.D)
 	}
-	return StoreZeros(r.N, r.Capacity, r.dense(), p.In, p.Out, p.D)
+	return r.stores().Zeros(p.In, p.Out, p.D, 0)
 }
 
 func TestZeros(t *testing.T) {

@@ -258,6 +258,9 @@ func (r *reader) rowsFit(o owner, n *node, ask *AskTable) bool {
 		return otherwise
 	}
 	q := &r.c.Questions
+	if !ask.HasTo && r.endless {
+		return false // reported where the run is stated
+	}
 	if !ask.HasTo && !q.HasTo {
 		r.at(n.get("every").span, Diagnostic{Code: "missing-key", Thing: o.thing(), Text: "to is missing, and [run] states none", Hint: `add to = "1 h"`})
 		return false

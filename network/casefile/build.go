@@ -172,9 +172,22 @@ func (c *Case) fault(f network.Fault) Diagnostic {
 			break
 		}
 	}
+	if f.Code == network.Empty {
+		w.hint += c.likeNode()
+	}
 	d := c.Diagnose(ref, w.code, f.Text, c.inWords(ref, w.hint))
 	d.Thing = "" // the text names the parts
 	return d
+}
+
+// likeNode shows how a node is written.
+func (c *Case) likeNode() string {
+	for i := range c.voc {
+		if d := c.voc[i].Domain; d != "" {
+			return ", like [" + d + ".node.NAME]"
+		}
+	}
+	return ""
 }
 
 // inWords puts a hint about a capacitance in the words of the domain it is about.

@@ -35,7 +35,11 @@ type Case struct {
 	net     *network.Network
 	setters []Setter
 	faults  []Diagnostic // of building
+	files   []string     // read beside it
 }
+
+// Files returns the names of the data files that the case reads, as it states them.
+func (c *Case) Files() []string { return c.files }
 
 // A place is what a network.Ref stands for.
 type place struct {

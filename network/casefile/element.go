@@ -195,11 +195,11 @@ func step(list []entry, path string) (*entry, string) {
 		}
 		return &list[i], strings.TrimPrefix(rest, ".")
 	}
-	end := strings.IndexAny(path, ".[")
-	name, rest := path, ""
-	if end >= 0 {
-		name, rest = path[:end], strings.TrimPrefix(path[end:], ".")
+	end := 0
+	for end < len(path) && path[end] != '.' && path[end] != '[' {
+		end++
 	}
+	name, rest := path[:end], strings.TrimPrefix(path[end:], ".")
 	for i := range list {
 		if list[i].name == name {
 			return &list[i], rest

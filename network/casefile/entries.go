@@ -134,6 +134,7 @@ func (f fielder) names(n *node, field *Field) ([]entry, bool) {
 			d.Fix = "[" + basic(n.text) + "]"
 		}
 		f.r.at(n.span, d)
+		f.meansAny(field)
 		return nil, false
 	}
 	ok := f.length(n, field)
@@ -153,11 +154,20 @@ func (f fielder) names(n *node, field *Field) ([]entry, bool) {
 		}
 		if different(field) && repeated(n.items[:i], item.text, seen) {
 			f.r.at(item.span, Diagnostic{Code: "same-name", Thing: f.o.thing(), Text: fmt.Sprintf("%s names %s twice", field.Name, quoted(item.text))})
+			f.meansAny(field)
 			ok = false
 		}
 		list = append(list, entry{field: field, n: item, slot: noSlot, wave: noSlot})
 	}
 	return list, ok
+}
+
+// meansAny notes that a part at fault may have meant any name: no other is then called
+// unconnected.
+func (f fielder) meansAny(field *Field) {
+	if field.Refers != "" {
+		f.r.anything = true
+	}
 }
 
 // different reports whether no name may stand twice in a list: in the nodes that

@@ -27,6 +27,8 @@ func (f fielder) fields(n *node, fields []Field, oneOf [][]string) (list []entry
 		k := &n.table.keys[i]
 		field := fieldNamed(fields, k.name)
 		switch {
+		case field != nil && f.pointsNotBuilt(k, field):
+			ok = false
 		case field != nil:
 			x, good := f.entry(k.value, field)
 			ok = ok && good
@@ -54,6 +56,16 @@ func fieldNamed(fields []Field, name string) *Field {
 		}
 	}
 	return nil
+}
+
+// pointsNotBuilt refuses points of a number against something else, where such are
+// agreed: "material.conductivity.points" in NotBuilt.
+func (f fielder) pointsNotBuilt(k *key, field *Field) bool {
+	if field.Type != Number || k.value.kind != kindArray || f.v == nil || !contains(f.v.NotBuilt, f.word+"."+k.name+".points") {
+		return false
+	}
+	f.r.notBuilt(f.o, k, "points of "+k.name)
+	return true
 }
 
 // unknown reports a key that is no field.

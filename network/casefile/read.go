@@ -29,6 +29,7 @@ type reader struct {
 	lost       map[string]bool // names of parts in tables that could not be read
 	later      bool            // names may come from parts, uses and results, which are not built
 	anything   bool            // a faulty part may have meant any name
+	endless    bool            // [run] to is stated and at fault
 	rows       int             // read from data files so far
 	breaks     int             // pieces of waveforms so far
 	files      map[string]*csvFile

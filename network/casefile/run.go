@@ -17,6 +17,7 @@ func (r *reader) run(k *key) {
 	o := owner{label: "run"}
 	list, ok := r.single(k, o, runFields, nil)
 	q := &r.c.Questions
+	defer func() { r.endless = !q.HasTo && k.value.kind == kindTable && k.value.get("to") != nil }()
 	for i := range list {
 		switch x := &list[i]; x.name {
 		case "start":

@@ -261,11 +261,18 @@ func (r *reader) flow(o owner, n *node, name string) (*Element, string, bool) {
 			parts = append(parts, e.FullName())
 		}
 	}
-	if near, ok := quantity.Nearest(name, parts); ok {
+	_, place, atPlace := strings.Cut(name, " at ")
+	near, ok := quantity.Nearest(name, parts)
+	switch {
+	case atPlace && place != "":
+		d = Diagnostic{Code: "not-built", Thing: o.thing(), Text: "the flow at one end, " + quoted("flow of … at …") + ", is not known yet: this version does not build it",
+			Hint: "the flow of a part is read at its first-named end"}
+	case ok && at == n.span:
+		d.Fix = basic("flow of " + near)
+	case ok:
 		d.Fix = near
-		if at == n.span {
-			d.Fix = basic("flow of " + near)
-		}
+	case len(parts) > 0:
+		d.Hint = "parts with a flow" + listed(parts)
 	}
 	r.at(at, d)
 	return nil, "", false

@@ -119,6 +119,7 @@ func (r *reader) open(name string) (*csvFile, error) {
 		return nil, &errData{text: fmt.Sprintf("the data files have more than %d rows together", maxAllRows)}
 	}
 	r.files[name] = data
+	r.c.files = append(r.c.files, name)
 	return data, nil
 }
 

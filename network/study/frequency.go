@@ -191,7 +191,7 @@ func (q *FrequencyQuestion) omegas(h *laplace.Transfer, r *laplace.FrequencyResp
 }
 
 // point copies one answer; what does not exist is left out.
-func point(w laplace.Swing, h *laplace.Transfer) FrequencyPoint {
+func point(w laplace.FrequencyPoint, h *laplace.Transfer) FrequencyPoint {
 	p := FrequencyPoint{Omega: w.Omega, Period: w.Period(), Gain: finite(w.Gain)}
 	if p.Gain == nil || w.Gain == 0 {
 		return p

@@ -54,7 +54,7 @@ func setNumbers(s string) string {
 
 // opensNumber reports whether a number may start behind r.
 func opensNumber(r rune) bool {
-	return !unicode.IsLetter(r) && !unicode.IsDigit(r) && !strings.ContainsRune("_.-:'\"`\\", r)
+	return !unicode.IsLetter(r) && !unicode.IsNumber(r) && !strings.ContainsRune("_.-⁻:'\"`\\", r)
 }
 
 // numberLength is the length of the signed decimal number that s starts with, 0
@@ -87,6 +87,9 @@ func numberLength(s string) int {
 	}
 	if r, _ := utf8.DecodeRuneInString(s[end:]); end < len(s) && (unicode.IsLetter(r) || unicode.IsDigit(r) || r == '_') {
 		return 0 // "5e-7b": a name
+	}
+	if after := s[end:]; len(after) > 1 && after[0] == '.' && '0' <= after[1] && after[1] <= '9' {
+		return 0 // "5e-7.2": no number
 	}
 	return end
 }

@@ -7,17 +7,6 @@ import (
 	"lagbook/network/casefile"
 )
 
-// ends returns the two nodes of a part that lies between them.
-func ends(e *casefile.Element, c *casefile.Case) (from, to network.NodeID, faults []casefile.Diagnostic) {
-	names := e.Names("between") // two, and different: casefile sees to it
-	from, okFrom := e.Node(names[0])
-	to, okTo := e.Node(names[1])
-	if !okFrom || !okTo {
-		return 0, 0, []casefile.Diagnostic{e.Fault("between", "a name that is not a node", "the names of two nodes", "")}
-	}
-	return from, to, nil
-}
-
 // innerNodes makes n nodes inside a part, NAME.1 to NAME.n. Like any node they
 // can be shown and limited.
 func innerNodes(e *casefile.Element, c *casefile.Case, b *network.Builder, n int) ([]network.NodeID, []casefile.Diagnostic) {

@@ -6,14 +6,14 @@ import (
 	"slices"
 )
 
-// refinedSwing solves (M s − A) x = f by elimination with row exchanges and corrects
+// refinedResolvent solves (M s − A) x = f by elimination with row exchanges and corrects
 // the result with residuals in twice the precision until it no longer moves: every
 // level then has its own relative accuracy, small ones too, as long as the equations
 // are not singular to working precision.
 //
 // Source: R. D. Skeel, Math. Comp. 35 (1980) 817-832; Higham, Accuracy and
 // Stability of Numerical Algorithms, 2nd ed., ch. 12.
-type refinedSwing struct {
+type refinedResolvent struct {
 	n    int
 	c    []float64 // capacities; nil: 1
 	mass []float64 // M, N×N; nil: diag(c)
@@ -27,11 +27,9 @@ type refinedSwing struct {
 	r     []complex128
 }
 
-func refineBalance(b *Balance) *refinedSwing { return refineStores(&Stores{Balance: *b}) }
-
-func refineStores(s *Stores) *refinedSwing {
+func refineStores(s *Stores) *refinedResolvent {
 	n := s.N
-	w := &refinedSwing{n: n, c: s.C, mass: s.Mass, a: make([]dd, n*n), size: make([]float64, n*n)}
+	w := &refinedResolvent{n: n, c: s.C, mass: s.Mass, a: make([]dd, n*n), size: make([]float64, n*n)}
 	for i := range n {
 		for j := range n {
 			w.a[i*n+j], w.size[i*n+j] = s.entry(i, j)
@@ -40,15 +38,15 @@ func refineStores(s *Stores) *refinedSwing {
 	return w.ready()
 }
 
-func refinePlain(n int, a []float64) *refinedSwing {
-	w := &refinedSwing{n: n, a: make([]dd, n*n), size: make([]float64, n*n)}
+func refineDense(n int, a []float64) *refinedResolvent {
+	w := &refinedResolvent{n: n, a: make([]dd, n*n), size: make([]float64, n*n)}
 	for k, v := range a {
 		w.a[k], w.size[k] = toDD(v), math.Abs(v)
 	}
 	return w.ready()
 }
 
-func (w *refinedSwing) ready() *refinedSwing {
+func (w *refinedResolvent) ready() *refinedResolvent {
 	w.lu = make([]complex128, w.n*w.n)
 	w.scale = make([]float64, w.n)
 	w.row = make([]int, w.n)
@@ -57,7 +55,7 @@ func (w *refinedSwing) ready() *refinedSwing {
 }
 
 // massOf returns M[i,j].
-func (w *refinedSwing) massOf(i, j int) float64 {
+func (w *refinedResolvent) massOf(i, j int) float64 {
 	switch {
 	case w.mass != nil:
 		return w.mass[i*w.n+j]
@@ -70,7 +68,7 @@ func (w *refinedSwing) massOf(i, j int) float64 {
 }
 
 // factor fills lu, rows scaled by powers of two so that their largest entries agree.
-func (w *refinedSwing) factor(s complex128) bool {
+func (w *refinedResolvent) factor(s complex128) bool {
 	w.s = s
 	n := w.n
 	for i := range n {
@@ -94,7 +92,7 @@ func (w *refinedSwing) factor(s complex128) bool {
 
 func magnitude(z complex128) float64 { return max(math.Abs(real(z)), math.Abs(imag(z))) }
 
-func (w *refinedSwing) eliminate() bool {
+func (w *refinedResolvent) eliminate() bool {
 	n := w.n
 	for k := range n {
 		p := k
@@ -127,7 +125,7 @@ func (w *refinedSwing) eliminate() bool {
 }
 
 // forward replaces w.r, a right side, by the solution.
-func (w *refinedSwing) forward() {
+func (w *refinedResolvent) forward() {
 	n := w.n
 	z := make([]complex128, n)
 	for k, i := range w.row {
@@ -146,7 +144,7 @@ func (w *refinedSwing) forward() {
 }
 
 // transposed does so with the transposed matrix.
-func (w *refinedSwing) transposed() {
+func (w *refinedResolvent) transposed() {
 	n := w.n
 	z := slices.Clone(w.r)
 	for k := range n {
@@ -169,7 +167,7 @@ func (w *refinedSwing) transposed() {
 // takes one more.
 const corrections = 24
 
-func (w *refinedSwing) levels(f []float64, x []complex128) {
+func (w *refinedResolvent) levels(f []float64, x []complex128) {
 	clear(x)
 	last := math.Inf(1)
 	for range corrections {
@@ -189,7 +187,7 @@ func (w *refinedSwing) levels(f []float64, x []complex128) {
 	}
 }
 
-func (w *refinedSwing) weights(c []float64, y []complex128) {
+func (w *refinedResolvent) weights(c []float64, y []complex128) {
 	for i, v := range c {
 		w.r[i] = complex(v, 0)
 	}
@@ -198,7 +196,7 @@ func (w *refinedSwing) weights(c []float64, y []complex128) {
 }
 
 // residual sets w.r to f − (M s − A)x.
-func (w *refinedSwing) residual(f []float64, x []complex128) {
+func (w *refinedResolvent) residual(f []float64, x []complex128) {
 	n := w.n
 	for i := range n {
 		re, im := toDD(f[i]), dd{}
@@ -223,7 +221,7 @@ func exactly(a, b float64) dd {
 	return dd{p, e}
 }
 
-func (w *refinedSwing) noise(s complex128, i int, x []complex128) float64 {
+func (w *refinedResolvent) noise(s complex128, i int, x []complex128) float64 {
 	var sum float64
 	for j, v := range w.size[i*w.n : (i+1)*w.n] {
 		sum += (v + math.Abs(w.massOf(i, j))*cmplx.Abs(s)) * cmplx.Abs(x[j])

@@ -7,13 +7,13 @@ import (
 )
 
 // Two flows whose inertances move together, each with its resistance: by Cramer's rule.
-func TestStoresSwingWithMass(t *testing.T) {
+func TestResolventWithMass(t *testing.T) {
 	s := &Stores{
 		Balance: Balance{N: 2, C: []float64{2, 3}, F: make([]float64, 4), Leak: []float64{0.5, 0.7}},
 		K:       []float64{0, 0.4, -0.4, 0},
 		Mass:    []float64{2, 1, 1, 3},
 	}
-	w, err := StoresSwing(s)
+	w, err := s.Resolvent()
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -39,10 +39,10 @@ func TestStoresSwingWithMass(t *testing.T) {
 
 // A leak of 1e-18 beside exchanges of 1: the star keeps it, and so does refinement
 // where a negative exchange forbids the star.
-func TestSwingKeepsSmallLeaks(t *testing.T) {
+func TestResolventKeepsSmallLeaks(t *testing.T) {
 	for _, feedback := range []float64{0, -1e-9} {
 		b := &Balance{N: 3, C: []float64{1, 1, 1}, F: []float64{0, 1, feedback, 1, 0, 1, 0, 1, 0}, Leak: []float64{0, 0, 1e-12}}
-		w, err := NewSwing(b)
+		w, err := (&Stores{Balance: *b}).Resolvent()
 		if err != nil {
 			t.Fatal(err)
 		}
@@ -55,21 +55,21 @@ func TestSwingKeepsSmallLeaks(t *testing.T) {
 }
 
 // At a pole on the axis there is no answer, and shapes that do not fit are refused.
-func TestSwingWithoutAnswer(t *testing.T) {
-	w, err := PlainSwing(2, []float64{0, 1, -4, 0})
+func TestResolventWithoutAnswer(t *testing.T) {
+	w, err := DenseResolvent(2, []float64{0, 1, -4, 0})
 	if err != nil {
 		t.Fatal(err)
 	}
 	if h, slack := w.Transfer(complex(0, 2), []float64{0, 1}, []float64{1, 0}, 0); !cmplx.IsInf(h) || !math.IsInf(slack, 1) {
 		t.Errorf("%v, %v", h, slack)
 	}
-	if _, err := PlainSwing(2, []float64{1}); err != ErrShape {
+	if _, err := DenseResolvent(2, []float64{1}); err != ErrShape {
 		t.Errorf("%v", err)
 	}
-	if _, err := PlainSwing(1, []float64{math.NaN()}); err != ErrValue {
+	if _, err := DenseResolvent(1, []float64{math.NaN()}); err != ErrValue {
 		t.Errorf("%v", err)
 	}
-	if _, err := NewSwing(&Balance{N: 1, C: []float64{0}, F: []float64{0}, Leak: []float64{1}}); err != ErrValue {
+	if _, err := (&Stores{Balance: Balance{N: 1, C: []float64{0}, F: []float64{0}, Leak: []float64{1}}}).Resolvent(); err != ErrValue {
 		t.Errorf("%v", err)
 	}
 }

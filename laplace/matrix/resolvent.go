@@ -5,25 +5,23 @@ import (
 	"math/cmplx"
 )
 
-// A Swing answers a system under flows that swing as exp(st), Re s ≥ 0:
+// A Resolvent answers a system under flows that go as exp(st), Re s ≥ 0, for any
+// number of s, by (sE − A)⁻¹ and not by poles and residues: far above the corners of a
+// transfer function those cancel to nothing, and these equations do not,
 //
 //	s C_i x_i = Σ_j F_ij (x_j − x_i) − Leak_i x_i + f_i       of a Balance,
 //	s x_i = Σ_j a_ij x_j + f_i                                of a plain matrix,
 //
-// and those of Stores,
-// for any number of s, without poles and residues: far above the corners of a
-// transfer function those cancel to nothing, and these equations do not.
-//
-// It is a workspace: two goroutines must not share one.
-type Swing struct {
+// and those of Stores. It is a workspace: two goroutines must not share one.
+type Resolvent struct {
 	n     int
-	solve swingSolver
+	solve resolventSolver
 	x, y  []complex128
 }
 
-// A swingSolver is one of the two ways to solve: starSwing, which never subtracts,
-// and refinedSwing for everything else.
-type swingSolver interface {
+// A resolventSolver is one of the two ways to solve: starResolvent, which never
+// subtracts, and refinedResolvent for everything else.
+type resolventSolver interface {
 	// factor prepares for s; false where the equations have no solution.
 	factor(s complex128) bool
 	// levels and weights solve with the matrix and with its transpose.
@@ -33,52 +31,44 @@ type swingSolver interface {
 	noise(s complex128, i int, x []complex128) float64
 }
 
-// NewSwing prepares a balance, whose slices are kept. Where no exchange and no leak
-// is negative, as in every network of resistances, capacitances and streams, star
-// after star is replaced by its mesh: products and sums, the diagonal never formed.
-// Any other goes to elimination with row exchanges, refined with residuals in
-// twice the precision. It returns ErrShape or ErrValue.
-func NewSwing(b *Balance) (*Swing, error) {
-	if err := b.check(); err != nil {
+// Resolvent prepares the stores, whose slices are kept. Where there are levels alone and
+// no exchange and no leak is negative, as in every network of resistances, capacitances
+// and streams, star after star is replaced by its mesh: products and sums, the diagonal
+// never formed. Any other goes to elimination with row exchanges, refined with residuals
+// in twice the precision. It returns ErrShape or ErrValue.
+func (s *Stores) Resolvent() (*Resolvent, error) {
+	if err := s.check(); err != nil {
 		return nil, err
 	}
-	w := newSwing(b.N)
-	for i := range b.N {
-		if !b.clean(i) {
-			w.solve = refineBalance(b)
-			return w, nil
-		}
+	if s.uncoupled() && s.Balance.allClean() {
+		return newResolvent(s.N, newStarResolvent(&s.Balance)), nil
 	}
-	w.solve = newStarSwing(b)
-	return w, nil
+	return newResolvent(s.N, refineStores(s)), nil
 }
 
-// PlainSwing prepares x' = a x + f, a N×N row-major.
-func PlainSwing(n int, a []float64) (*Swing, error) {
+// DenseResolvent prepares x' = a x + f, a n×n row-major. It returns ErrShape or ErrValue.
+func DenseResolvent(n int, a []float64) (*Resolvent, error) {
 	if n < 0 || len(a) != n*n {
 		return nil, ErrShape
 	}
 	if !allFinite(a) {
 		return nil, ErrValue
 	}
-	w := newSwing(n)
-	w.solve = refinePlain(n, a)
-	return w, nil
+	return newResolvent(n, refineDense(n, a)), nil
 }
 
-// StoresSwing prepares stores of every kind, levels and flows. It returns ErrShape or
-// ErrValue.
-func StoresSwing(s *Stores) (*Swing, error) {
-	if err := s.check(); err != nil {
-		return nil, err
+func newResolvent(n int, by resolventSolver) *Resolvent {
+	return &Resolvent{n: n, solve: by, x: make([]complex128, n), y: make([]complex128, n)}
+}
+
+// allClean reports whether nothing in the balance is negative.
+func (b *Balance) allClean() bool {
+	for i := range b.N {
+		if !b.clean(i) {
+			return false
+		}
 	}
-	w := newSwing(s.N)
-	w.solve = refineStores(s)
-	return w, nil
-}
-
-func newSwing(n int) *Swing {
-	return &Swing{n: n, x: make([]complex128, n), y: make([]complex128, n)}
+	return true
 }
 
 // Transfer returns out·x + direct for the flows in: the transfer function at s. slack
@@ -89,7 +79,7 @@ func newSwing(n int) *Swing {
 // Accuracy, measured over s = iω from 1e-12 to 1e12 of the corners: within 4 slack,
 // which for networks of resistances and capacitances is some 1e-15 of the result
 // however small that is. Cost: the fill of the network once for each s.
-func (w *Swing) Transfer(s complex128, in, out []float64, direct float64) (h complex128, slack float64) {
+func (w *Resolvent) Transfer(s complex128, in, out []float64, direct float64) (h complex128, slack float64) {
 	if len(in) != w.n || len(out) != w.n {
 		panic("matrix: the weights are not as many as the stores")
 	}

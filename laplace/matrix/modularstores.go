@@ -80,8 +80,8 @@ func (s *Stores) modGroup(group []int, cols int, a []residue) {
 	}
 }
 
-// exactRates is rates modulo the prime.
-func (s *system) exactRates(f []float64) []residue {
+// modularRates is rates modulo the prime.
+func (s *system) modularRates(f []float64) []residue {
 	x := make([]residue, s.n)
 	if s.stores != nil {
 		for i, v := range f {
@@ -98,15 +98,15 @@ func (s *system) exactRates(f []float64) []residue {
 	return x
 }
 
-// submodular picks the given states out of the whole matrix, made once.
-func (s *system) submodular(states []int) []residue {
-	if s.exactly == nil {
-		s.exactly = s.stores.residues()
+// modularPart picks the given states out of the whole matrix, made once.
+func (s *system) modularPart(states []int) []residue {
+	if s.residues == nil {
+		s.residues = s.stores.residues()
 	}
 	var a []residue
 	for _, i := range states {
 		for _, j := range states {
-			a = append(a, s.exactly[i*s.n+j])
+			a = append(a, s.residues[i*s.n+j])
 		}
 	}
 	return a

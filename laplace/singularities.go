@@ -6,17 +6,17 @@ import (
 	"math/cmplx"
 )
 
-// hidden is a pole the methods do not resolve: seen from a ray close above.
-type hidden struct {
+// unresolvedPole is a pole the methods do not resolve: seen from a ray close above.
+type unresolvedPole struct {
 	p      complex128
 	weight float64 // |residue|
 	slack  float64 // of Re p
 }
 
-// suspect looks at F where the methods do not: right of the abscissa, where nothing
+// inspect looks at F where the methods do not: right of the abscissa, where nothing
 // may be, and up a ray for oscillations faster than any they can follow. It also
 // sets the range by |sF(s)|, the weighted mean of the response up to about 1/s.
-func (v *inversion) suspect(lo, hi float64) error {
+func (v *inversion) inspect(lo, hi float64) error {
 	n := int(math.Ceil(math.Log2(hi/lo))) + 1
 	for k := range n + 1 {
 		t := lo * math.Pow(hi/lo, float64(k)/float64(n))
@@ -34,7 +34,7 @@ func (v *inversion) suspect(lo, hi float64) error {
 	if err := v.right(lo, hi); err != nil {
 		return err
 	}
-	return v.listen(lo, hi)
+	return v.scanRay(lo, hi)
 }
 
 // mirrored checks that F is conjugate on conjugate arguments.
@@ -85,18 +85,18 @@ func (v *inversion) right(lo, hi float64) error {
 	return nil
 }
 
-// The ray of listen: five degrees right of the imaginary axis, in steps of 4 %.
+// The ray of scanRay: five degrees right of the imaginary axis, in steps of 4 %.
 const (
 	rayAngle = 85 * math.Pi / 180
 	rayStep  = 0.04 // h, in ln s
 	rayOrder = 8    // of the differences
 )
 
-// listen goes up the ray and takes eighth differences over x = ln s. They are 5e-9 of F
+// scanRay goes up the ray and takes eighth differences over x = ln s. They are 5e-9 of F
 // where F has singularities on the negative real axis only, and tell place and weight
 // of a pole near the imaginary axis, or right of it, even when it carries little:
 // A/(x−x_p) has the difference 8!·h⁸·A/Π(x+jh−x_p), of which two give x_p and A.
-func (v *inversion) listen(lo, hi float64) error {
+func (v *inversion) scanRay(lo, hi float64) error {
 	sin, cos := math.Sincos(rayAngle)
 	var f [rayOrder + 1]complex128
 	var before complex128 // the difference one step down
@@ -142,7 +142,7 @@ func (v *inversion) noteMaximum(f [rayOrder + 1]complex128, d complex128, r floa
 	const m = rayOrder / 2
 	y := cmplx.Abs(f[m])
 	if cmplx.Abs(d) > 1e-3*y && y > cmplx.Abs(f[m-1]) && y > cmplx.Abs(f[m+1]) {
-		v.hidden = append(v.hidden, hidden{complex(v.o.Abscissa, r), y * r * math.Cos(rayAngle), 0})
+		v.hidden = append(v.hidden, unresolvedPole{complex(v.o.Abscissa, r), y * r * math.Cos(rayAngle), 0})
 	}
 }
 
@@ -162,29 +162,29 @@ func (v *inversion) note(guess [3]complex128, far, d complex128, hi float64) err
 		return &NotInverted{p + complex(v.o.Abscissa, 0), fmt.Sprintf("F has a singularity right of the abscissa %g", v.o.Abscissa)}
 	}
 	slack := 0.005 + 5*max(cmplx.Abs(guess[1]-guess[0]), cmplx.Abs(guess[2]-guess[1])) // two poles pass for one
-	v.hidden = append(v.hidden, hidden{p + complex(v.o.Abscissa, 0), w, slack * cmplx.Abs(p)})
+	v.hidden = append(v.hidden, unresolvedPole{p + complex(v.o.Abscissa, 0), w, slack * cmplx.Abs(p)})
 	return nil
 }
 
 // growth is the most e^{pt} can be in [lo, hi], as far as p is known and not right of
 // the abscissa.
-func (v *inversion) growth(h hidden, lo, hi float64) float64 {
+func (v *inversion) growth(h unresolvedPole, lo, hi float64) float64 {
 	re := min(real(h.p)+h.slack, max(v.o.Abscissa, real(h.p)-h.slack))
 	return math.Exp(max(re*lo, re*hi))
 }
 
-// heard returns how much poles beyond what the methods resolve, reach radians, may
+// unresolved returns how much poles beyond what the methods resolve, reach radians, may
 // add at times of [lo, hi], and a warning where that is too much. A pole is noted
 // from several places of the ray, so that the largest of each counts.
-func (v *inversion) heard(lo, hi, reach float64) (loud float64, note string) {
-	top, last := 0.0, hidden{}
+func (v *inversion) unresolved(lo, hi, reach float64) (missed float64, note string) {
+	top, last := 0.0, unresolvedPole{}
 	for _, h := range v.hidden {
 		w := 2 * h.weight * v.growth(h, lo, hi)
 		if !(cmplx.Abs(h.p)*hi > reach) {
 			continue
 		}
 		if cmplx.Abs(h.p-last.p) > rayStep/3*cmplx.Abs(h.p) {
-			loud += w
+			missed += w
 			last = h
 		}
 		if w > top && w > 0.1*v.o.Tolerance*v.rangeWith(0) {
@@ -192,5 +192,5 @@ func (v *inversion) heard(lo, hi, reach float64) (loud float64, note string) {
 			note = fmt.Sprintf("F has an oscillation of %.3g rad/s, too fast to follow at this time", math.Abs(imag(h.p)))
 		}
 	}
-	return 2 * loud, note
+	return 2 * missed, note
 }

@@ -5,9 +5,9 @@ import (
 	"slices"
 )
 
-// heavy is a group of stores tied by a mass matrix M, with its inverse in doubled
+// massGroup is a group of stores tied by a mass matrix M, with its inverse in doubled
 // precision.
-type heavy struct {
+type massGroup struct {
 	states []int
 	mass   []float64 // m×m
 	inv    []dd      // m×m
@@ -18,12 +18,12 @@ func ascending(list []int) []int {
 	return list
 }
 
-// newHeavy inverts the mass matrix of a group by elimination without exchanges,
+// newMassGroup inverts the mass matrix of a group by elimination without exchanges,
 // which a positive definite matrix does not need. It returns ErrValue where a pivot
 // says that the matrix is none.
-func newHeavy(s *Stores, states []int) (*heavy, error) {
+func newMassGroup(s *Stores, states []int) (*massGroup, error) {
 	m := len(states)
-	h := &heavy{states: states, mass: make([]float64, m*m), inv: make([]dd, m*m)}
+	h := &massGroup{states: states, mass: make([]float64, m*m), inv: make([]dd, m*m)}
 	a := make([]dd, m*m)
 	for p, i := range states {
 		h.inv[p*m+p] = toDD(1)
@@ -58,19 +58,19 @@ func newHeavy(s *Stores, states []int) (*heavy, error) {
 
 // solve puts M⁻¹ times the rows of the group in the place of those rows, with the
 // capacities 1.
-func (h *heavy) solve(y *system) {
+func (h *massGroup) solve(y *system) {
 	m, n := len(h.states), y.n
 	rows, sizes := make([]dd, m*n), make([]float64, m*n)
 	for p := range h.states {
 		for q, from := range h.states {
 			f := h.inv[p*m+q]
 			for j := range n {
-				rows[p*n+j] = rows[p*n+j].add(f.mul(y.whole(from, j)))
+				rows[p*n+j] = rows[p*n+j].add(f.mul(y.element(from, j)))
 				sizes[p*n+j] += math.Abs(f.hi) * y.noise[from*n+j]
 			}
 		}
 	}
-	h.blame(n, rows, sizes)
+	h.addMassNoise(n, rows, sizes)
 	for p, i := range h.states {
 		y.c[i] = 1
 		for j := range n {
@@ -85,8 +85,8 @@ func (h *heavy) solve(y *system) {
 	}
 }
 
-// blame adds to sizes what rounding of the masses does: M⁻¹ |M| |M⁻¹G|.
-func (h *heavy) blame(n int, rows []dd, sizes []float64) {
+// addMassNoise adds to sizes what rounding of the masses does: M⁻¹ |M| |M⁻¹G|.
+func (h *massGroup) addMassNoise(n int, rows []dd, sizes []float64) {
 	m := len(h.states)
 	for j := range n {
 		moved := make([]float64, m)
@@ -103,23 +103,15 @@ func (h *heavy) blame(n int, rows []dd, sizes []float64) {
 	}
 }
 
-// whole is entry i, j of g with the diagonal.
-func (s *system) whole(i, j int) dd {
-	if i == j {
-		return s.diag[i]
-	}
-	return s.entry(i, j)
-}
-
 // rates returns what flows f bring to each x' at once: f/c, or M⁻¹ f.
 func (s *system) rates(f []float64) []dd {
 	y := make([]dd, s.n)
 	for i, v := range f {
 		if v != 0 {
-			y[i] = over(toDD(v), s.c[i])
+			y[i] = quotient(toDD(v), s.c[i])
 		}
 	}
-	for _, h := range s.heavy {
+	for _, h := range s.massGroups {
 		m := len(h.states)
 		for p, i := range h.states {
 			y[i] = dd{}
@@ -136,11 +128,11 @@ func (s *system) rates(f []float64) []dd {
 // forces returns f with M⁻¹ applied to the groups that have a mass matrix, whose
 // capacities are 1.
 func (s *system) forces(f []float64) []float64 {
-	if len(s.heavy) == 0 {
+	if len(s.massGroups) == 0 {
 		return f
 	}
 	y, r := append([]float64(nil), f...), s.rates(f)
-	for _, h := range s.heavy {
+	for _, h := range s.massGroups {
 		for _, i := range h.states {
 			y[i] = r[i].float()
 		}

@@ -2,7 +2,7 @@ package matrix
 
 import "math/cmplx"
 
-// starSwing eliminates the stores of a balance in which nothing is negative, store
+// starResolvent eliminates the stores of a balance in which nothing is negative, store
 // by store, with complex leaks: sC + Leak lies in the right half plane, the rows
 // are diagonally dominant with |sum| ≥ Σ|exchange|, and elimination keeps them so.
 // Hence the sum that is divided by is never much smaller than its terms, and the
@@ -11,7 +11,7 @@ import "math/cmplx"
 // The method is that of Eliminate (Grassmann, Taksar, Heyman 1985) carried to
 // complex leaks; that Schur complements stay dominant: Horn, Johnson, Topics in
 // Matrix Analysis, sec. 2.5 (from memory).
-type starSwing struct {
+type starResolvent struct {
 	b     *Balance
 	order []int   // place → store, fewest neighbours first
 	later [][]int // of each place, the later places it exchanges with in its turn
@@ -21,9 +21,9 @@ type starSwing struct {
 	z     []complex128
 }
 
-func newStarSwing(b *Balance) *starSwing {
+func newStarResolvent(b *Balance) *starResolvent {
 	n := b.N
-	w := &starSwing{b: b, g: make([]complex128, n*n), leak: make([]complex128, n), sum: make([]complex128, n), z: make([]complex128, n)}
+	w := &starResolvent{b: b, g: make([]complex128, n*n), leak: make([]complex128, n), sum: make([]complex128, n), z: make([]complex128, n)}
 	w.order, w.later = fewestFirst(n, func(i, j int) bool { return b.F[i*n+j] != 0 || b.F[j*n+i] != 0 })
 	return w
 }
@@ -76,7 +76,7 @@ func fewestFirst(n int, touch func(i, j int) bool) (order []int, later [][]int) 
 	return order, later
 }
 
-func (w *starSwing) load(s complex128) {
+func (w *starResolvent) load(s complex128) {
 	n := w.b.N
 	for k, i := range w.order {
 		w.leak[k] = complex(w.b.Leak[i], 0) + realTimes(w.b.C[i], s)
@@ -87,7 +87,7 @@ func (w *starSwing) load(s complex128) {
 	}
 }
 
-func (w *starSwing) factor(s complex128) bool {
+func (w *starResolvent) factor(s complex128) bool {
 	w.load(s)
 	n := w.b.N
 	for k := range n {
@@ -116,7 +116,7 @@ func (w *starSwing) factor(s complex128) bool {
 	return true
 }
 
-func (w *starSwing) levels(f []float64, x []complex128) {
+func (w *starResolvent) levels(f []float64, x []complex128) {
 	n := w.b.N
 	for k, i := range w.order {
 		w.z[k] = complex(f[i], 0)
@@ -137,7 +137,7 @@ func (w *starSwing) levels(f []float64, x []complex128) {
 	w.hand(x)
 }
 
-func (w *starSwing) weights(c []float64, y []complex128) {
+func (w *starResolvent) weights(c []float64, y []complex128) {
 	n := w.b.N
 	for k, i := range w.order {
 		w.z[k] = complex(c[i], 0)
@@ -159,7 +159,7 @@ func (w *starSwing) weights(c []float64, y []complex128) {
 }
 
 // hand returns the places to their stores.
-func (w *starSwing) hand(x []complex128) {
+func (w *starResolvent) hand(x []complex128) {
 	for k, i := range w.order {
 		x[i] = w.z[k]
 	}
@@ -167,7 +167,7 @@ func (w *starSwing) hand(x []complex128) {
 
 // noise counts each exchange with the difference it acts on: a common level, however
 // large, moves nothing.
-func (w *starSwing) noise(s complex128, i int, x []complex128) float64 {
+func (w *starResolvent) noise(s complex128, i int, x []complex128) float64 {
 	b := w.b
 	sum := (b.Leak[i] + b.C[i]*cmplx.Abs(s)) * cmplx.Abs(x[i])
 	for j, f := range b.F[i*b.N : (i+1)*b.N] {

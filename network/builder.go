@@ -54,6 +54,8 @@ type (
 		inertances  []branch
 		inputs      []input
 		switches    []noted
+		elements    []element
+		dropping    []InertanceID
 	}
 )
 
@@ -174,6 +176,8 @@ func (g *graph) clone() graph {
 		inertances:  append([]branch(nil), g.inertances...),
 		inputs:      append([]input(nil), g.inputs...),
 		switches:    append([]noted(nil), g.switches...),
+		elements:    append([]element(nil), g.elements...),
+		dropping:    append([]InertanceID(nil), g.dropping...),
 	}
 	for i := range c.nodes {
 		c.nodes[i].capacities = append([]CapacityID(nil), c.nodes[i].capacities...)

@@ -14,6 +14,7 @@ const (
 	InertanceFlow           // a state of its own
 	SupplyFlow              // what the driver of a held node delivers into it
 	SourceFlow              // what a source delivers: its own waveform
+	PortFlow                // what an element brings into one of its ports
 )
 
 // A FlowTerm is a flow times Sign: G·(x_from − x_to) of a resistance, the flow of
@@ -28,15 +29,27 @@ type FlowTerm struct {
 	Inertance  InertanceID
 	Node       NodeID  // held
 	Input      InputID // a source
+	Element    ElementID
+	Port       int // place in Shape.Ports
 	Sign       float64
 }
 
-// An Output is a flow where Flow is not nil, else a weighted sum of levels. Where the coefficients sum to zero exactly it is a difference: its
+// A ReadingTerm is what can be read off an element.
+type ReadingTerm struct {
+	Element ElementID
+	Index   int // place in Shape.Readings
+	Sign    float64
+}
+
+// An Output is a flow where Flow is not nil, a reading where Reading is not nil, else a
+// weighted sum of levels as they are shown, each less its node's datum. Where the coefficients sum to zero exactly it is a difference: its
 // weights are then formed from differences of levels along the branches.
 type Output struct {
 	Name  string
 	Terms []Term
 	Flow  *FlowTerm
+
+	Reading *ReadingTerm
 }
 
 // Level returns the output that shows the level of a node.

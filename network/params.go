@@ -11,24 +11,28 @@ import (
 // Params are the numbers of a Network, parallel to its graph. A setter of a
 // domain writes a few cells; nothing here changes the graph.
 type Params struct {
-	C            []float64          // by CapacityID; several on one node add up; > 0
-	G            []float64          // by ResistanceID, a conductance; through flow = G·(x_from − x_to); > 0
-	L            []float64          // by InertanceID; L·i' = x_from − x_to − LR·i; > 0
-	LR           []float64          // by InertanceID, a resistance in series with L; ≥ 0
-	Shut         []bool             // by InertanceID: nothing flows, whatever the levels; its flow stops at once where it is shut, and begins from 0
-	W            []float64          // by OneWayID; adds W·(x_from − x_to) to the balance of `to` only; ≥ 0
-	K            []float64          // by FeedbackID; adds K·(x_on − About) to the balance of `into`
-	About        []float64          // by FeedbackID; a level
-	Wave         []laplace.Waveform // by InputID; the level of a held node, or the flow of a source
-	Start        []float64          // by NodeID; the level at t = 0 where HasStart
-	HasStart     []bool             // by NodeID
-	AllStart     float64            // the level at t = 0 of every node without a start of its own, where HasAllStart
-	StartFlow    []float64          // by InertanceID; the flow at t = 0 where HasStartFlow
-	HasStartFlow []bool             // by InertanceID; without it the flow is the steady one, and 0 where HasAllStart
-	HasAllStart  bool               // false: those nodes start at the steady state of the values just before t = 0
-	StartCycle   bool               // the network starts in its periodic state; no level at t = 0 is stated then
-	Switch       []laplace.Waveform // by SwitchID; piecewise constant
-	Now          []float64          // by SwitchID; the value for which the numbers above are set, just before t = 0 unless Turn says otherwise
+	C            []float64            // by CapacityID; several on one node add up; > 0
+	G            []float64            // by ResistanceID, a conductance; through flow = G·(x_from − x_to); > 0
+	L            []float64            // by InertanceID; L·i' = x_from − x_to − LR·i; > 0
+	LR           []float64            // by InertanceID, a resistance in series with L; ≥ 0
+	Shut         []bool               // by InertanceID: nothing flows, whatever the levels; its flow stops at once where it is shut, and begins from 0
+	W            []float64            // by OneWayID; adds W·(x_from − x_to) to the balance of `to` only; ≥ 0
+	K            []float64            // by FeedbackID; adds K·(x_on − About) to the balance of `into`
+	About        []float64            // by FeedbackID; a level
+	Law          []Law                // by ElementID; must be set
+	Drive        [][]laplace.Waveform // by ElementID, by place in Shape.Drives
+	Drop         []Drop               // by InertanceID; nil: none
+	Datum        []float64            // by NodeID: what the level shown is less than the network's; 0 but where a height makes the difference
+	Wave         []laplace.Waveform   // by InputID; the level of a held node, or the flow of a source
+	Start        []float64            // by NodeID; the level at t = 0 where HasStart
+	HasStart     []bool               // by NodeID
+	AllStart     float64              // the level at t = 0 of every node without a start of its own, where HasAllStart
+	StartFlow    []float64            // by InertanceID; the flow at t = 0 where HasStartFlow
+	HasStartFlow []bool               // by InertanceID; without it the flow is the steady one, and 0 where HasAllStart
+	HasAllStart  bool                 // false: those nodes start at the steady state of the values just before t = 0
+	StartCycle   bool                 // the network starts in its periodic state; no level at t = 0 is stated then
+	Switch       []laplace.Waveform   // by SwitchID; piecewise constant
+	Now          []float64            // by SwitchID; the value for which the numbers above are set, just before t = 0 unless Turn says otherwise
 	// Turn returns the numbers for other values of the switches, in parameters of their
 	// own: of them C, G, LR, Shut, W, K and About count, everything else is that of p. nil where no
 	// switch moves.
@@ -63,6 +67,10 @@ func (n *Network) NewParams() *Params {
 		Wave:         make([]laplace.Waveform, len(g.inputs)),
 		Start:        make([]float64, len(g.nodes)),
 		HasStart:     make([]bool, len(g.nodes)),
+		Law:          make([]Law, len(g.elements)),
+		Drive:        newDrives(g),
+		Drop:         make([]Drop, len(g.inertances)),
+		Datum:        make([]float64, len(g.nodes)),
 		StartFlow:    make([]float64, len(g.inertances)),
 		HasStartFlow: make([]bool, len(g.inertances)),
 		Switch:       make([]laplace.Waveform, len(g.switches)),

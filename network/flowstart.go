@@ -164,7 +164,7 @@ func (c *flowStart) putFlows() error {
 	if len(c.f.plan.rep) == 0 || c.steady != nil && !stated && !c.anyOpen() {
 		return nil
 	}
-	if c.steady == nil && !stated {
+	if !stated {
 		c.pressed()
 		return nil
 	}
@@ -180,9 +180,13 @@ func (c *flowStart) anyOpen() bool {
 	return false
 }
 
-// pressed sets the flows that sources press into joints at rest: i = (M − N kick) q.
+// pressed sets the flows that are not steady to those that sources press into joints
+// at rest: i = (M − N kick) q.
 func (c *flowStart) pressed() {
-	for b := range c.s.Flows {
+	for b, v := range c.n.g.inertances {
+		if !c.open(v) {
+			continue
+		}
 		sum := 0.0
 		for q, x := range c.f.plan.m[b] {
 			if u := c.u[q]; x != 0 && u != 0 {

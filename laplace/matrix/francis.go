@@ -72,7 +72,7 @@ func (s *schurWork) deflate(hi int) int {
 		ab, ba := math.Max(sub, sup), math.Min(sub, sup)
 		aa, bb := math.Max(math.Abs(here), math.Abs(up-here)), math.Min(math.Abs(here), math.Abs(up-here))
 		sum := aa + ab
-		if ba*(ab/sum) <= math.Max(tiny, eps/2*(bb*(aa/sum))) {
+		if ba*(ab/sum) <= math.Max(tiny+0x1p-300*sum, eps/2*(bb*(aa/sum))) { // bb may be 0 exactly: no spread of poles reaches 2^300
 			h[at-1] = 0
 			return k
 		}

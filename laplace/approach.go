@@ -149,7 +149,7 @@ func (q *pieceBlock) bound(o *vector, tau float64) float64 {
 			sum += math.Abs(v) * cmplx.Abs(f.y[i]) * math.Exp(real(f.rate)*tau)
 		}
 	}
-	d, mu := q.norm(0)
+	d, mu := q.norm(0, 0)
 	size, seen := 0.0, 0.0
 	for i := range q.n {
 		size = math.Hypot(size, d[i]*q.z[i])

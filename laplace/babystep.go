@@ -6,9 +6,13 @@ type babySteps struct {
 	g          *grid
 	delta      []float64
 	e, set     []float64    // real modes × times: e^{pδ}; f1·a + f2·b
-	slope      []float64    // real modes × times: f1·b, only where there are ramps
+	slope      []float64    // real modes × times: f1·b, only where there are ramps or bends
 	pe, ps, pr []complex128 // the same of the pairs
 	block      [][]*blockWork
+
+	bent     [][]float64     // of τ², τ³, …: real modes × times, as set of 1 and slope of τ
+	pairBent [][]complex128  // the same of the pairs
+	phis     [][][][]float64 // of each block and time: φ₀, φ₁, …
 }
 
 func (g *grid) steps(h float64) *babySteps {
@@ -16,7 +20,7 @@ func (g *grid) steps(h float64) *babySteps {
 	k, c := len(p.m.real), len(p.m.pair)
 	s := &babySteps{g: g, delta: make([]float64, n), e: make([]float64, n*k), set: make([]float64, n*k)}
 	s.pe, s.ps, s.pr = make([]complex128, n*c), make([]complex128, n*c), make([]complex128, n*c)
-	if p.ramps {
+	if p.ramps || p.bent != nil {
 		s.slope = make([]float64, n*k)
 	}
 	for j := range s.delta {
@@ -41,6 +45,9 @@ func (g *grid) steps(h float64) *babySteps {
 			list[j].at(b.n, b.t, delta)
 		}
 		s.block = append(s.block, list)
+	}
+	if p.bent != nil {
+		s.bend()
 	}
 	return s
 }

@@ -7,9 +7,15 @@ import (
 
 // A curve is one output over one piece, as a function of τ from its start:
 //
-//	y = base + slope·τ + Σ e h + f1 a + f2 b + Σ Re(k D(s,p)) + Σ Re(amp·exp(rate·τ)) + blocks.
+//	y = base + slope·τ + Σ e h + f1 a + f2 b + Σ Re(k D(s,p)) + Σ Re(amp·exp(rate·τ)) + blocks,
+//
+// and where inputs are bent, what their powers of τ add to each of these.
 type curve struct {
 	base, slope float64
+	degree      int            // of the inputs; up to 1 they are not bent
+	bent        []float64      // of τ², τ³, … that reach the output at once
+	realBent    [][]float64    // of each realTerm what drives it with τ², τ³, …; nil: nothing
+	pairBent    [][]complex128 // of each pairTerm
 	t0, length  float64
 	real        []realTerm
 	pair        []pairTerm
@@ -42,6 +48,7 @@ func (r *Response) curve(p *piece, out int) *curve {
 	o := &p.of.System.modal.out[out]
 	c := &curve{base: p.of.Base[out], t0: p.t0, length: p.length}
 	c.addDirect(p, p.of.System.d[out])
+	c.degree = 1 + max(len(p.bent), len(c.bent))
 	c.real = make([]realTerm, 0, len(o.real))
 	c.pair = make([]pairTerm, 0, len(o.pair))
 	for k, v := range o.real {
@@ -49,7 +56,10 @@ func (r *Response) curve(p *piece, out int) *curve {
 			continue
 		}
 		t := realTerm{p.m.real[k], v * p.z.real[k], v * p.a.real[k], v * p.b.real[k]}
-		if t.h != 0 || t.a != 0 || t.b != 0 {
+		switch {
+		case p.bent != nil:
+			c.real, c.realBent = append(c.real, t), append(c.realBent, p.bentSeen(v, k))
+		case t.h != 0 || t.a != 0 || t.b != 0:
 			c.real = append(c.real, t)
 		}
 		for i := range p.forced {
@@ -65,6 +75,9 @@ func (r *Response) curve(p *piece, out int) *curve {
 		}
 		pole := p.m.pair[k]
 		c.pair = append(c.pair, pairTerm{pole, v * p.z.pair[k], v * p.a.pair[k], v * p.b.pair[k]})
+		if p.bent != nil {
+			c.pairBent = append(c.pairBent, p.bentSeenPair(v, k))
+		}
 		for i := range p.forced {
 			f := &p.forced[i]
 			if w := v * f.in.pair[k] / 2; w != 0 {
@@ -88,6 +101,12 @@ func (c *curve) addDirect(p *piece, d []float64) {
 		}
 		c.base += g * p.u[i].A
 		c.slope += g * p.u[i].B
+		for k, v := range p.u[i].Poly {
+			if k == len(c.bent) {
+				c.bent = append(c.bent, 0)
+			}
+			c.bent[k] += g * v
+		}
 		for _, e := range p.u[i].Exp {
 			c.direct = append(c.direct, Exponential{complex(g, 0) * e.Amplitude, e.Rate})
 		}
@@ -103,11 +122,15 @@ func (c *curve) addBlock(q *pieceBlock, o *vector) {
 	copy(t.out, own)
 	t.z1 = q.apply(q.z, q.a)
 	x := q.apply(t.z1, q.b)
-	for range terms - 1 {
+	for k := range terms - 1 {
 		t.higher = append(t.higher, x)
-		x = q.apply(x, nil)
+		x = q.apply(x, q.bentRate(k))
 	}
-	t.d, c.mu = q.norm(c.mu)
+	little := 0.0
+	if q.bent != nil {
+		little = 1 / c.length
+	}
+	t.d, c.mu = q.norm(c.mu, little)
 	c.block = append(c.block, t)
 	for _, f := range q.far {
 		var y complex128
@@ -163,6 +186,9 @@ func (c *curve) value(tau float64) float64 {
 		t.w.at(t.q.n, t.q.t, tau)
 		y += t.dot(t.w.e, t.q.z) + tau*(t.dot(t.w.p1, t.q.a)+tau*t.dot(t.w.p2, t.q.b))
 	}
+	if c.degree > 1 {
+		y += c.bentValue(tau)
+	}
 	return y
 }
 
@@ -186,8 +212,9 @@ func (t *blockTerm) dot(m, x []float64) float64 {
 // norm returns the scaling d, |x| = |d x|, that keeps the block's growth in norm
 // small, and the larger of that growth and mu. The coupling within a block may be
 // far larger than its poles; d = θ^−i weakens it, and θ is halved until the growth
-// (largest row sum of the symmetric part) is no more than a share of the poles.
-func (q *pieceBlock) norm(mu float64) (d []float64, grown float64) {
+// (largest row sum of the symmetric part) is no more than a share of the poles, or little:
+// what drives a chain far down its end is large in a norm scaled by more.
+func (q *pieceBlock) norm(mu, little float64) (d []float64, grown float64) {
 	d = make([]float64, q.n)
 	best, theta := math.Inf(1), 1.0
 	for math.Pow(theta, float64(q.n)) > 1e-100 {
@@ -196,7 +223,7 @@ func (q *pieceBlock) norm(mu float64) (d []float64, grown float64) {
 			for i := range d {
 				d[i] = math.Pow(theta, -float64(i))
 			}
-			if g <= slow/4 {
+			if g <= slow/4 || g <= little {
 				break
 			}
 		}

@@ -25,8 +25,9 @@
 //
 // # Where to start
 //
-// Build a Waveform for each input (Step, Points, Stairs, Pulse, Sine, Decay, Repeated) and
-// a System with New or FromMatrices. Then
+// Build a Waveform for each input (Step, Points, Stairs, Pulse, Sine, Decay, Repeated), out
+// of others where need be (Sum, Product, Power, Quotient, or Apply for any function, sampled),
+// and a System with New or FromMatrices. Then
 //
 //	System.Transfer      H(s) of one input and output: poles, zeros, residues, gain
 //	System.Step          the measures of a step: rise, settling, overshoot, peak
@@ -55,7 +56,7 @@
 // not exist is absent: false, nil or an empty list, never NaN. An error means that there
 // is no answer: a type for each reason that a caller may want to tell apart (*TooMany,
 // *Overflow, *Unsettled, *NotCommensurate, *Resonant, *NotDecaying, *Drifting,
-// *NotContracting, *SwitchError, *NotInverted). What was decided within error bounds only,
+// *NotContracting, *SwitchError, *NotInverted, *NotClosed, *NoValue, *HiddenJump). What was decided within error bounds only,
 // or where a search stopped at its cap, is said beside the answer: Transfer.Warnings,
 // Touch, Capped, Estimate.Trusted. Waves or bases
 // that are not as many as the inputs or outputs panic.
@@ -71,7 +72,7 @@
 // transfers): poles of networks of resistances and capacitances 5e-15 relative, each
 // of them, however stiff; other poles 3e-16, zeros 4e-15; gains 2e-15; coefficients
 // 1e-15; responses 1.1e-13 of their largest value, repeated and nearly repeated poles
-// included; rise, settling, peak and crossing times 4e-13; gain at a frequency 1.2e-14
+// and inputs of the 12th degree in time included; rise, settling, peak and crossing times 4e-13; gain at a frequency 1.2e-14
 // relative, phase 7e-13 degrees. Periodic steady states (testdata/periodic.json, 106 of 43
 // systems): 1.1e-14 of the largest value. Inversions (testdata/distributed.json): trusted
 // values 7e-11 of the range.
@@ -85,7 +86,7 @@
 // The system is taken apart into modes that do not act on each other: single real
 // modes, single conjugate pairs, and blocks of modes too close to be told apart by
 // their vectors (package matrix). Between two breaks of the inputs each of them
-// answers to a + bτ + Σ exp by the functions φ₁(x) = (eˣ−1)/x and φ₂, so that slow
+// answers to a + bτ + cτ² + … + Σ exp by the functions φ₁(x) = (eˣ−1)/x, φ₂, φ₃, … so that slow
 // poles, poles at 0, resonance and repeated poles are no cases of their own and
 // nothing is subtracted that nearly cancels. Crossings and extremes are found by
 // excluding every other part of the time with Taylor bounds: they are guaranteed,

@@ -79,7 +79,7 @@ func drawWave(t *rapid.T, end float64) Waveform {
 	at := func() float64 { return end * rapid.Float64Range(0, 1.2).Draw(t, "at") }
 	var w Waveform
 	var err error
-	switch rapid.SampledFrom([]string{"step", "points", "stairs", "pulse", "train", "sine", "decay", "repeated"}).Draw(t, "wave") {
+	switch rapid.SampledFrom([]string{"step", "points", "stairs", "pulse", "train", "sine", "decay", "repeated", "bent", "bent again"}).Draw(t, "wave") {
 	case "step":
 		return Step(v.Draw(t, "from"), v.Draw(t, "to"), at())
 	case "points", "repeated":
@@ -98,6 +98,17 @@ func drawWave(t *rapid.T, end float64) Waveform {
 		w, err = Pulse(PulseTrain{High: v.Draw(t, "high"), Width: end / 30, Period: end / 9, At: at() - end/2})
 	case "sine":
 		return Sine(v.Draw(t, "mean"), v.Draw(t, "amplitude"), rapid.Float64Range(0.1, 30).Draw(t, "omega")/end, v.Draw(t, "phase"))
+	case "bent", "bent again":
+		for at := 0.0; len(w.Segments) < 3; at += end * rapid.Float64Range(0.01, 0.6).Draw(t, "length") {
+			g := Segment{At: at, A: v.Draw(t, "A"), B: v.Draw(t, "B") / end}
+			for k := range rapid.IntRange(0, MaxDegree-1).Draw(t, "degree") {
+				g.Poly = append(g.Poly, v.Draw(t, "c")*math.Pow(end, -float64(k+2)))
+			}
+			w.Segments = append(w.Segments, g)
+		}
+		if rapid.Bool().Draw(t, "again") {
+			w, err = w.Repeated(end / 3)
+		}
 	case "decay":
 		w, err = Decay([][2]float64{{v.Draw(t, "a"), at() + end/30}, {v.Draw(t, "a"), end}})
 	}

@@ -13,14 +13,15 @@ import (
 //
 //	y(q,j) = out·e^{T·jh}·z(q) + (response over jh to the inputs from q on),
 //
-// the inputs at q being their value, their slope and their exponentials there. All
+// the inputs at q being the powers of τ and the exponentials there. All
 // entries come from the φ-functions: nothing cancels and nothing accumulates. Real
 // modes stand last in a state; those that have died out are cut off.
 type grid struct {
 	p      *piece
 	baby   int       // J
 	giants []float64 // τ of each giant step
-	fixed  int       // coordinates before the real modes: 1, τ, inputs, blocks, pairs
+	inputs int       // coordinates of the powers of τ: 1, τ and, where inputs are bent, τ², …
+	fixed  int       // coordinates before the real modes: powers, inputs, blocks, pairs
 	width  int
 }
 
@@ -31,7 +32,8 @@ func (r *Response) grid(p *piece, t0, h float64, from, to int, y [][]float64) {
 	for q := 0; q*g.baby < n; q++ {
 		g.giants = append(g.giants, t0-p.t0+float64(q*g.baby)*h)
 	}
-	g.fixed = 2 + 2*len(p.forced) + 2*len(p.m.pair)
+	g.inputs = 2 + len(p.bent)
+	g.fixed = g.inputs + 2*len(p.forced) + 2*len(p.m.pair)
 	for i := range p.blocks {
 		g.fixed += p.blocks[i].n + 2*len(p.blocks[i].far)
 	}
@@ -94,7 +96,10 @@ func (g *grid) giant(tau float64, alive int, row []float64) {
 		row[g.fixed+k] = p.realAt(k, tau)
 	}
 	row[0], row[1] = 1, tau
-	row = row[2:]
+	for k := 2; k < g.inputs; k++ {
+		row[k] = row[k-1] * tau
+	}
+	row = row[g.inputs:]
 	put := func(z complex128) {
 		row[0], row[1] = real(z), imag(z)
 		row = row[2:]
@@ -122,14 +127,19 @@ type view struct {
 	steps          *babySteps
 	out            *vector
 	seen           []float64
-	constant, ramp []float64 // rows 0 and 1 without the real modes
-	gone, goneRamp []float64 // what the real modes from k on leave when they have died out
+	constant, ramp []float64   // rows 0 and 1 without the real modes
+	gone, goneRamp []float64   // what the real modes from k on leave when they have died out
+	bent, goneBent [][]float64 // the same of τ², τ³, …; nil where inputs run straight
 }
 
 func (g *grid) view() *view {
 	k := len(g.p.m.real) + 1
-	return &view{g: g, seen: make([]float64, g.width*g.baby), constant: make([]float64, g.baby),
+	v := &view{g: g, seen: make([]float64, g.width*g.baby), constant: make([]float64, g.baby),
 		ramp: make([]float64, g.baby), gone: make([]float64, k), goneRamp: make([]float64, k)}
+	for range g.p.bent {
+		v.bent, v.goneBent = append(v.bent, make([]float64, g.baby)), append(v.goneBent, make([]float64, k))
+	}
+	return v
 }
 
 // multiply fills y run by run, from the last to the first, so that modes only join.
@@ -150,6 +160,11 @@ func (v *view) carry(carried, alive int) int {
 	n := v.g.baby
 	for ; carried < alive; carried++ {
 		v.steps.gather(carried, v.out.real[carried], v.constant, v.ramp)
+		v.steps.gatherBent(carried, v.out.real[carried], v.bent)
+	}
+	if v.bent != nil {
+		v.carryBent(alive)
+		return alive
 	}
 	for j, delta := range v.steps.delta {
 		v.seen[j] = v.constant[j] + (v.gone[alive] + v.goneRamp[alive]*delta)

@@ -11,6 +11,13 @@ func (w Waveform) Rate() Waveform {
 	r := Waveform{Repeat: w.Repeat, Period: w.Period, Segments: make([]Segment, len(w.Segments))}
 	for i, g := range w.Segments {
 		r.Segments[i] = Segment{At: g.At, A: g.B}
+		for k, c := range g.Poly {
+			if c *= float64(k + 2); k == 0 {
+				r.Segments[i].B = c
+			} else {
+				r.Segments[i].Poly = append(r.Segments[i].Poly, c)
+			}
+		}
 		for _, e := range g.Exp {
 			r.Segments[i].Exp = append(r.Segments[i].Exp, Exponential{e.Amplitude * e.Rate, e.Rate})
 		}

@@ -33,6 +33,9 @@ func (c *curve) integral() float64 {
 	for i := range c.block {
 		y += c.block[i].integral(h)
 	}
+	if c.degree > 1 {
+		y += c.bentIntegral()
+	}
 	return y
 }
 

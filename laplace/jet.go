@@ -13,11 +13,13 @@ const terms = 8
 // A jet is a curve at one instant: its value and derivatives, and what bounds the
 // derivative of order terms in the neighbourhood. A contribution that decays is
 // bounded on [l, r] by its size at l, one that grows by its size at r, and that of
-// the blocks by its size at l times exp(mu·(r−l)).
+// the blocks by its size at l times exp(mu·(r−l)), to which push, what drives them at r,
+// adds its part.
 type jet struct {
 	t                 float64
 	d                 [terms]float64 // y, y', y″ …
 	fall, rise, block float64
+	push              float64
 }
 
 func (j *jet) y() float64  { return j.d[0] }
@@ -28,11 +30,15 @@ func (j *jet) y2() float64 { return j.d[2] }
 func (c *curve) jet(tau float64) jet {
 	j := jet{t: tau}
 	j.d[0], j.d[1] = c.base+c.slope*tau, c.slope
-	for i := range c.real {
-		c.real[i].addTo(&j)
-	}
-	for i := range c.pair {
-		c.pair[i].addTo(&j)
+	if c.degree > 1 {
+		c.bentJet(&j)
+	} else {
+		for i := range c.real {
+			c.real[i].addTo(&j)
+		}
+		for i := range c.pair {
+			c.pair[i].addTo(&j)
+		}
 	}
 	for i := range c.forced {
 		c.forced[i].addTo(&j, c.length)
@@ -133,16 +139,22 @@ func (t *blockTerm) addTo(j *jet) {
 		o = math.Hypot(o, v/t.d[i])
 	}
 	j.block += o * t.size(t.higher[terms-2])
+	if q.bent != nil {
+		t.addBent(j, o)
+	}
 }
 
 // size returns the scaled norm of e^{τT}x.
-func (t *blockTerm) size(x []float64) float64 {
+func (t *blockTerm) size(x []float64) float64 { return t.sizeOf(t.w.e, x) }
+
+// sizeOf returns the scaled norm of m x.
+func (t *blockTerm) sizeOf(m, x []float64) float64 {
 	var s float64
 	n := t.q.n
 	for i := range n {
 		var v float64
 		for k, u := range x {
-			v += t.w.e[i*n+k] * u
+			v += m[i*n+k] * u
 		}
 		s = math.Hypot(s, t.d[i]*v)
 	}
@@ -153,8 +165,8 @@ func (t *blockTerm) size(x []float64) float64 {
 // what they are at their middle m: Taylor's formula with its remainder.
 func (c *curve) spread(l, m, r *jet) (v [3]float64) {
 	b := l.fall + r.rise
-	if l.block > 0 {
-		b += l.block * math.Exp(c.mu*(r.t-l.t))
+	if l.block > 0 || r.push > 0 {
+		b += (l.block + (r.t-l.t)*r.push) * math.Exp(c.mu*(r.t-l.t))
 	}
 	h := (r.t - l.t) / 2
 	for i := range v {

@@ -11,15 +11,16 @@ type forcing struct {
 }
 
 // A piece is the response between two neighbouring breaks: the state at its
-// start, and inputs that are one polynomial of degree 1 plus exponentials.
+// start, and inputs that are one polynomial plus exponentials.
 type piece struct {
 	m      *modal
-	of     *Kind   // whose output it is; nil where no output is asked for
-	t0     float64 // s
-	length float64 // s
-	z      vector  // state at t0
-	a, b   vector  // what drives the modes: a + b·τ
-	ramps  bool    // b is not zero
+	of     *Kind    // whose output it is; nil where no output is asked for
+	t0     float64  // s
+	length float64  // s
+	z      vector   // state at t0
+	a, b   vector   // what drives the modes: a + b·τ
+	ramps  bool     // b is not zero
+	bent   []vector // what drives them with τ², τ³, …; nil where inputs run straight
 	forced []forcing
 	blocks []pieceBlock
 	u      []segmentNow // of each active input
@@ -35,17 +36,21 @@ type segmentNow struct {
 func newPiece(m *modal, t0, length float64, z vector, u []segmentNow) *piece {
 	p := &piece{m: m, t0: t0, length: length, z: z, u: u, a: m.vector(), b: m.vector()}
 	for i := range u {
-		in := &m.in[u[i].input]
-		if u[i].A != 0 {
-			p.a.add(u[i].A, in)
+		g := &u[i]
+		in := &m.in[g.input]
+		if g.A != 0 {
+			p.a.add(g.A, in)
 		}
-		if u[i].B != 0 {
-			p.b.add(u[i].B, in)
+		if g.B != 0 {
+			p.b.add(g.B, in)
 			p.ramps = true
 		}
-		for _, e := range u[i].Exp {
+		if len(g.Poly) > 0 {
+			p.bend(g, in)
+		}
+		for _, e := range g.Exp {
 			if e.Amplitude != 0 {
-				p.forced = append(p.forced, forcing{e.Rate, e.Amplitude, in, u[i].input})
+				p.forced = append(p.forced, forcing{e.Rate, e.Amplitude, in, g.input})
 			}
 		}
 	}
@@ -81,6 +86,9 @@ func (p *piece) realAt(k int, tau float64) float64 {
 	if p.ramps {
 		x += phi2(pole, tau, f1) * p.b.real[k]
 	}
+	if p.bent != nil {
+		x += p.bentReal(k, tau, f1)
+	}
 	for i := range p.forced {
 		if f := &p.forced[i]; f.in.real[k] != 0 {
 			x += f.in.real[k] * real(f.amp*divided(f.rate, complex(pole, 0), tau))
@@ -95,6 +103,9 @@ func (p *piece) pairAt(k int, tau float64) complex128 {
 	x := e*p.z.pair[k] + f1*p.a.pair[k]
 	if p.ramps {
 		x += cphi2(pole, tau, f1) * p.b.pair[k]
+	}
+	if p.bent != nil {
+		x += p.bentPair(k, tau, f1)
 	}
 	for i := range p.forced {
 		if f := &p.forced[i]; f.in.pair[k] != 0 {
@@ -117,6 +128,7 @@ type pieceBlock struct {
 	n          int // own and the exponentials that joined
 	t          []float64
 	z, a, b    []float64
+	bent       [][]float64 // of τ², τ³, …
 	far        []steadyPart
 }
 
@@ -130,6 +142,9 @@ func newPieceBlock(p *piece, q *block) pieceBlock {
 	r := pieceBlock{first: q.first, own: q.n, n: q.n, t: q.t}
 	part := func(v []float64) []float64 { return append([]float64(nil), v[q.first:q.first+q.n]...) }
 	r.z, r.a, r.b = part(p.z.block), part(p.a.block), part(p.b.block)
+	for k := range p.bent {
+		r.bent = append(r.bent, part(p.bent[k].block))
+	}
 	for i := range p.forced {
 		f := &p.forced[i]
 		in := f.in.block[q.first : q.first+q.n]
@@ -191,6 +206,9 @@ func (r *pieceBlock) join(f *forcing, in []float64) {
 	}
 	for range extra {
 		r.a, r.b = append(r.a, 0), append(r.b, 0)
+		for k := range r.bent {
+			r.bent[k] = append(r.bent[k], 0)
+		}
 	}
 	r.n, r.t = n, t
 }
@@ -231,5 +249,8 @@ func (r *pieceBlock) joint(w *blockWork, tau float64, z []float64) {
 			x += w.e[i*r.n+j]*r.z[j] + tau*(w.p1[i*r.n+j]*r.a[j]+tau*w.p2[i*r.n+j]*r.b[j])
 		}
 		z[i] = x
+	}
+	if r.bent != nil {
+		r.bend(r.bentPhis(tau, 0), tau, z)
 	}
 }

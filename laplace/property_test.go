@@ -99,6 +99,10 @@ func inTime(w Waveform, k int) Waveform {
 	for i := range w.Segments {
 		g := &w.Segments[i]
 		g.At, g.B = math.Ldexp(g.At, k), math.Ldexp(g.B, -k)
+		g.Poly = append([]float64(nil), g.Poly...)
+		for j := range g.Poly {
+			g.Poly[j] = math.Ldexp(g.Poly[j], -k*(j+2))
+		}
 		g.Exp = append([]Exponential(nil), g.Exp...)
 		for j := range g.Exp {
 			r := g.Exp[j].Rate

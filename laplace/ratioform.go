@@ -47,7 +47,7 @@ func FromRatio(num, den []float64) (*Transfer, error) {
 	return e.transfer()
 }
 
-// trimmed drops leading zeros.
+// trimmed drops the zeros of the highest powers.
 func trimmed(c []float64) []float64 {
 	for len(c) > 0 && c[len(c)-1] == 0 {
 		c = c[:len(c)-1]

@@ -12,6 +12,9 @@ func (p *piece) reach(peak *vector) {
 	for k, pole := range p.m.real {
 		g := memory(math.Abs(pole), p.length)
 		x := math.Abs(p.z.real[k]) + g*(math.Abs(p.a.real[k])+p.length*math.Abs(p.b.real[k]))
+		if p.bent != nil {
+			x += g * p.sizeOfBent(func(v *vector) float64 { return math.Abs(v.real[k]) })
+		}
 		for i := range p.forced {
 			f := &p.forced[i]
 			x += math.Abs(f.in.real[k]) * f.size(complex(pole, 0), p.length)
@@ -21,6 +24,9 @@ func (p *piece) reach(peak *vector) {
 	for k, pole := range p.m.pair {
 		g := 2 * memory(cmplx.Abs(pole), p.length)
 		x := cmplx.Abs(p.z.pair[k]) + g*(cmplx.Abs(p.a.pair[k])+p.length*cmplx.Abs(p.b.pair[k]))
+		if p.bent != nil {
+			x += g * p.sizeOfBent(func(v *vector) float64 { return cmplx.Abs(v.pair[k]) })
+		}
 		for i := range p.forced {
 			f := &p.forced[i]
 			x += cmplx.Abs(f.in.pair[k]) * f.size(pole, p.length)

@@ -48,6 +48,9 @@ func (w Waveform) Repeated(period float64) (Waveform, error) {
 // from returns the segment as it is after tau.
 func (g *Segment) from(tau float64) Segment {
 	s := Segment{A: g.A + g.B*tau, B: g.B}
+	if len(g.Poly) > 0 {
+		s.A, s.B, s.Poly = g.powersFrom(tau)
+	}
 	for _, e := range g.Exp {
 		if tau != 0 {
 			e.Amplitude *= cexp(e.Rate, tau)
@@ -107,11 +110,11 @@ func stuck(w *Waveform, n int) bool {
 	return w.start(n+1, w.Repeat) <= w.start(n, w.Repeat)
 }
 
-// Breaks returns the instants in [t0, t1] at which the wave jumps or bends, at
-// most max of them, ascending. The error is *TooMany.
+// Breaks returns the instants in [t0, t1] at which the wave jumps, bends or goes over
+// to or from another curve, at most max of them, ascending. The error is *TooMany.
 func (w Waveform) Breaks(t0, t1 float64, max int) ([]float64, error) {
-	return w.pick(t0, t1, max, func(before, after *Segment, length float64) bool {
-		if len(before.Exp) == 0 && len(after.Exp) == 0 {
+	return w.pick(t0, t1, max, func(before, after *Segment, length, _ float64) bool {
+		if len(before.Exp) == 0 && len(after.Exp) == 0 && before.straight() && after.straight() {
 			return before.B != after.B || before.value(length) != after.A
 		}
 		return true
@@ -121,14 +124,17 @@ func (w Waveform) Breaks(t0, t1 float64, max int) ([]float64, error) {
 // JumpTimes returns the instants in [t0, t1] at which the wave jumps, at most max
 // of them, ascending. The error is *TooMany.
 func (w Waveform) JumpTimes(t0, t1 float64, max int) ([]float64, error) {
-	return w.pick(t0, t1, max, func(before, after *Segment, length float64) bool {
+	return w.pick(t0, t1, max, func(before, after *Segment, length, at float64) bool {
 		l, r := before.value(length), after.value(0)
-		return math.Abs(l-r) > 1e-14*(math.Abs(l)+math.Abs(r))
+		// what the values are added up from is rounded, and so is the instant
+		size := math.Abs(l) + math.Abs(r) + sizeOfPowers(before.powers(), length)
+		late := 4 * epsilon * at * (before.steepest(length) + after.steepest(0))
+		return math.Abs(l-r) > 1e-14*size+late
 	})
 }
 
 // pick returns the starts at which is holds between the segments on both sides.
-func (w *Waveform) pick(t0, t1 float64, limit int, is func(before, after *Segment, length float64) bool) ([]float64, error) {
+func (w *Waveform) pick(t0, t1 float64, limit int, is func(before, after *Segment, length, at float64) bool) ([]float64, error) {
 	all, err := w.starts(t1, MaxBreaks)
 	if err != nil {
 		return nil, err
@@ -143,7 +149,7 @@ func (w *Waveform) pick(t0, t1 float64, limit int, is func(before, after *Segmen
 		}
 		n, k := w.locate(at, false)
 		after := w.Segments[k].from(at - w.start(n, k))
-		if at < t0 || !is(before, &after, length) {
+		if at < t0 || !is(before, &after, length, at) {
 			continue
 		}
 		if len(list) >= limit {

@@ -254,14 +254,19 @@ func (r *Response) pieceFrom(j int, z vector) *piece {
 	if j+1 < len(r.times) {
 		t1 = r.times[j+1]
 	}
-	u := make([]segmentNow, 0, len(r.wave))
+	u := make([]segmentNow, len(r.wave))
 	for i, w := range r.wave {
+		u[i].input = r.input[i]
 		if len(w.Segments) == 0 {
-			u = append(u, segmentNow{r.input[i], Segment{A: w.Before}})
+			u[i].A = w.Before
 			continue
 		}
 		n, k := w.locate(t0, false)
-		u = append(u, segmentNow{r.input[i], w.Segments[k].from(t0 - w.start(n, k))})
+		if tau := t0 - w.start(n, k); tau != 0 {
+			u[i].Segment = w.Segments[k].from(tau)
+		} else {
+			u[i].Segment = w.Segments[k]
+		}
 	}
 	of := &r.phases.kinds[r.phases.kindAt(t0)]
 	p := newPiece(of.System.modal, t0, t1-t0, z, u)

@@ -30,7 +30,7 @@ func (r *Response) points(p *piece, t []float64, at int, y [][]float64) {
 }
 
 func (c *curve) withoutReal() *curve {
-	c.real = nil
+	c.real, c.realBent = nil, nil
 	return c
 }
 
@@ -39,6 +39,11 @@ func (c *curve) fill(tau, y []float64) {
 	if len(c.pair) == 0 && len(c.forced) == 0 && len(c.direct) == 0 && len(c.block) == 0 {
 		for i, v := range tau {
 			y[i] = c.base + c.slope*v
+		}
+		if len(c.bent) > 0 {
+			for i, v := range tau {
+				y[i] += v * v * powerSum(c.bent, v)
+			}
 		}
 		return
 	}
@@ -52,6 +57,7 @@ type sharedTerm struct {
 	p       float64
 	h, a, b []float64 // for each output
 	ramps   bool
+	bent    [][]float64 // for each output of τ², τ³, …; nil: nothing
 }
 
 func (r *Response) sharedTerms(p *piece, y [][]float64) []sharedTerm {
@@ -66,8 +72,11 @@ func (r *Response) sharedTerms(p *piece, y [][]float64) []sharedTerm {
 			f.h = append(f.h, o*p.z.real[k])
 			f.a = append(f.a, o*p.a.real[k])
 			f.b = append(f.b, o*p.b.real[k])
+			if p.bent != nil {
+				f.bent = append(f.bent, p.bentSeen(o, k))
+			}
 		}
-		if !allZero(f.h) || !allZero(f.a) || !allZero(f.b) {
+		if !allZero(f.h) || !allZero(f.a) || !allZero(f.b) || p.bent != nil {
 			list = append(list, f)
 		}
 	}
@@ -91,6 +100,9 @@ func (f *sharedTerm) fill(tau []float64, at int, y [][]float64, parts *[3][chunk
 		if y[m] != nil {
 			f.addTo(y[m][at:at+len(tau)], tau, alive, m, e, f1, f2)
 		}
+	}
+	if f.bent != nil {
+		f.bend(tau, alive, at, f1, y)
 	}
 }
 

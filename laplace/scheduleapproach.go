@@ -148,7 +148,7 @@ func (s *System) sight(o *vector, h float64) float64 {
 		}
 		for b := range s.modal.block {
 			q := &s.modal.block[b]
-			d, mu := (&pieceBlock{n: q.n, t: q.t}).norm(0)
+			d, mu := (&pieceBlock{n: q.n, t: q.t}).norm(0, 0)
 			x, y := 0.0, 0.0
 			for j := range q.n {
 				x = math.Hypot(x, d[j]*in.block[q.first+j])

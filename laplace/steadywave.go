@@ -56,7 +56,10 @@ func (w *Waveform) inTheLongRun(i int) (steadyWave, error) {
 	}
 	last := w.Segments[len(w.Segments)-1]
 	s := steadyWave{rest: Segment{A: last.A}, from: last.At}
-	if last.B != 0 {
+	switch {
+	case !last.straight():
+		return s, &Unsettled{i, "it goes on as a polynomial of time for ever"}
+	case last.B != 0:
 		return s, &Unsettled{i, "it goes on straight for ever"}
 	}
 	for _, e := range last.Exp {

@@ -68,6 +68,9 @@ func (s *steadyWave) at(t float64) Segment {
 // less returns g − h; what differs by rounding only is 0.
 func (g Segment) less(h Segment) Segment {
 	d := Segment{A: apart(g.A, h.A), B: apart(g.B, h.B)}
+	for k := range max(len(g.Poly), len(h.Poly)) {
+		d.Poly = append(d.Poly, apart(at(g.Poly, k), at(h.Poly, k)))
+	}
 	rest := append([]Exponential(nil), g.Exp...)
 	for _, e := range h.Exp {
 		same := -1

@@ -15,7 +15,10 @@ func (v *view) see(s *babySteps, o *vector, d []float64, base float64) {
 			}
 		}
 	}
-	seen := v.seeForced(d, v.seen[2*n:])
+	if v.bent != nil {
+		v.seeBent(d)
+	}
+	seen := v.seeForced(d, v.seen[v.g.inputs*n:])
 	for i := range p.blocks {
 		seen = v.seeBlock(i, seen)
 	}
@@ -47,6 +50,9 @@ func (v *view) seeGone(out []float64) {
 			v.gone[k] -= out[k] * (p.a.real[k] + p.b.real[k]/pole) / pole
 			v.goneRamp[k] -= out[k] * p.b.real[k] / pole
 		}
+	}
+	if v.bent != nil {
+		v.seeGoneBent(out)
 	}
 }
 

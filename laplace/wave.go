@@ -12,10 +12,12 @@ type Exponential struct {
 	Rate      complex128 // 1/s; a decaying sine has a complex rate
 }
 
-// A Segment holds u(t) = A + B·τ + Σ Re(Amplitude·exp(Rate·τ)), τ = t − At, from
-// its instant At (s) until the next segment begins.
+// A Segment holds u(t) = A + B·τ + Poly[0]·τ² + Poly[1]·τ³ + … + Σ Re(Amplitude·exp(Rate·τ)),
+// τ = t − At, from its instant At (s) until the next segment begins. Powers go up to
+// τ^MaxDegree.
 type Segment struct {
 	At, A, B float64
+	Poly     []float64
 	Exp      []Exponential
 }
 
@@ -34,6 +36,9 @@ type Waveform struct {
 // value returns the segment's value τ after its start.
 func (g *Segment) value(tau float64) float64 {
 	v := g.A + g.B*tau
+	if len(g.Poly) > 0 {
+		v += tau * tau * powerSum(g.Poly, tau)
+	}
 	for _, e := range g.Exp {
 		v += real(e.Amplitude * cexp(e.Rate, tau))
 	}
@@ -105,7 +110,7 @@ func (g *Segment) constant() bool {
 			return false
 		}
 	}
-	return g.B == 0
+	return g.straight() && g.B == 0
 }
 
 // Constant reports whether the wave holds one value for ever, before t = 0 too.
@@ -133,7 +138,7 @@ func (w Waveform) Final() (float64, bool) {
 		}
 		return last.A, true
 	}
-	if last.B != 0 {
+	if last.B != 0 || !last.straight() {
 		return 0, false
 	}
 	for _, e := range last.Exp {
@@ -152,6 +157,10 @@ func (w Waveform) Scaled(k float64) Waveform {
 		g := &w.Segments[i]
 		g.A *= k
 		g.B *= k
+		g.Poly = append([]float64(nil), g.Poly...)
+		for j := range g.Poly {
+			g.Poly[j] *= k
+		}
 		g.Exp = append([]Exponential(nil), g.Exp...)
 		for j := range g.Exp {
 			a := g.Exp[j].Amplitude
@@ -184,6 +193,9 @@ func (w *Waveform) check() {
 		if k == 0 && at != 0 || k > 0 && !(at >= w.Segments[k-1].At) || math.IsInf(at, 0) {
 			panic("laplace: the segments of a waveform are not in order of time from 0")
 		}
+		if len(w.Segments[k].Poly) >= MaxDegree {
+			panic("laplace: a segment of a waveform has powers of time above MaxDegree")
+		}
 	}
 	if w.Period > 0 && !(w.Repeat >= 0 && w.Repeat < len(w.Segments)) {
 		panic("laplace: a waveform repeats from a segment it does not have")
@@ -205,6 +217,9 @@ func (w *Waveform) size(until float64) float64 {
 		}
 		length := max(end-g.At, 0)
 		v := max(math.Abs(g.A), math.Abs(g.A+g.B*length))
+		if len(g.Poly) > 0 {
+			v += length * length * sizeOfPowers(g.Poly, length)
+		}
 		for _, e := range g.Exp {
 			v += cmplx.Abs(e.Amplitude) * max(1, math.Exp(real(e.Rate)*length))
 		}

@@ -28,6 +28,7 @@ type (
 		ref        Ref
 		held       InputID // noInput if free
 		capacities []CapacityID
+		stores     bool // an element stores here
 	}
 	capacity struct {
 		at  NodeID

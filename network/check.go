@@ -58,10 +58,15 @@ func (g *graph) selfLoops() []Fault {
 			}
 		}
 	}
+	for i := range g.elements {
+		if e := &g.elements[i]; e.Joins && len(e.Ports) == 2 && e.Ports[0] == e.Ports[1] {
+			faults = append(faults, Fault{SelfLoop, e.Ports[:1], []Ref{e.ref}, strconv.Quote(e.Name) + ": begins and ends at " + g.named(e.Ports[:1])})
+		}
+	}
 	return faults
 }
 
-// unconnected marks nodes that no branch joins to another and, if they store or
+// unconnected marks nodes that no branch or element joins to another and, if they store or
 // are held, into which no source leads either: a lone store with a source is an
 // adiabatic body, a lone held node has no meaning.
 func (g *graph) unconnected() []bool {
@@ -74,6 +79,13 @@ func (g *graph) unconnected() []bool {
 			alone[b.from], alone[b.to] = false, false
 		}
 	}
+	for i := range g.elements {
+		if e := &g.elements[i]; !e.Passive {
+			for _, n := range e.Ports {
+				alone[n] = alone[n] && len(e.Ports) == 1 && g.isHeld(n)
+			}
+		}
+	}
 	for _, in := range g.inputs {
 		if !in.held && g.nodes[in.node].held == noInput {
 			alone[in.node] = false
@@ -83,9 +95,10 @@ func (g *graph) unconnected() []bool {
 }
 
 // undetermined groups the massless nodes that no path of influence reaches from
-// a held node or a store. A resistance carries influence both ways, a one-way
-// branch to its end, and a feedback of a node on itself may fix the node's level;
-// that its number does is checked when the numbers are known.
+// a held node or a store. A resistance and an element that joins its ports carry
+// influence both ways, a one-way branch to its end; a feedback of a node on itself and an
+// element that joins a single port to something outside may fix the node's level; that
+// their numbers do is checked when these are known.
 func (g *graph) undetermined(skip []bool) [][]NodeID {
 	reached := make([]bool, len(g.nodes))
 	for i := range g.nodes {
@@ -96,6 +109,7 @@ func (g *graph) undetermined(skip []bool) [][]NodeID {
 			reached[f.to] = true
 		}
 	}
+	g.spreadFromOutside(reached)
 	g.spread(reached)
 	if len(g.inertances) > 0 {
 		g.spreadByFlow(reached)
@@ -119,11 +133,27 @@ func (g *graph) spread(reached []bool) {
 		for _, b := range g.oneWays {
 			mark(b.from, b.to)
 		}
+		for i := range g.elements {
+			if e := &g.elements[i]; e.Joins {
+				for k := range e.Ports {
+					mark(e.Ports[k], e.Ports[(k+1)%len(e.Ports)])
+				}
+			}
+		}
+	}
+}
+
+// spreadFromOutside marks the nodes that an element joins to something that is no node.
+func (g *graph) spreadFromOutside(reached []bool) {
+	for i := range g.elements {
+		if e := &g.elements[i]; e.Joins && len(e.Ports) == 1 {
+			reached[e.Ports[0]] = true
+		}
 	}
 }
 
 // groups returns the connected groups of the nodes that belong, joined by
-// branches of any kind, each group and the list of them in ascending order.
+// branches or elements of any kind, each group and the list of them in ascending order.
 func (g *graph) groups(belongs func(NodeID) bool) [][]NodeID {
 	parent := make([]int, len(g.nodes))
 	for i := range parent {
@@ -136,12 +166,20 @@ func (g *graph) groups(belongs func(NodeID) bool) [][]NodeID {
 		}
 		return i
 	}
+	join := func(a, b NodeID) {
+		if belongs(a) && belongs(b) {
+			p, q := root(int(a)), root(int(b))
+			parent[max(p, q)] = min(p, q)
+		}
+	}
 	for _, list := range g.branches() {
 		for _, b := range list {
-			if belongs(b.from) && belongs(b.to) {
-				p, q := root(int(b.from)), root(int(b.to))
-				parent[max(p, q)] = min(p, q)
-			}
+			join(b.from, b.to)
+		}
+	}
+	for i := range g.elements {
+		if e := &g.elements[i]; !e.Passive {
+			g.joinPorts(e.Ports, belongs, join)
 		}
 	}
 	index := make([]int, len(g.nodes)) // group of a root, plus one
@@ -160,10 +198,25 @@ func (g *graph) groups(belongs func(NodeID) bool) [][]NodeID {
 	return groups
 }
 
+// joinPorts joins those ports of an element that belong.
+func (g *graph) joinPorts(ports []NodeID, belongs func(NodeID) bool, join func(a, b NodeID)) {
+	first := -1
+	for k, n := range ports {
+		if !belongs(n) {
+			continue
+		}
+		if first >= 0 {
+			join(ports[first], n)
+		} else {
+			first = k
+		}
+	}
+}
+
 func (g *graph) isHeld(n NodeID) bool { return g.nodes[n].held != noInput }
 
 func (g *graph) isMassless(n NodeID) bool {
-	return g.nodes[n].held == noInput && len(g.nodes[n].capacities) == 0
+	return g.nodes[n].held == noInput && len(g.nodes[n].capacities) == 0 && !g.nodes[n].stores
 }
 
 // remarks lists what is legal and has no effect.

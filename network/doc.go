@@ -61,6 +61,11 @@
 // momentum they have together (carry.go). The impulse of level that this takes at the
 // shut end is in no answer.
 //
-// Not modelled here: a capacity between two nodes, parameters that change with level,
-// or with time otherwise than in steps (Switch), delays.
+// A part that is none of these is an element (Builder.Element): a law says what flows
+// into its ports, what it stores, how its own unknowns move, and when it goes from one
+// mode to another. A network with elements is M x' = F(t, x): Begin finds its state at
+// t = 0, Operate a steady one, March answers against time, and Linearise returns the
+// linear network about a state, of which all above is true again.
+//
+// Not modelled here: a capacity between two nodes, and delays.
 package network

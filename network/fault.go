@@ -1,6 +1,7 @@
 package network
 
 import (
+	"math"
 	"strconv"
 	"strings"
 )
@@ -73,7 +74,23 @@ const (
 	Integrating   SteadyReason = iota // no held node to flow to, and the sources do not sum to zero
 	LevelOpen                         // no held node, nothing flows: any level is steady
 	FeedbackExact                     // feedback balances the losses exactly
+	Unsolved                          // no levels were found at which all balances close
+	Cycling                           // modes of elements follow one another for ever
 )
+
+// Nonlinear is the error of what is answered for linear networks alone.
+type Nonlinear struct {
+	Asked string   // "the poles"
+	Parts []string // names of the parts whose laws are not linear
+}
+
+func (e *Nonlinear) Error() string {
+	names := make([]string, len(e.Parts))
+	for i, p := range e.Parts {
+		names[i] = strconv.Quote(p)
+	}
+	return "network: " + e.Asked + ": there is no such answer while the laws of " + listed(names) + " are not linear; march the network, or linearise it about a state"
+}
 
 func (e *NoSteady) Error() string {
 	texts := make([]string, len(e.List))
@@ -128,4 +145,9 @@ func (g *graph) refsOf(ids []NodeID) []Ref {
 }
 
 // number writes a value in a message.
-func number(v float64) string { return strconv.FormatFloat(v, 'g', 6, 64) }
+func number(v float64) string {
+	if math.IsNaN(v) || math.IsInf(v, 0) {
+		return "more than can be computed"
+	}
+	return strconv.FormatFloat(v, 'g', 6, 64)
+}

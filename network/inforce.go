@@ -71,9 +71,15 @@ func (n *Network) fed(g *graph) (faults []Fault) {
 }
 
 // Stopped returns the inertances in which nothing can flow with the numbers of p: those
-// that are shut, and those in series with what is shut with no store between. It
-// returns *ParamFault as Reduce does.
+// that are shut, and those in series with what is shut with no store between. Elements
+// count as open. It returns *ParamFault as Reduce does.
 func (n *Network) Stopped(p *Params) (list []InertanceID, err error) {
+	if n.g.nonlinear() {
+		if err := n.Check(p); err != nil {
+			return nil, err
+		}
+		return n.deadEnds(p), nil
+	}
 	in, err := n.inForce(p)
 	if err != nil || in.plan.flows == nil {
 		return nil, err

@@ -1,5 +1,7 @@
 package network
 
+import "slices"
+
 // joints lists the groups of massless nodes that neither a held node nor a store
 // determines through resistances, streams or feedbacks, joined to one another by
 // resistances: places where inertances meet. Each group and the list are ascending.
@@ -25,12 +27,13 @@ func (g *graph) determined() []bool {
 			reached[f.to] = true
 		}
 	}
+	g.spreadFromOutside(reached)
 	g.spread(reached)
 	return reached
 }
 
 // spreadByFlow extends a set of determined nodes through inertances and what is
-// joined to them by resistances.
+// joined to them by resistances or elements.
 func (g *graph) spreadByFlow(reached []bool) {
 	for grown := true; grown; {
 		grown = false
@@ -40,6 +43,16 @@ func (g *graph) spreadByFlow(reached []bool) {
 					reached[b.from], reached[b.to] = true, true
 					grown = true
 				}
+			}
+		}
+		for i := range g.elements {
+			e := &g.elements[i]
+			if !e.Joins || !slices.ContainsFunc(e.Ports, func(n NodeID) bool { return reached[n] }) {
+				continue
+			}
+			for _, n := range e.Ports {
+				grown = grown || !reached[n]
+				reached[n] = true
 			}
 		}
 	}

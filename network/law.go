@@ -45,7 +45,7 @@ type Stamp struct {
 	DF []float64 // row-major len(F) × len(X): ∂F/∂X
 
 	Stored, DStored float64   // what is stored at the first port at this level, and its derivative with respect to X[0]; where Shape.Stores
-	DStoredBy       []float64 // by unknown: derivative of Stored with respect to it; may stay zero
+	DStoredBy       []float64 // by unknown that is a state: derivative of Stored with respect to it; may stay zero. What is stored must not depend on an algebraic unknown
 }
 
 // A Law computes an element. Eval sets every entry of F and DF (they come zeroed) and
@@ -125,6 +125,9 @@ func (b *Builder) Element(s Shape, r Ref) ElementID {
 	}
 	if s.Stores && len(s.Ports) == 0 {
 		panic("network: an element that stores has a port")
+	}
+	if s.Stores {
+		b.g.nodes[s.Ports[0]].stores = true
 	}
 	b.g.elements = append(b.g.elements, element{s, r})
 	return ElementID(len(b.g.elements) - 1)

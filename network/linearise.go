@@ -18,12 +18,16 @@ type Linear struct {
 	Params *Params
 
 	of         *Network
+	p          *Params
 	from       *Params // the numbers in force
 	at         *State
 	equations  *equations // of the network, with every wave at its value at the state
 	x          []float64  // the state there
 	stamps     []*Stamp   // by ElementID; nil where the element is passive
+	gone       []bool     // by ElementID: shut by its mode
 	resistance []ResistanceID
+	solved     [][][]float64 // by ElementID, by unknown: see solve
+	tally      [][]bool      // by ElementID, by unknown: left out, see findTallies
 	unknown    [][]NodeID
 	drive      [][]NodeID
 	moves      bool      // the state is a beginning that is not steady
@@ -42,30 +46,39 @@ type Linear struct {
 // a resistance, so that a network of reciprocal parts keeps the accuracy of its poles;
 // the rest are feedbacks.
 func (n *Network) Linearise(p *Params, at *State) (*Linear, error) {
-	l := &Linear{of: n, at: at, lost: make([]float64, len(n.g.inertances))}
+	l := &Linear{of: n, p: p, at: at, lost: make([]float64, len(n.g.inertances))}
 	if err := l.freeze(p); err != nil {
 		return nil, err
 	}
 	l.stamp(p)
+	l.solve()
+	l.findTallies()
 	l.findRates()
+	if err := l.build(); err != nil {
+		return nil, err
+	}
+	return l, nil
+}
+
+// build makes Net and Params.
+func (l *Linear) build() (err error) {
 	d := l.draft(nil)
-	var err error
 	l.Net, err = d.b.Build()
 	var faults *Faults
 	if errors.As(err, &faults) {
-		d = l.draft(loose(faults))
+		d = l.draft(l.loose(faults))
 		l.Net, err = d.b.Build()
 	}
 	if err != nil {
-		return nil, err
+		return err
 	}
 	l.Params = l.Net.NewParams()
 	for _, set := range d.set {
 		set(l.Params)
 	}
-	l.waves(p)
+	l.waves()
 	l.start()
-	return l, nil
+	return nil
 }
 
 // freeze sets up the equations of the network at the state.
@@ -98,7 +111,7 @@ func valueAt(w laplace.Waveform, at *State) float64 {
 // stamp evaluates every law at the state.
 func (l *Linear) stamp(p *Params) {
 	g := &l.of.g
-	l.stamps = make([]*Stamp, len(g.elements))
+	l.stamps, l.gone = make([]*Stamp, len(g.elements)), make([]bool, len(g.elements))
 	for i := range g.elements {
 		e := &g.elements[i]
 		s := newStamp(&e.Shape)
@@ -114,8 +127,9 @@ func (l *Linear) stamp(p *Params) {
 		s.Mode = l.at.Modes[i]
 		l.stamps[i] = s
 		m, ok := p.Law[i].(Switching)
+		l.gone[i] = ok && m.Shut(s.Mode)
 		switch {
-		case ok && m.Shut(s.Mode): // it is gone
+		case l.gone[i]:
 		case l.equations.law[i].shut:
 			p.Law[i].Eval(s)
 			s.keepDrives(&e.Shape)
@@ -141,13 +155,34 @@ func (s *Stamp) keepDrives(e *Shape) {
 	}
 }
 
-// loose are the nodes that shut parts leave with nothing to determine them.
-func loose(f *Faults) map[NodeID]bool {
+// loose are the nodes among those of faults that shut parts alone touch: nothing
+// determines them, and they stay where they are.
+func (l *Linear) loose(f *Faults) map[NodeID]bool {
+	g := &l.of.g
 	all := map[NodeID]bool{}
 	for _, fault := range f.List {
-		if fault.Code == Unconnected || fault.Code == Undetermined {
-			for _, id := range fault.Nodes {
+		for _, id := range fault.Nodes {
+			if int(id) < len(g.nodes) && (fault.Code == Unconnected || fault.Code == Undetermined) {
 				all[id] = true
+			}
+		}
+	}
+	for k, b := range g.resistances {
+		if l.from.G[k] != 0 {
+			delete(all, b.from)
+			delete(all, b.to)
+		}
+	}
+	for k, b := range g.inertances {
+		if !l.from.Shut[k] {
+			delete(all, b.from)
+			delete(all, b.to)
+		}
+	}
+	for i := range g.elements {
+		for _, id := range g.elements[i].Ports {
+			if !l.gone[i] && !l.equations.law[i].shut {
+				delete(all, id)
 			}
 		}
 	}
@@ -188,6 +223,7 @@ func (l *Linear) draft(hold map[NodeID]bool) *draft {
 			d.b.Hold(NodeID(i), g.nodes[i].ref)
 		}
 	}
+	d.keep()
 	d.stores()
 	d.branches()
 	for i := range g.elements {
@@ -197,6 +233,24 @@ func (l *Linear) draft(hold map[NodeID]bool) *draft {
 	return d
 }
 
+// keep ties held nodes and unknowns to themselves by a feedback of 0: they are part of the
+// network whether anything acts on them at the state or not.
+func (d *draft) keep() {
+	for i, v := range d.b.g.nodes {
+		if v.held != noInput {
+			d.feedback(v.name, NodeID(i), NodeID(i), 0, v.ref)
+		}
+	}
+	for _, unknowns := range d.l.unknown {
+		for _, node := range unknowns {
+			if node == absent {
+				continue
+			}
+			d.feedback(d.b.g.nodes[node].name, node, node, 0, d.b.g.nodes[node].ref)
+		}
+	}
+}
+
 // inner adds a node for each unknown of an element; those that are states store 1.
 func (d *draft) inner() [][]NodeID {
 	l := d.l
@@ -204,6 +258,10 @@ func (d *draft) inner() [][]NodeID {
 	for i := range all {
 		e := &l.of.g.elements[i]
 		for k, u := range e.Unknowns {
+			if l.tally[i][k] || l.solved[i][k] != nil {
+				all[i] = append(all[i], absent)
+				continue
+			}
 			node := d.b.Node(u.Name+" of "+e.Name, e.ref)
 			all[i] = append(all[i], node)
 			if !l.equations.algebraic(i, k) {
@@ -308,10 +366,13 @@ func (d *draft) element(id ElementID) {
 		}
 	}
 	for r := range rows {
-		if d.l.of.isHeldLocal(e, r) {
+		if d.l.of.isHeldLocal(e, r) || at[r] == absent {
 			continue
 		}
 		for c := range cols {
+			if at[c] == absent {
+				continue
+			}
 			driven := c >= rows // a drive is there whether it acts or not
 			if K := J[r*cols+c]; driven || math.Abs(K) > leftover*s.largest(r) {
 				d.feedback(e.Name, at[r], at[c], K, e.ref)

@@ -3,7 +3,8 @@ package network
 import "lagbook/laplace"
 
 // waves sets the inputs and drives as deviations.
-func (l *Linear) waves(p *Params) {
+func (l *Linear) waves() {
+	p := l.p
 	for k, w := range p.Wave {
 		l.Params.Wave[k] = w.Plus(-valueAt(w, l.at))
 	}
@@ -56,7 +57,7 @@ func (d *draft) sources() {
 		return
 	}
 	add := func(name string, into NodeID, sign, flow float64, r Ref) {
-		if flow != 0 && d.b.g.nodes[into].held == noInput {
+		if flow != 0 {
 			id := d.b.Source("rate of "+name, into, sign, r)
 			d.set = append(d.set, func(p *Params) { p.Wave[id] = laplace.Constant(flow) })
 		}
@@ -66,6 +67,9 @@ func (d *draft) sources() {
 	}
 	for i, unknowns := range l.unknown {
 		for k, node := range unknowns {
+			if node == absent {
+				continue
+			}
 			add(d.b.g.nodes[node].name, node, 1, l.rate[i][k], g.elements[i].ref)
 		}
 	}
@@ -75,13 +79,12 @@ func (d *draft) sources() {
 	}
 }
 
-// start states the start of every store and flow where the beginning is not steady.
+// start states the start: every deviation is 0, and so no steady state is asked for.
 func (l *Linear) start() {
-	if !l.moves {
-		return
-	}
-	l.Params.HasAllStart = true // at deviation 0
+	l.Params.HasAllStart = true
 	for b, lost := range l.lost {
-		l.Params.StartFlow[b], l.Params.HasStartFlow[b] = -lost, true
+		if lost != 0 {
+			l.Params.StartFlow[b], l.Params.HasStartFlow[b] = -lost, true
+		}
 	}
 }

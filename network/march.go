@@ -1,22 +1,21 @@
 package network
 
-import "lagbook/laplace"
-
 // A State is all that a run must know to go on from.
 type State struct {
-	T        float64
-	Levels   []float64   // by NodeID, held nodes included; the network's own, not less the datum
-	Flows    []float64   // by InertanceID
-	Unknowns [][]float64 // by ElementID
-	Mem      [][]float64 // by ElementID
-	Modes    []int       // by ElementID
-	How      StartHow
+	T         float64
+	Levels    []float64   // by NodeID, held nodes included; the network's own, not less the datum
+	Flows     []float64   // by InertanceID
+	Unknowns  [][]float64 // by ElementID
+	Mem       [][]float64 // by ElementID
+	Modes     []int       // by ElementID
+	Beginning bool        // just before t = 0: waves have the values they have before, T is 0
+	How       StartHow
 }
 
 // A Run says how far and how well to march.
 type Run struct {
 	Until   float64     // s
-	RelTol  float64     // of a step; 0: DefaultTolerance
+	RelTol  float64     // of a step; 0: DefaultTolerance; less than 1e-12 counts as that
 	Stopped func() bool // asked at each step; nil: never
 }
 
@@ -38,47 +37,18 @@ type Warned struct {
 	At         float64
 }
 
-// Begin returns the state at t = 0⁻.
-func (n *Network) Begin(p *Params) (*State, error) { panic("network: not built") }
-
-// Operate returns the steady state with every wave at its value at t.
-func (n *Network) Operate(p *Params, t float64, from *State) (*State, error) {
-	panic("network: not built")
-}
-
-// March integrates from a state on.
+// March integrates from a state on and returns the outputs against time. It stops at
+// every bend of a wave and at every event, an instant at which a guard of an element
+// passes through zero, and goes on from there with what then holds; where several
+// fall on one instant they follow one another until no guard is violated.
+//
+// Method: see package stiff; the order is 5, errors are judged in each unknown by
+// RelTol of its size. Cost: for each step one factorisation of the Jacobian and eight
+// solves. The error is *ParamFault, *laplace.TooMany, *MarchFault or ErrStopped.
 func (n *Network) March(p *Params, from *State, outs []Output, run Run) (*Trajectory, error) {
-	panic("network: not built")
+	m, err := n.newMarch(p, from, outs, run)
+	if err != nil {
+		return nil, err
+	}
+	return m.through()
 }
-
-// A Trajectory is what a march came to: the outputs as piecewise polynomials.
-type Trajectory struct{}
-
-func (t *Trajectory) Until() float64                           { panic("network: not built") }
-func (t *Trajectory) At(out int, at float64) float64           { panic("network: not built") }
-func (t *Trajectory) Left(out int, at float64) float64         { panic("network: not built") }
-func (t *Trajectory) Table(at []float64, y [][]float64)        { panic("network: not built") }
-func (t *Trajectory) Breaks() []float64                        { panic("network: not built") }
-func (t *Trajectory) Rounding(out int) float64                 { panic("network: not built") }
-func (t *Trajectory) Final(out int) (float64, bool)            { panic("network: not built") }
-func (t *Trajectory) Integral(out int, t0, t1 float64) float64 { panic("network: not built") }
-func (t *Trajectory) Max(out int, t0, t1 float64) laplace.Extreme {
-	panic("network: not built")
-}
-func (t *Trajectory) Min(out int, t0, t1 float64) laplace.Extreme {
-	panic("network: not built")
-}
-func (t *Trajectory) First(out int, level, t0, t1 float64) (laplace.Root, bool) {
-	panic("network: not built")
-}
-func (t *Trajectory) FirstOutside(out int, lo, hi, t0, t1 float64) (laplace.Root, bool) {
-	panic("network: not built")
-}
-func (t *Trajectory) LastOutside(out int, mid, band, t0, t1 float64) (laplace.Root, bool) {
-	panic("network: not built")
-}
-func (t *Trajectory) Events() []Event              { panic("network: not built") }
-func (t *Trajectory) Cautions() []Warned           { panic("network: not built") }
-func (t *Trajectory) Balance() float64             { panic("network: not built") }
-func (t *Trajectory) End() *State                  { panic("network: not built") }
-func (t *Trajectory) Steps() (taken, rejected int) { panic("network: not built") }

@@ -41,15 +41,26 @@ type ReadingTerm struct {
 	Sign    float64
 }
 
-// An Output is a flow where Flow is not nil, a reading where Reading is not nil, else a
-// weighted sum of levels as they are shown, each less its node's datum. Where the coefficients sum to zero exactly it is a difference: its
-// weights are then formed from differences of levels along the branches.
+// An Output is a flow where Flow is not nil, a reading where Reading is not nil, the sum
+// of Parts where those are not nil, else a weighted sum of levels as they are shown, each
+// less its node's datum; and Constant is added to any of these. Where the coefficients of
+// levels sum to zero exactly it is a difference: its weights are then formed from
+// differences of levels along the branches.
 type Output struct {
 	Name  string
 	Terms []Term
 	Flow  *FlowTerm
 
 	Reading *ReadingTerm
+
+	Parts    []Part
+	Constant float64
+}
+
+// A Part is an output times a coefficient.
+type Part struct {
+	Coef   float64
+	Output Output
 }
 
 // Level returns the output that shows the level of a node.
@@ -89,6 +100,12 @@ func (g *graph) checkOutputs(outs []Output) {
 		if o.Flow != nil {
 			g.checkFlow(o.Flow)
 		}
+		if t := o.Reading; t != nil && (t.Element < 0 || int(t.Element) >= len(g.elements) || t.Index < 0 || t.Index >= len(g.elements[t.Element].Readings)) {
+			panic("network: output names a reading of another network")
+		}
+		for _, p := range o.Parts {
+			g.checkOutputs([]Output{p.Output})
+		}
 		for _, t := range o.Terms {
 			if t.Node < 0 || int(t.Node) >= len(g.nodes) {
 				panic("network: output names a node of another network")
@@ -105,6 +122,8 @@ func (g *graph) checkFlow(f *FlowTerm) {
 		panic("network: output names an inertance of another network")
 	case f.Kind == SupplyFlow && (f.Node < 0 || int(f.Node) >= len(g.nodes) || !g.isHeld(f.Node)):
 		panic("network: output names the supply of a node that is not held")
+	case f.Kind == PortFlow && (f.Element < 0 || int(f.Element) >= len(g.elements) || f.Port < 0 || f.Port >= len(g.elements[f.Element].Ports)):
+		panic("network: output names a port of another network")
 	case f.Kind == SourceFlow && (f.Input < 0 || int(f.Input) >= len(g.inputs) || g.inputs[f.Input].held):
 		panic("network: output names what is not a source of the network")
 	}

@@ -26,7 +26,7 @@ type Params struct {
 	Wave         []laplace.Waveform   // by InputID; the level of a held node, or the flow of a source
 	Start        []float64            // by NodeID; the level at t = 0 where HasStart
 	HasStart     []bool               // by NodeID
-	AllStart     float64              // the level at t = 0 of every node without a start of its own, where HasAllStart
+	AllStart     float64              // the level shown at t = 0 of every node without a start of its own, where HasAllStart
 	StartFlow    []float64            // by InertanceID; the flow at t = 0 where HasStartFlow
 	HasStartFlow []bool               // by InertanceID; without it the flow is the steady one, and 0 where HasAllStart
 	HasAllStart  bool                 // false: those nodes start at the steady state of the values just before t = 0
@@ -200,6 +200,9 @@ func (n *Network) checkWaves(p *Params) []Fault {
 
 func finite(s *laplace.Segment) bool {
 	zero := 0*s.At + 0*s.A + 0*s.B // NaN if one of them is infinite or none
+	for _, c := range s.Poly {
+		zero += 0 * c
+	}
 	for _, e := range s.Exp {
 		zero += 0*real(e.Amplitude) + 0*imag(e.Amplitude) + 0*real(e.Rate) + 0*imag(e.Rate)
 	}

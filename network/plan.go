@@ -35,6 +35,10 @@ const none int32 = -1
 
 func newPlan(g *graph) *plan {
 	pl := &plan{pos: make([]int32, len(g.nodes)), island: make([]int, len(g.nodes))}
+	if g.nonlinear() {
+		pl.list(g)
+		return pl
+	}
 	e := newOrdering(g)
 	joints := g.joints()
 	last := make(map[NodeID]bool, len(joints)) // those that stand for a joint
@@ -61,6 +65,25 @@ func newPlan(g *graph) *plan {
 	pl.findIslands(g)
 	pl.flows = newFlowPlan(g, pl, joints)
 	return pl
+}
+
+// list gives positions without an elimination: a network with laws that are not linear
+// has equations in its place.
+func (pl *plan) list(g *graph) {
+	take := func(class func(NodeID) bool) int {
+		for i := range g.nodes {
+			if class(NodeID(i)) {
+				pl.pos[i] = int32(len(pl.order))
+				pl.order = append(pl.order, NodeID(i))
+			}
+		}
+		return len(pl.order)
+	}
+	pl.massless = take(g.isMassless)
+	pl.free = take(func(n NodeID) bool { return !g.isHeld(n) && !g.isMassless(n) })
+	pl.stores = pl.free - pl.massless
+	take(g.isHeld)
+	pl.findIslands(g)
 }
 
 // An ordering chooses the order of elimination on bit patterns: row[i] holds the

@@ -64,7 +64,7 @@ func (p *Params) startOf(n NodeID) (float64, bool) {
 	if p.HasStart[n] {
 		return p.Start[n], true
 	}
-	return p.AllStart, p.HasAllStart
+	return p.AllStart + p.Datum[n], p.HasAllStart
 }
 
 // deviation returns the level of position j relative to the reference of island k,

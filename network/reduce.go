@@ -45,6 +45,9 @@ type Reduction struct {
 // shut beside inertances, so that it may be called for many sets of numbers. The
 // Params are only read.
 func (n *Network) Reduce(p *Params, outs []Output) (*Reduction, error) {
+	if n.g.nonlinear() {
+		return nil, n.notLinear("transfer functions")
+	}
 	n.g.checkOutputs(outs)
 	whole := n
 	n, err := n.inForce(p)

@@ -24,7 +24,10 @@ func (n *Network) newRest(p *Params) *rest {
 		g.inputs[k].node = r.of[g.inputs[k].node]
 	}
 	r.p = &Params{C: p.C, Wave: p.Wave, AllStart: p.AllStart, HasAllStart: p.HasAllStart,
-		Start: make([]float64, len(g.nodes)), HasStart: make([]bool, len(g.nodes))}
+		Start: make([]float64, len(g.nodes)), HasStart: make([]bool, len(g.nodes)), Datum: make([]float64, len(g.nodes))}
+	for k, members := range r.nodes {
+		r.p.Datum[k] = p.Datum[members[0]]
+	}
 	for i, has := range p.HasStart {
 		if has {
 			r.p.Start[r.of[i]], r.p.HasStart[r.of[i]] = p.Start[i], true

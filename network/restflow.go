@@ -165,6 +165,9 @@ func (r *rest) loops(p *Params, k int, b branch) bool {
 // by InertanceID. What circulates among inertances without resistance, which
 // nothing determines, is left out.
 func (n *Network) SteadyFlows(p *Params, u []float64) ([]float64, error) {
+	if n.g.nonlinear() {
+		return nil, n.notLinear("the steady state of a linear network")
+	}
 	if len(u) != len(n.g.inputs) {
 		panic("network: one value for each input")
 	}

@@ -49,6 +49,9 @@ func (s *StartState) moves() bool {
 // Where p.StartCycle is set it is the periodic state just before t = 0, with the
 // errors of Reduction.Cycle.
 func (n *Network) Start(p *Params) (*StartState, error) {
+	if n.g.nonlinear() {
+		return nil, n.notLinear("the start of a linear network")
+	}
 	if p.StartCycle {
 		return n.cycleStart(p)
 	}

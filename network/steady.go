@@ -18,6 +18,9 @@ import (
 // subtraction where there is no feedback; levels as differences from that of a held
 // node of the same island, so that a network at rest stays at rest exactly.
 func (n *Network) SteadyState(p *Params, u []float64) ([]float64, error) {
+	if n.g.nonlinear() {
+		return nil, n.notLinear("the steady state of a linear network")
+	}
 	if len(u) != len(n.g.inputs) {
 		panic("network: one value for each input")
 	}

@@ -3,10 +3,36 @@ package network
 // outputWeights turns an output into weights on the stores, the flows of inertances
 // and the inputs.
 func (n *Network) outputWeights(e *exchange, p *Params, o *Output, f *flows) weights {
+	w := n.ownWeights(e, p, o)
+	if f != nil {
+		f.settle(&w)
+	}
+	return w
+}
+
+// ownWeights are those before flows and joints take the place of what they settle.
+func (n *Network) ownWeights(e *exchange, p *Params, o *Output) weights {
 	var w weights
 	switch {
-	case o.Flow == nil || o.Flow.Kind == ResistanceFlow:
+	case o.Parts != nil:
+		w = n.noWeights()
+		for k := range o.Parts {
+			v := n.ownWeights(e, p, &o.Parts[k].Output)
+			w.include(o.Parts[k].Coef, &v)
+		}
+	case o.Reading != nil:
+		terms, constant := n.affine(p, o.Reading)
+		w = e.weightsOf(n.plan, &n.g, p, &Output{Terms: terms})
+		w.constant = constant
+	case o.Flow == nil:
 		w = e.weightsOf(n.plan, &n.g, p, o)
+		for _, t := range o.Terms {
+			w.constant -= t.Coef * p.Datum[t.Node]
+		}
+	case o.Flow.Kind == ResistanceFlow:
+		w = e.weightsOf(n.plan, &n.g, p, o)
+	case o.Flow.Kind == PortFlow:
+		w = n.noWeights() // of a passive element
 	case o.Flow.Kind == InertanceFlow:
 		w = n.noWeights()
 		w.carry(n, o.Flow.Inertance, o.Flow.Sign)
@@ -17,9 +43,7 @@ func (n *Network) outputWeights(e *exchange, p *Params, o *Output, f *flows) wei
 	default:
 		w = n.supply(e, p, o.Flow)
 	}
-	if f != nil {
-		f.settle(&w)
-	}
+	w.constant += o.Constant
 	return w
 }
 
@@ -44,6 +68,25 @@ func (w *weights) plus(k float64, v *weights) {
 		w.flow[i] += k * x
 	}
 	w.sum += k * v.sum
+}
+
+// include adds k times all of the weights v. What is added up so may cancel.
+func (w *weights) include(k float64, v *weights) {
+	w.plus(k, v)
+	w.inert, w.direct, w.rate = summed(w.inert, k, v.inert), summed(w.direct, k, v.direct), summed(w.rate, k, v.rate)
+	w.constant += k * v.constant
+	w.rounded = true
+}
+
+// summed returns a + k·b, each nil where it is nothing.
+func summed(a []float64, k float64, b []float64) []float64 {
+	if b != nil && a == nil {
+		a = make([]float64, len(b))
+	}
+	for i, x := range b {
+		a[i] += k * x
+	}
+	return a
 }
 
 // supply returns the weights of what the driver of a held node delivers into it:

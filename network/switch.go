@@ -102,7 +102,7 @@ func (r *Reduction) reference(p *Params) (*StartState, error) {
 		return start, err
 	}
 	level := p.Clone()
-	level.HasAllStart = true
+	level.HasAllStart, level.Datum = true, make([]float64, len(p.Datum))
 	for k, in := range r.net.g.inputs {
 		if in.held {
 			level.AllStart = p.Wave[k].Before

@@ -1,5 +1,7 @@
 package network
 
+import "slices"
+
 // A Network is a checked graph with the plan of its reduction. It never changes
 // and may be used by several goroutines at once.
 type Network struct {
@@ -15,9 +17,9 @@ type NodeView struct {
 	Ref        Ref
 	Held       bool
 	Input      InputID      // of a held node, else −1
-	Massless   bool         // neither held nor with a capacity
+	Massless   bool         // neither held nor with a capacity or an element that stores
 	Capacities []CapacityID // what adds up to its capacity
-	Neighbours []NodeID     // that a branch joins it to, ascending
+	Neighbours []NodeID     // that a branch or an element joins it to, ascending
 	Island     int          // free nodes that influence one another, directly or not, share an island; −1 for a held node
 }
 
@@ -83,7 +85,7 @@ func (n *Network) Node(id NodeID) NodeView {
 	return NodeView{
 		ID: id, Name: v.name, Ref: v.ref,
 		Held: v.held != noInput, Input: v.held,
-		Massless:   v.held == noInput && len(v.capacities) == 0,
+		Massless:   n.g.isMassless(id),
 		Capacities: append([]CapacityID(nil), v.capacities...),
 		Neighbours: n.neighbours(id),
 		Island:     n.plan.island[id],
@@ -99,6 +101,21 @@ func (n *Network) neighbours(id NodeID) []NodeID {
 				touches[b.to] = true
 			case b.to:
 				touches[b.from] = true
+			}
+		}
+	}
+	for i := range n.g.elements {
+		if e := &n.g.elements[i]; !e.Passive && slices.Contains(e.Ports, id) {
+			for _, port := range e.Ports {
+				touches[port] = true
+			}
+		}
+	}
+	for i := range n.g.elements {
+		ports := n.g.elements[i].Ports
+		if slices.Contains(ports, id) {
+			for _, other := range ports {
+				touches[other] = true
 			}
 		}
 	}

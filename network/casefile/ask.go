@@ -5,6 +5,8 @@ import (
 	"math"
 	"strconv"
 	"strings"
+	"unicode"
+	"unicode/utf8"
 
 	"lagbook/network/quantity"
 )
@@ -32,6 +34,12 @@ var tableFields = []Field{
 // questions reads what is asked.
 func (r *reader) questions(asked []*key) {
 	for _, k := range asked {
+		if k.name == "result" {
+			r.nameResults(k)
+		}
+	}
+	r.readResults()
+	for _, k := range asked {
 		switch k.name {
 		case "print":
 			r.print(k)
@@ -44,6 +52,12 @@ func (r *reader) questions(asked []*key) {
 			r.each(k, r.table)
 		case "limit":
 			r.limits(k)
+		case "find":
+			r.finds(k)
+		case "measured":
+			r.measurements(k)
+		case "scenario":
+			r.scenarios(k, asked)
 		}
 	}
 }
@@ -74,11 +88,14 @@ func (r *reader) each(k *key, read func(o owner, n *node)) {
 // transfer reads one [[transfer]].
 func (r *reader) transfer(o owner, n *node) {
 	f := fielder{r: r, o: o, word: "transfer", header: n.span}
-	list, _, ok := f.fields(n, transferFields, nil)
-	ask := AskTransfer{Ref: r.c.ref(n.span, o)}
+	list, source, ok := f.fields(n, transferFields, nil)
+	ask := AskTransfer{Source: source, Ref: r.c.ref(n.span, o)}
 	for i := range list {
 		x := &list[i]
 		if x.n.kind != kindString || x.n.text == "" {
+			if x.name == "about" {
+				ok = r.aboutTime(o, x.n, &ask) && ok
+			}
 			continue
 		}
 		if x.name == "from" {
@@ -89,13 +106,16 @@ func (r *reader) transfer(o owner, n *node) {
 		}
 		var good bool
 		if x.name == "about" {
-			if x.n.text != "start" {
-				ask.About, good = r.number(o, x.n, &Field{Name: "about", Dim: dimTime, HasMin: true})
-				ask.HasAbout, ok = good, ok && good
-			}
+			good = r.aboutTime(o, x.n, &ask)
+			ok = ok && good
 			continue
 		}
 		ask.To, good = r.shown(o, x.n)
+		if good && ask.To.Result != "" {
+			r.at(x.n.span, Diagnostic{Code: "kinds", Thing: o.thing(), Text: fmt.Sprintf("%s is a result: a transfer goes to a node, a difference of two or a reading", quoted(x.n.text)),
+				Hint: "ask for the transfers to what it is made of"})
+			good = false
+		}
 		ok = ok && good
 	}
 	if ok {
@@ -103,11 +123,28 @@ func (r *reader) transfer(o owner, n *node) {
 	}
 }
 
+// aboutTime reads the moment about which a transfer is linearised: "start" or a time.
+func (r *reader) aboutTime(o owner, n *node, ask *AskTransfer) bool {
+	if n.text == "start" {
+		return true
+	}
+	if first, _ := utf8.DecodeRuneInString(n.text); n.kind == kindString && unicode.IsLetter(first) {
+		d := Diagnostic{Code: "unknown-word", Thing: o.thing(), Text: "about is " + quoted(n.text) + "; expected \"start\" or a time, like \"2 s\""}
+		if near, ok := quantity.Nearest(n.text, []string{"start"}); ok {
+			d.Fix = basic(near)
+		}
+		r.at(n.span, d)
+		return false
+	}
+	ask.About, ask.HasAbout = r.number(o, n, &Field{Name: "about", Dim: dimTime, HasMin: true})
+	return ask.HasAbout && r.inRun(o, n, "about", r.c.slots[ask.About].si)
+}
+
 // table reads one [[table]].
 func (r *reader) table(o owner, n *node) {
 	f := fielder{r: r, o: o, word: "table", header: n.span}
-	list, _, ok := f.fields(n, tableFields, [][]string{{"times", "every"}})
-	ask := AskTable{Ref: r.c.ref(n.span, o)}
+	list, source, ok := f.fields(n, tableFields, [][]string{{"times", "every"}})
+	ask := AskTable{Source: source, Ref: r.c.ref(n.span, o)}
 	for i := range list {
 		x := &list[i]
 		switch x.name {
@@ -163,7 +200,9 @@ func (r *reader) rises(o owner, above *node, shown []Shown) bool {
 	for _, s := range shown {
 		text := ""
 		switch {
-		case s.Kind != quantity.Level:
+		case s.Result != "" && s.Kind == quantity.Level:
+			text = fmt.Sprintf("above goes with nodes; %s is a result, whose expression may subtract %s", quoted(s.Text), quoted(above.text))
+		case s.Kind != quantity.Level || s.Node == "":
 			text = fmt.Sprintf("above goes with levels; %s is none", quoted(s.Text))
 		case base != nil && s.Dim != r.measures(base).Level:
 			text = fmt.Sprintf("%s and %s are of two domains: their levels have no difference", quoted(s.Text), quoted(above.text))

@@ -48,3 +48,34 @@ func BenchmarkEval(b *testing.B) {
 		}
 	}
 }
+
+// BenchmarkUnder computes a case under a scenario: the cost of its numbers and waveforms.
+func BenchmarkUnder(b *testing.B) {
+	text := "[given]\nload = \"7 W\"\n" + good + "[thermal.source.lamp]\ninto = \"case\"\ndrive = \"= load\"\n[scenario.s]\nset = { load = \"9 W\" }\n"
+	c, diags := casefile.Read("case.toml", []byte(text), nil, testVocabulary()...)
+	if diags != nil {
+		b.Fatal(casefile.Listing(diags))
+	}
+	for b.Loop() {
+		if _, diags := c.Under(&c.Questions.Scenarios[0], nil); diags != nil {
+			b.Fatal(diags)
+		}
+	}
+}
+
+// BenchmarkResultExpr computes the expression of a result once, as a march does at every
+// instant it looks at.
+func BenchmarkResultExpr(b *testing.B) {
+	c, diags := casefile.Read("case.toml", []byte(good+"[result.r]\nexpression = \"= (case - room) / 2 + 1 K\"\n"), nil, testVocabulary()...)
+	if diags != nil {
+		b.Fatal(casefile.Listing(diags))
+	}
+	v, _ := c.Eval(nil)
+	r, _ := c.ResultNamed("r")
+	x := []float64{300, 290}
+	for b.Loop() {
+		if r.Expr.Eval(x, v) != 6 {
+			b.Fatal("it comes to something else")
+		}
+	}
+}

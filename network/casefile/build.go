@@ -2,7 +2,6 @@ package casefile
 
 import (
 	"errors"
-	"strings"
 
 	"lagbook/network"
 	"lagbook/network/quantity"
@@ -33,6 +32,7 @@ func (r *reader) build() {
 	net, err := b.Build()
 	if err == nil {
 		r.c.net = net
+		r.c.noteFlows()
 		r.remarks(net)
 		return
 	}
@@ -40,7 +40,9 @@ func (r *reader) build() {
 }
 
 func (r *reader) buildOne(e *Element, b *network.Builder) {
-	if e.faulty || r.leans(e, e.fields) {
+	r.scope = e.use
+	defer func() { r.scope = nil }()
+	if e.faulty || r.unready[e.domain] || r.leans(e, e.fields) {
 		if !e.faulty {
 			e.faulty = true
 			r.blamed[e.Name] = true
@@ -66,7 +68,7 @@ func (r *reader) leans(e *Element, list []entry) bool {
 		x := &list[i]
 		switch {
 		case x.field.Refers == "":
-			if (x.field.Type == Group || x.field.Type == Groups) && r.leans(e, x.list) {
+			if x.holdsFields() && r.leans(e, x.list) {
 				return true
 			}
 		case x.field.Type == Name:
@@ -142,64 +144,6 @@ func (r *reader) touches(f network.Fault) bool {
 	return false
 }
 
-// Words for the codes of package network; the codes themselves are numbers.
-var faultWords = map[network.FaultCode]struct{ code, hint string }{
-	network.Empty:            {"empty", "add a node"},
-	network.Unconnected:      {"unconnected", "join it to another node, or remove it"},
-	network.SelfLoop:         {"self-loop", ""},
-	network.HeldTwice:        {"held-twice", ""},
-	network.Undetermined:     {"undetermined", "give one of them a capacitance, hold it, or join it to a node that has either"},
-	network.BadNumber:        {"range", ""},
-	network.Unbalanced:       {"unbalanced", "what enters a node in streams must leave it, and the other way round"},
-	network.SingularMassless: {"singular", "give the node a capacitance"},
-	network.FlippedMassless:  {"singular", "give the node a capacitance"},
-	network.OutOfRange:       {"range", ""},
-	network.StartOfNoStore:   {"start-of-no-store", "only a node with a capacitance has a start of its own"},
-	network.HeldCapacity:     {"held-capacity", ""},
-	network.NoEffect:         {"no-effect", ""},
-}
-
-// fault turns a fault of the network into a diagnostic with a place.
-func (c *Case) fault(f network.Fault) Diagnostic {
-	w, ok := faultWords[f.Code]
-	if !ok {
-		w.code = "network"
-	}
-	ref := network.NoRef
-	for _, candidate := range f.Refs {
-		if candidate >= 0 {
-			ref = candidate
-			break
-		}
-	}
-	if f.Code == network.Empty {
-		w.hint += c.likeNode()
-	}
-	d := c.Diagnose(ref, w.code, f.Text, c.inWords(ref, w.hint))
-	d.Thing = "" // the text names the parts
-	return d
-}
-
-// likeNode shows how a node is written.
-func (c *Case) likeNode() string {
-	for i := range c.voc {
-		if d := c.voc[i].Domain; d != "" {
-			return ", like [" + d + ".node.NAME]"
-		}
-	}
-	return ""
-}
-
-// inWords puts a hint about a capacitance in the words of the domain it is about.
-func (c *Case) inWords(ref network.Ref, hint string) string {
-	if ref >= 0 && int(ref) < len(c.refs) && c.refs[ref].e != nil {
-		if key := c.Measures(c.refs[ref].e.domain).StoreKey; key != "" {
-			return strings.ReplaceAll(hint, "capacitance", key)
-		}
-	}
-	return hint
-}
-
 // remarks warns of what is legal and worth a word.
 func (r *reader) remarks(net *network.Network) {
 	for _, f := range net.Remarks() {
@@ -207,53 +151,4 @@ func (r *reader) remarks(net *network.Network) {
 		d.Severity = Warning
 		r.report(d)
 	}
-}
-
-// Explain turns an error of network, or of a setter, into diagnostics with
-// places. An error that knows no place becomes one about the whole case.
-func (c *Case) Explain(err error) []Diagnostic {
-	if err == nil {
-		return nil
-	}
-	if many, ok := err.(interface{ Unwrap() []error }); ok {
-		var list []Diagnostic
-		for _, e := range many.Unwrap() {
-			list = append(list, c.Explain(e)...)
-		}
-		return inFileOrder(list)
-	}
-	var (
-		one    Diagnostic
-		faults *network.Faults
-		params *network.ParamFault
-		steady *network.NoSteady
-		cycle  *network.NoCycle
-		list   []Diagnostic
-	)
-	switch {
-	case errors.As(err, &one):
-		return []Diagnostic{one}
-	case errors.As(err, &faults):
-		for _, f := range faults.List {
-			list = append(list, c.fault(f))
-		}
-	case errors.As(err, &params):
-		for _, f := range params.List {
-			list = append(list, c.fault(f))
-		}
-	case errors.As(err, &steady):
-		for _, f := range steady.List {
-			g := network.Fault{Refs: f.Refs, Text: f.Text}
-			d := c.fault(g)
-			d.Code, d.Hint = "no-steady-state", `state where it starts with [run] start, or start at the nodes`
-			list = append(list, d)
-		}
-	case errors.As(err, &cycle):
-		d := c.fault(network.Fault{Refs: cycle.Refs, Text: "there is no steady cycle: " + cycle.Text})
-		d.Code, d.Hint = "no-cycle", ""
-		list = append(list, d)
-	default:
-		return []Diagnostic{{File: c.File, Code: "not-computed", Text: err.Error()}}
-	}
-	return inFileOrder(list)
 }

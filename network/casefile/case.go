@@ -21,21 +21,39 @@ type Case struct {
 	Elements   []*Element // in file order
 	Questions  Questions
 
-	src     *source
-	heads   map[string]*Element // by domain
-	voc     []Vocabulary
-	refs    []place
-	byName  map[elementName]*Element
-	givens  []given
-	order   []int // of givens, so that each comes after those it uses
-	slots   []slot
-	moving  []Slot // those that depend on given values
-	waves   []wave
+	src    *source
+	heads  map[string]*Element // by domain
+	voc    []Vocabulary
+	refs   []place
+	byName map[elementName]*Element
+	givens []given
+	order  []int // of givens, so that each comes after those it uses
+	slots  []slot
+	moving []Slot // those that depend on given values
+	waves  []wave
+
+	profiles     []profile
+	profileIndex map[string]int
+	curves       []*curve            // of profiles, as written
+	horizon      float64             // s; sampled waveforms go so far at least
+	inSteps      map[WaveSlot]string // waveforms of profiles that must change in steps, and why
+
 	nodes   map[string]network.NodeID
+	shows   map[showing]network.Output // that elements registered
+	flows   map[string]network.Output  // that the network knows by itself, by full name
+	inputs  map[string]bool            // sources and held nodes, by full name
+	drives  map[string]driven
+	kept    map[string]any
+	rising  []climb         // of which some number may vary
+	sums    []meanSum       // of which some weight may vary
+	warned  map[string]bool // what Read has warned of already
 	net     *network.Network
 	setters []Setter
 	faults  []Diagnostic // of building
 	files   []string     // read beside it
+	uses    []*use       // of parts, those in a part behind the use of it
+
+	useNamed, useWords map[string]*use // by full name, by what messages say
 }
 
 // Files returns the names of the data files that the case reads, as it states them.
@@ -77,8 +95,10 @@ func (c *Case) Element(table, name string) (*Element, bool) {
 			if t.Name != table && (domain == "" || domain+"."+t.Name != table) {
 				continue
 			}
-			if e := c.byName[elementKey(domain, t.Name, name)]; e != nil && e.Table == t {
-				return e, true
+			for _, key := range []elementName{elementKey(domain, t.Name, name), besideKey(domain, name)} {
+				if e := c.byName[key]; e != nil && e.Table == t {
+					return e, true
+				}
 			}
 		}
 	}
@@ -149,16 +169,20 @@ func (c *Case) constant(v float64) Slot {
 // as GivenValues returns them; nil means as written. A Given that is an
 // expression is worked out anew from the others: its entry is not looked at.
 // Ranges are checked again, so that a value varied beyond them is a diagnostic.
-func (c *Case) Eval(given []quantity.Value) (Values, []Diagnostic) {
-	var diags []Diagnostic
-	known := c.GivenValues()
+// Warnings that Read gave are not given again.
+func (c *Case) Eval(given []quantity.Value) (Values, []Diagnostic) { return c.evalWith(given, nil) }
+
+// evalNumbers computes all slots and makes room for the waveforms; known are the given
+// values, the derived ones worked out.
+func (c *Case) evalNumbers(given []quantity.Value, fixed ...bool) (v Values, known []quantity.Value, diags []Diagnostic) {
+	known = c.GivenValues()
 	if given != nil {
 		if len(given) != len(c.givens) {
 			panic("casefile: Eval needs one value for each Given")
 		}
-		known, diags = c.derive(given)
+		known, diags = c.derive(given, fixed)
 	}
-	v := Values{Num: make([]float64, len(c.slots)), Wave: make([]laplace.Waveform, len(c.waves))}
+	v = Values{Num: make([]float64, len(c.slots)), Wave: make([]laplace.Waveform, len(c.waves))}
 	for i := range c.slots {
 		v.Num[i] = c.slots[i].si
 	}
@@ -171,25 +195,36 @@ func (c *Case) Eval(given []quantity.Value) (Values, []Diagnostic) {
 			v.Num[i] = si
 		}
 	}
-	if diags != nil {
-		return v, inFileOrder(diags)
-	}
-	for i := range c.waves {
-		w := &c.waves[i]
-		if given == nil || w.fixed {
-			v.Wave[i] = w.made
-			continue
+	for i := range c.rising {
+		if d := c.climbs(&c.rising[i], func(s Slot) float64 { return v.Num[s] }); d != nil && given != nil && diags == nil {
+			diags = append(diags, *d)
 		}
-		made, d := c.makeWave(w, v.Num)
-		diags = append(diags, d...)
-		v.Wave[i] = made
 	}
-	if diags == nil && c.net != nil {
-		for i := range c.voc {
-			if check := c.voc[i].Check; check != nil {
-				diags = append(diags, check(c, v)...)
+	if given != nil && diags == nil {
+		diags = c.unbalanced(&v)
+	}
+	return v, known, diags
+}
+
+// warn notes warnings that Read gives, so that no Eval gives them again.
+func (c *Case) warn(diags []Diagnostic) {
+	for _, d := range diags {
+		if d.Severity == Warning {
+			if c.warned == nil {
+				c.warned = map[string]bool{}
 			}
+			c.warned[d.Error()] = true
 		}
 	}
-	return v, inFileOrder(diags)
+}
+
+// news leaves out the warnings that Read gave.
+func (c *Case) news(diags []Diagnostic) []Diagnostic {
+	var list []Diagnostic
+	for _, d := range diags {
+		if d.Severity != Warning || !c.warned[d.Error()] {
+			list = append(list, d)
+		}
+	}
+	return list
 }

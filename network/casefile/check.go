@@ -31,7 +31,11 @@ func (r *reader) domainTables(k *key) bool {
 // domain reads [domain.table.NAME].
 func (r *reader) domain(v *Vocabulary, k *key) {
 	if k.value.kind != kindTable {
-		r.wrongType(owner{}, k.value, &Field{Name: k.name}, "tables like ["+k.name+"."+v.Tables[0].Name+".NAME]")
+		want := "a table, [" + k.name + "]"
+		if len(v.Tables) > 0 {
+			want = "tables like [" + k.name + "." + v.Tables[0].Name + ".NAME]"
+		}
+		r.wrongType(owner{}, k.value, &Field{Name: k.name}, want)
 		return
 	}
 	for i := range k.value.table.keys {
@@ -49,6 +53,9 @@ func (r *reader) domain(v *Vocabulary, k *key) {
 			continue
 		}
 		d := Diagnostic{Code: "unknown-key", Text: quoted(t.name) + " is not a part of [" + v.Domain + "]"}
+		if len(v.Tables) == 0 {
+			d.Text = quoted(t.name) + " is not a key of [" + v.Domain + "]"
+		}
 		if near, ok := quantity.Nearest(t.name, v.tableNames()); ok {
 			d.Fix = near
 		} else {
@@ -82,7 +89,7 @@ func (v *Vocabulary) tableNames() []string {
 func (r *reader) elements(v *Vocabulary, t *Table, k *key) {
 	head := t.Name
 	if v.Domain != "" {
-		head = v.Domain + "." + t.Name
+		head = r.scope.heading() + v.Domain + "." + t.Name
 	}
 	if k.value.kind != kindTable {
 		r.blame(k.value)
@@ -118,24 +125,23 @@ func (r *reader) element(v *Vocabulary, t *Table, head string, k *key) {
 		return
 	}
 	e := r.newElement()
-	*e = Element{Name: k.name, Table: t, c: r.c, domain: v.Domain, header: k.span}
+	*e = Element{Name: r.scope.in(k.name), Table: t, c: r.c, domain: v.Domain, use: r.scope, header: k.span}
 	o := owner{e: e}
 	e.Ref = r.c.ref(k.span, o)
 	named := r.checkName(k, o)
-	key := elementKey(v.Domain, t.Name, k.name)
-	if first := r.c.byName[key]; first != nil {
-		r.second[tablePath(v.Domain, t.Name)+"."+k.name] = true
-		d := Diagnostic{Code: "defined-twice", Thing: e.Thing(), Text: fmt.Sprintf("the name is taken by the %s on line %s",
-			first.Table.Name, r.line(first.header)), Hint: "the parts of a domain share one set of names"}
-		r.at(k.span, d)
-		named = false
-	} else {
-		r.c.byName[key] = e
-	}
 	f := fielder{r: r, o: o, v: v, word: t.Name, header: k.span}
 	var ok bool
 	e.fields, e.source, ok = f.fields(k.value, t.Fields, t.OneOf)
-	if e.faulty = !ok || !named; e.faulty {
+	if first := r.c.enter(e); first != nil {
+		r.second[tablePath(v.Domain, t.Name)+"."+e.Name] = true
+		r.taken(k, e, first)
+		named = false
+	}
+	if e.use != nil {
+		r.lodge(e)
+	}
+	if e.faulty = e.faulty || !ok || !named; e.faulty {
+		e.use.wound()
 		r.blamed[e.Name] = true
 		r.blame(k.value)
 	}

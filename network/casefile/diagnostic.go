@@ -2,6 +2,7 @@ package casefile
 
 import (
 	"fmt"
+	"slices"
 	"sort"
 	"strings"
 	"unicode"
@@ -132,10 +133,11 @@ func Failed(list []Diagnostic) bool {
 	return false
 }
 
-// inFileOrder sorts by place, keeping the order of finding where places are equal.
+// inFileOrder sorts by place, keeping the order of finding where places are equal. What
+// is said twice of one place, by two parts that find it wrong, is said once.
 func inFileOrder(list []Diagnostic) []Diagnostic {
 	sort.SliceStable(list, func(i, j int) bool { return list[i].at < list[j].at })
-	return list
+	return slices.Compact(list)
 }
 
 // A span is a stretch of the text, in bytes.

@@ -19,6 +19,7 @@ type Element struct {
 
 	c      *Case
 	domain string
+	use    *use // in whose part it stands, nil for the case itself
 	header span
 	fields []entry
 	source string
@@ -33,8 +34,18 @@ type entry struct {
 	slot   Slot   // Number, Count
 	wave   WaveSlot
 	source string  // stated beside the value, or beside the group
-	list   []entry // fields of a Group; items of Names, Pairs and Groups
+	list   []entry // fields of a Group or of Or; items of Names, Numbers, Pairs and Groups; the points of a value
+	form   form    // what stands there
 }
+
+// form tells what stands in the place of a value.
+type form uint8
+
+const (
+	plainValue form = iota
+	orTable         // a table with the keys of Or
+	pointList       // points against something else
+)
 
 // noSlot stands where a field has no value.
 const noSlot = -1
@@ -47,7 +58,7 @@ func (e *Element) Thing() string {
 	if e.Name == "" {
 		return e.Table.Name // keys in [domain] itself
 	}
-	return e.Table.Name + " " + quoted(e.Name)
+	return e.Table.Name + " " + quoted(e.Name) + e.use.said()
 }
 
 // Source is where the element's data come from, as stated beside it, or "".
@@ -74,11 +85,33 @@ func (e *Element) SourceOf(path string) string {
 // Has reports whether a field is stated.
 func (e *Element) Has(path string) bool { return e.find(path) != nil }
 
+// Plain reports whether a field is stated as its plain value: neither as a table with
+// the keys of Or nor as points.
+func (e *Element) Plain(path string) bool {
+	x := e.find(path)
+	return x != nil && x.form == plainValue
+}
+
 // Num returns the slot of a Number.
-func (e *Element) Num(path string) Slot { return e.must(path).slot }
+func (e *Element) Num(path string) Slot {
+	s := e.must(path).slot
+	if s == noSlot && !e.faulty {
+		panic("casefile: a number was asked for where something else stands")
+	}
+	return s
+}
+
+// Flag returns what a Flag says, false where it is not stated.
+func (e *Element) Flag(path string) bool { return e.Text(path) == "true" }
 
 // DimOf returns the dimension of a Number whose field allows several.
-func (e *Element) DimOf(path string) quantity.Dim { return e.c.slots[e.must(path).slot].dim }
+func (e *Element) DimOf(path string) quantity.Dim {
+	s := e.Num(path)
+	if s == noSlot {
+		return e.must(path).field.Dim
+	}
+	return e.c.slots[s].dim
+}
 
 // NumOr returns the slot of a Number, or a slot that always holds v (SI) where
 // the case does not state it. It is for Table.Build: each call may add a slot.
@@ -90,10 +123,22 @@ func (e *Element) NumOr(path string, v float64) Slot {
 }
 
 // Count returns a whole number; it is structural and never changes.
-func (e *Element) Count(path string) int { return int(e.c.slots[e.must(path).slot].si) }
+func (e *Element) Count(path string) int {
+	s := e.Num(path)
+	if s == noSlot {
+		return 0
+	}
+	return int(e.c.slots[s].si)
+}
 
 // Wave returns the slot of a waveform.
-func (e *Element) Wave(path string) WaveSlot { return e.must(path).wave }
+func (e *Element) Wave(path string) WaveSlot {
+	w := e.must(path).wave
+	if w == noSlot && !e.faulty {
+		panic("casefile: a waveform was asked for where something else stands")
+	}
+	return w
+}
 
 // Len returns the number of items of a list, 0 where it is not stated.
 func (e *Element) Len(path string) int {
@@ -116,8 +161,14 @@ func (e *Element) Text(path string) string {
 	return x.n.text
 }
 
-// Word returns the word of a Word field, "" where it is not stated.
-func (e *Element) Word(path string) string { return e.Text(path) }
+// Word returns the word of a Word field, "" where it is not stated or something else
+// stands in its place.
+func (e *Element) Word(path string) string {
+	if !e.Plain(path) {
+		return ""
+	}
+	return e.Text(path)
+}
 
 // NameOf returns the name a Name field holds, "" where it is not stated.
 func (e *Element) NameOf(path string) string { return e.Text(path) }
@@ -159,10 +210,14 @@ func (e *Element) RefOf(path string) network.Ref {
 	return e.Ref
 }
 
-// must returns the entry of a field that is stated.
+// must returns the entry of a field that is stated. Of a part at fault some are
+// missing, and a part that is not may ask for them, whose setter is never called.
 func (e *Element) must(path string) *entry {
 	x := e.find(path)
-	if x == nil {
+	switch {
+	case x == nil && e.faulty:
+		return &entry{field: &Field{}, slot: noSlot, wave: noSlot}
+	case x == nil:
 		panic("casefile: a field was asked for that the case does not state")
 	}
 	return x
@@ -214,4 +269,10 @@ func oneLine(s string) string {
 		return strings.Join(strings.Fields(s), " ")
 	}
 	return s
+}
+
+// holdsFields reports whether an entry has fields below it: of a group, of the groups
+// of a list, or of what stands in the place of a value.
+func (x *entry) holdsFields() bool {
+	return x.field.Type == Group || x.field.Type == Groups || x.form == orTable
 }

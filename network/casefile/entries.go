@@ -11,6 +11,9 @@ import (
 // entry reads the value of one field.
 func (f fielder) entry(n *node, field *Field) (x entry, ok bool) {
 	x = entry{field: field, name: field.Name, n: n, slot: noSlot, wave: noSlot}
+	if ok, is := f.instead(n, field, &x); is {
+		return x, ok
+	}
 	switch field.Type {
 	case Number:
 		if n.kind == kindTable {
@@ -23,6 +26,10 @@ func (f fielder) entry(n *node, field *Field) (x entry, ok bool) {
 		x.slot, ok = f.r.number(f.o, n, field)
 	case Count:
 		x.slot, ok = f.count(n, field)
+	case Numbers:
+		x.list, ok = f.numbers(n, field)
+	case Flag:
+		ok = f.flag(n, field)
 	case Name, Text, Word:
 		ok = f.text(n, field)
 	case Names:
@@ -53,9 +60,6 @@ func (r *reader) withSource(o owner, n *node) (value *node, source string) {
 				ok = false
 			}
 			source = k.value.text
-		case "points", "level":
-			r.notBuilt(o, k, k.name)
-			ok = false
 		default:
 			f := fielder{r: r, o: o, word: "a value with its source"}
 			f.unknown(n, k, []Field{{Name: "value"}})
@@ -113,6 +117,22 @@ func (f fielder) text(n *node, field *Field) bool {
 	return false
 }
 
+// flag reads true or false.
+func (f fielder) flag(n *node, field *Field) bool {
+	if n.kind == kindBoolean {
+		return true
+	}
+	d := Diagnostic{Code: "wrong-type", Thing: f.o.thing(), Text: label(field) + "this is " + n.kind.a() + "; expected true or false", Found: n.kind.a(), Want: "true or false"}
+	switch n.text {
+	case "true", "yes", "on", "1":
+		d.Fix = "true"
+	case "false", "no", "off", "0":
+		d.Fix = "false"
+	}
+	f.r.at(n.span, d)
+	return false
+}
+
 // notText reports something else where a text stands.
 func (f fielder) notText(n *node, field *Field) {
 	want := "a text in quotes"
@@ -137,7 +157,7 @@ func (f fielder) names(n *node, field *Field) ([]entry, bool) {
 		f.meansAny(field)
 		return nil, false
 	}
-	ok := f.length(n, field)
+	ok := f.length(n, len(n.items), field)
 	list := f.r.newEntries(len(n.items))
 	var seen map[string]bool
 	for i, item := range n.items {
@@ -196,9 +216,14 @@ func repeated(before []*node, name string, seen map[string]bool) bool {
 }
 
 // length checks the number of items in a list.
-func (f fielder) length(n *node, field *Field) bool {
+func (f fielder) length(n *node, got int, field *Field) bool {
 	least, most := 1, maxValues
-	if field.Type != Pairs {
+	switch {
+	case field.Items > 0:
+		least, most = field.Items, field.Items
+	case field.Type == Numbers || field.Type == Pairs && field.Ascending:
+		most = maxPoints
+	case field.Type != Pairs:
 		if field.HasMin {
 			least = max(1, int(field.Min))
 		}
@@ -207,7 +232,7 @@ func (f fielder) length(n *node, field *Field) bool {
 		}
 	}
 	want := ""
-	switch got := len(n.items); {
+	switch {
 	case got >= least && got <= most:
 		return true
 	case least == most:
@@ -217,7 +242,7 @@ func (f fielder) length(n *node, field *Field) bool {
 	default:
 		want = "at most " + strconv.Itoa(most)
 	}
-	f.r.at(n.span, Diagnostic{Code: "list-length", Thing: f.o.thing(), Text: fmt.Sprintf("%s has %s, must have %s", field.Name, items(len(n.items)), want)})
+	f.r.at(n.span, Diagnostic{Code: "list-length", Thing: f.o.thing(), Text: fmt.Sprintf("%s has %s, must have %s", field.Name, items(got), want)})
 	return false
 }
 
@@ -229,101 +254,4 @@ func items(n int) string {
 		return "1 item"
 	}
 	return strconv.Itoa(n) + " items"
-}
-
-// group reads a table inside a value.
-func (f fielder) group(n *node, field *Field, x *entry) bool {
-	if n.kind != kindTable {
-		f.r.wrongType(f.o, n, field, "a table like { "+firstKeys(field)+" }")
-		return false
-	}
-	inner := f
-	inner.word += "." + field.Name
-	var ok bool
-	x.list, x.source, ok = inner.fields(n, field.Fields, field.OneOf)
-	return ok
-}
-
-// firstKeys shows the keys a group cannot do without.
-func firstKeys(field *Field) string {
-	var list []string
-	for i := range field.Fields {
-		if field.Fields[i].Required {
-			list = append(list, field.Fields[i].Name+" = …")
-		}
-	}
-	if list == nil && len(field.Fields) > 0 {
-		list = append(list, field.Fields[0].Name+" = …")
-	}
-	return strings.Join(list, ", ")
-}
-
-// items reads a list of pairs or of tables.
-func (f fielder) items(n *node, field *Field, x *entry) bool {
-	what := "a list of tables, like [{ " + firstKeys(field) + " }, …]"
-	if field.Type == Pairs {
-		what = "a list of pairs, like " + sample(field)
-	}
-	if n.kind != kindArray {
-		f.r.wrongType(f.o, n, field, what)
-		return false
-	}
-	ok := f.length(n, field)
-	x.list = make([]entry, len(n.items))
-	second := field.Second
-	if second != nil && second.Name == "" {
-		named := *second
-		named.Name = field.Name
-		second = &named
-	}
-	for i, item := range n.items {
-		y := entry{field: field, n: item, slot: noSlot, wave: noSlot}
-		good := false
-		switch {
-		case field.Type == Pairs:
-			good = f.pair(item, field, second, &y)
-		case item.kind == kindTable:
-			inner := f
-			inner.word += "." + field.Name
-			inner.header = item.span
-			y.list, y.source, good = inner.fields(item, field.Fields, field.OneOf)
-		default:
-			f.r.wrongType(f.o, item, field, "a table like { "+firstKeys(field)+" }")
-		}
-		x.list[i] = y
-		ok = ok && good
-	}
-	return ok
-}
-
-// pair reads [first, second].
-func (f fielder) pair(n *node, field, second *Field, y *entry) bool {
-	if n.kind != kindArray || len(n.items) != 2 {
-		found := n.kind.a()
-		if n.kind == kindArray {
-			found = "a list with " + items(len(n.items))
-		}
-		d := Diagnostic{Code: "wrong-type", Thing: f.o.thing(), Text: label(field) + "this is " + found + "; expected a pair like " +
-			strings.TrimSuffix(strings.TrimPrefix(sample(field), "["), ", …]")}
-		f.r.at(n.span, d)
-		return false
-	}
-	good := true
-	y.list = []entry{{field: field, name: "first"}, {field: second, name: "second"}}
-	for i := range y.list {
-		x := &y.list[i]
-		x.n, x.slot, x.wave = n.items[i], noSlot, noSlot
-		if x.n.kind == kindTable && x.n.get("value") != nil {
-			value, source := f.r.withSource(f.o, x.n)
-			if value == nil {
-				good = false
-				continue
-			}
-			x.n, x.source = value, source
-		}
-		var ok bool
-		x.slot, ok = f.r.number(f.o, x.n, x.field)
-		good = good && ok
-	}
-	return good
 }

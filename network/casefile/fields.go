@@ -9,11 +9,12 @@ import (
 
 // A fielder reads the fields of one element, or of a group in it.
 type fielder struct {
-	r      *reader
-	o      owner
-	v      *Vocabulary
-	word   string // where this is, in the words of NotBuilt: "resistance.film"
-	header span   // where something missing is reported
+	r       *reader
+	o       owner
+	v       *Vocabulary
+	word    string // where this is, in the words of NotBuilt: "resistance.film"
+	header  span   // where something missing is reported
+	profile int    // 1 + the profile that is read; 0: none
 }
 
 // fields reads a table's keys. ok is false where something in it is at fault.
@@ -61,7 +62,7 @@ func fieldNamed(fields []Field, name string) *Field {
 // pointsNotBuilt refuses points of a number against something else, where such are
 // agreed: "material.conductivity.points" in NotBuilt.
 func (f fielder) pointsNotBuilt(k *key, field *Field) bool {
-	if field.Type != Number || k.value.kind != kindArray || f.v == nil || !contains(f.v.NotBuilt, f.word+"."+k.name+".points") {
+	if field.Type != Number || field.Against != nil || k.value.kind != kindArray || f.v == nil || !contains(f.v.NotBuilt, f.word+"."+k.name+".points") {
 		return false
 	}
 	f.r.notBuilt(f.o, k, "points of "+k.name)
@@ -204,6 +205,11 @@ func sample(f *Field) string {
 		return `["a", "b"]`
 	case Count:
 		return "1"
+	case Flag:
+		return "true"
+	case Numbers:
+		one := sample(&Field{Dim: f.Dim, Kind: f.Kind, Unit: f.Unit})
+		return "[" + one + ", …]"
 	case loose:
 		return f.Help
 	case Word:
@@ -215,7 +221,7 @@ func sample(f *Field) string {
 	case Groups:
 		return "[{ … }, …]"
 	case Pairs:
-		return "[[" + sample(&Field{Dim: f.Dim, Kind: f.Kind}) + ", " + sample(&Field{Dim: f.Second.Dim, Kind: f.Second.Kind}) + "], …]"
+		return "[[" + sample(&Field{Dim: f.Dim, Kind: f.Kind, Unit: f.Unit}) + ", " + sample(&Field{Dim: f.Second.Dim, Kind: f.Second.Kind, Unit: f.Second.Unit}) + "], …]"
 	}
 	if f.Dim == (quantity.Dim{}) {
 		return "1"

@@ -12,13 +12,20 @@ import (
 // places inside the text, the same answer twice, and a case that evaluates and
 // builds.
 func FuzzRead(f *testing.F) {
-	_, names, texts, _ := mistakes(&testing.T{})
+	fuzzRead(f, archives[0], whole)
+}
+
+// FuzzReadPlant does so with the words of parts that have laws of their own.
+func FuzzReadPlant(f *testing.F) { fuzzRead(f, archives[1], wholePlant) }
+
+func fuzzRead(f *testing.F, a archive, good string) {
+	_, names, texts, _ := a.mistakes(&testing.T{})
 	for _, name := range names {
 		f.Add(texts[name] + texts["base"])
 	}
-	f.Add(whole)
+	f.Add(good)
 	f.Fuzz(func(t *testing.T, text string) {
-		c, diags := casefile.Read("case.toml", []byte(text), nil, testVocabulary()...)
+		c, diags := casefile.Read("case.toml", []byte(text), nil, a.words()...)
 		if (c == nil) != casefile.Failed(diags) {
 			t.Fatalf("a case and errors, or neither: %v", diags)
 		}
@@ -31,7 +38,7 @@ func FuzzRead(f *testing.F) {
 				t.Fatalf("%#v says too little", d)
 			}
 		}
-		again, second := casefile.Read("case.toml", []byte(text), nil, testVocabulary()...)
+		again, second := casefile.Read("case.toml", []byte(text), nil, a.words()...)
 		if casefile.Listing(diags) != casefile.Listing(second) || (again == nil) != (c == nil) {
 			t.Fatalf("read twice, two answers:\n%s\n%s", casefile.Listing(diags), casefile.Listing(second))
 		}

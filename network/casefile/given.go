@@ -14,6 +14,7 @@ type Given struct {
 	Source  string // where it comes from, "" if not stated
 	Derived bool   // an expression of other given values
 	Used    bool   // something in the case depends on it
+	Use     string // the use of a part whose own it is, "c.r_cell" of use "c"; "" of the case
 	Ref     network.Ref
 }
 
@@ -26,6 +27,8 @@ type given struct {
 	uses  []int
 	bad   bool // without a value: what uses it is not reported again
 	used  bool
+	use   *use // whose own it is; nil: the case
+	scope *use // in whose part it stands; nil: the case
 }
 
 // GivenValues returns the given values as written, for a caller that varies some.
@@ -48,25 +51,28 @@ func (c *Case) GivenIndex(name string) (int, bool) {
 }
 
 func (c *Case) givenNames() []string {
-	names := make([]string, len(c.Given))
+	names := make([]string, 0, len(c.Given))
 	for i := range c.Given {
-		names[i] = c.Given[i].Name
+		if c.Given[i].Use == "" {
+			names = append(names, c.Given[i].Name)
+		}
 	}
 	return names
 }
 
-// derive works out the derived values from the others.
-func (c *Case) derive(from []quantity.Value) ([]quantity.Value, []Diagnostic) {
+// derive works out the derived values from the others, but for those that are fixed: none
+// where fixed is nil.
+func (c *Case) derive(from []quantity.Value, fixed []bool) ([]quantity.Value, []Diagnostic) {
 	known := append([]quantity.Value(nil), from...)
 	var diags []Diagnostic
 	for _, i := range c.order {
 		g := &c.givens[i]
-		if g.expr == nil {
+		if g.expr == nil || fixed != nil && fixed[i] {
 			continue
 		}
 		v, err := g.expr.Eval(known)
 		if err != nil {
-			diags = append(diags, c.dimension(owner{label: "given " + quoted(c.Given[i].Name)}, g.n, nil, err))
+			diags = append(diags, c.dimension(c.givenOwner(i), g.n, nil, err))
 		}
 		known[i] = v
 	}
@@ -107,16 +113,7 @@ func (r *reader) collect(n *node, prefix string, depth int) {
 				continue
 			}
 		}
-		if !identifier(name) {
-			d := Diagnostic{Code: "bad-name", Text: quoted(name) + " cannot stand in an expression", Hint: "a given name is letters, digits, _ and dots, and begins with a letter"}
-			if better := asIdentifier(name); better != name && identifier(better) {
-				d.Fix = better
-			}
-			r.at(k.span, d)
-			continue
-		}
-		if quantity.Reserved(name) {
-			r.at(k.span, Diagnostic{Code: "bad-name", Text: quoted(name) + " has a meaning of its own in expressions", Hint: "choose another name"})
+		if !r.goodName(k, name, "a given name") {
 			continue
 		}
 		if first, ok := r.givenIndex[name]; ok { // a.b beside "a.b"
@@ -128,6 +125,23 @@ func (r *reader) collect(n *node, prefix string, depth int) {
 		r.c.Given = append(r.c.Given, Given{Name: name, Text: v.text, Source: source,
 			Ref: r.c.ref(k.span, owner{label: "given " + quoted(name)})})
 	}
+}
+
+// goodName checks that a name can stand in an expression.
+func (r *reader) goodName(k *key, name, what string) bool {
+	switch {
+	case !identifier(name):
+		d := Diagnostic{Code: "bad-name", Text: quoted(name) + " cannot stand in an expression", Hint: what + " is letters, digits, _ and dots, and begins with a letter"}
+		if better := asIdentifier(name); better != name && identifier(better) {
+			d.Fix = better
+		}
+		r.at(k.span, d)
+		return false
+	case quantity.Reserved(name):
+		r.at(k.span, Diagnostic{Code: "bad-name", Text: quoted(name) + " has a meaning of its own in expressions", Hint: "choose another name"})
+		return false
+	}
+	return true
 }
 
 // identifier reports a name that an expression can use: letters, digits and
@@ -161,6 +175,9 @@ func asIdentifier(name string) string {
 }
 
 func (r *reader) givenSlot(name string) (int, bool) {
+	if i, ok := r.scope.givenIndex(name); ok {
+		return i, true
+	}
 	i, ok := r.givenIndex[name]
 	return i, ok
 }
@@ -168,7 +185,7 @@ func (r *reader) givenSlot(name string) (int, bool) {
 // compileGiven reads what stands for a given value, without reckoning yet.
 func (r *reader) compileGiven(i int) {
 	g := &r.c.givens[i]
-	o := owner{label: "given " + quoted(r.c.Given[i].Name)}
+	o := r.c.givenOwner(i)
 	if g.n.kind == kindString && strings.HasPrefix(strings.TrimLeft(g.n.text, " \t"), "=") {
 		expr, err := quantity.Compile(g.n.text, r.givenSlot)
 		if err != nil {
@@ -255,7 +272,7 @@ func (r *reader) evalGiven(i int) {
 	if g.expr != nil && !g.bad {
 		v, err := g.expr.Eval(r.known)
 		if err != nil {
-			r.report(r.c.dimension(owner{label: "given " + quoted(r.c.Given[i].Name)}, g.n, nil, err))
+			r.report(r.c.dimension(r.c.givenOwner(i), g.n, nil, err))
 			g.bad = true
 		}
 		g.value = v

@@ -12,7 +12,9 @@ func (r *reader) heads(root *node) {
 		if v.Domain == "" || k == nil || k.value.kind != kindTable {
 			continue
 		}
-		r.domains = append(r.domains, v)
+		if len(v.Tables) > 0 {
+			r.domains = append(r.domains, v)
+		}
 		if len(v.Head) > 0 {
 			r.head(v, k)
 		}
@@ -27,11 +29,18 @@ func (r *reader) head(v *Vocabulary, k *key) {
 	f := fielder{r: r, o: owner{e: e}, v: v, word: v.Domain, header: k.span}
 	for i := range k.value.table.keys {
 		key := &k.value.table.keys[i]
-		if field := fieldNamed(v.Head, key.name); field != nil {
-			x, ok := f.entry(key.value, field)
-			e.faulty = e.faulty || !ok
-			e.fields = append(e.fields, x)
+		field := fieldNamed(v.Head, key.name)
+		if field == nil {
+			continue
 		}
+		if x, ok := f.entry(key.value, field); ok {
+			e.fields = append(e.fields, x)
+		} else {
+			e.faulty = true
+		}
+	}
+	if e.faulty = !f.complete(k.value, v.Head, v.OneOf) || e.faulty; e.faulty && len(v.Tables) > 0 {
+		r.unready[v.Domain], r.anything = true, true
 	}
 	if r.c.heads == nil {
 		r.c.heads = map[string]*Element{}
@@ -60,6 +69,18 @@ func (r *reader) pressures(e *Element) {
 	}
 	p.Atmosphere = r.c.slots[x.slot].si
 }
+
+// Keep notes what a domain has worked out for its Build functions, under a name of its
+// own. Kept returns it, nil where there is none.
+func (c *Case) Keep(name string, value any) {
+	if c.kept == nil {
+		c.kept = map[string]any{}
+	}
+	c.kept[name] = value
+}
+
+// Kept returns what was kept under a name, nil where there is none.
+func (c *Case) Kept(name string) any { return c.kept[name] }
 
 // Head returns the keys that stand in [domain] itself, nil where the case has
 // no such table.

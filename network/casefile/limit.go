@@ -3,11 +3,66 @@ package casefile
 import (
 	"fmt"
 
-	"lagbook/network/quantity"
+	"lagbook/network"
 )
 
+// LimitKind is what a limit demands.
+type LimitKind uint8
+
+const (
+	StayBelow LimitKind = iota
+	StayAbove
+	Reach
+	Settle
+	OvershootBelow
+	SwingBelow    // the greatest less the least
+	RateBelow     // how fast it rises or falls
+	RiseRateBelow // how fast it rises
+	FallRateBelow // how fast it falls, as a positive number
+	TimeAbove     // how long it is above Level, all stretches together
+)
+
+// String returns the key that states it.
+func (k LimitKind) String() string { return limitKeys[k] }
+
+// AskLimit is one [limit.NAME]. All of Of are levels, or all are differences
+// (so are rises, where Above is stated), or all are flows or other quantities of one
+// dimension. Level is in their unit: of stay_below, stay_above, reach and time_above a
+// value of that kind; of swing_below a difference; of settle and overshoot_below the
+// band, a difference or, where Percent, a fraction of the final change; of the rates
+// such a difference in a second.
+//
+// Margin is like how far the limited value may be from Level: a difference for
+// stay_below, stay_above and swing_below, a rate for rates, like Level for
+// overshoot_below, and a time for reach, settle and time_above. Where MarginShare it is
+// a fraction instead: of Level, of Within for reach and settle, of LessThan for
+// time_above. A level of temperature has no fraction.
+type AskLimit struct {
+	Name        string
+	Of          []Shown
+	Above       string
+	Kind        LimitKind
+	Level       Slot
+	Percent     bool
+	LessThan    Slot // s: of time_above
+	PerDay      bool // LessThan is meant of every day of 24 h
+	Within      Slot
+	After       Slot
+	Until       Slot
+	Margin      Slot
+	HasWithin   bool
+	HasAfter    bool
+	HasUntil    bool
+	HasMargin   bool
+	MarginShare bool
+	Source      string // where it comes from, "" if not stated
+	InCycle     bool   // of the periodic state, not of the run: After, Until and Within are not stated then
+	Ref         network.Ref
+}
+
 // limitKeys are the keys that state a limit, by LimitKind.
-var limitKeys = [...]string{"stay_below", "stay_above", "reach", "settle", "overshoot_below"}
+var limitKeys = [...]string{"stay_below", "stay_above", "reach", "settle", "overshoot_below",
+	"swing_below", "rate_below", "rise_rate_below", "fall_rate_below", "time_above"}
 
 var limitFields = []Field{
 	{Name: "of", Type: loose, Help: `"a node"`, Required: true},
@@ -15,38 +70,36 @@ var limitFields = []Field{
 	{Name: "after", Type: Number, Dim: dimTime, HasMin: true},
 	{Name: "until", Type: Number, Dim: dimTime, HasMin: true, MinOpen: true},
 	{Name: "within", Type: Number, Dim: dimTime, HasMin: true, MinOpen: true},
+	{Name: "in", Type: Word, Words: []string{"cycle"}},
 	{Name: "margin", Type: loose},
 	{Name: "stay_below", Type: loose, Help: `"90 °C"`},
 	{Name: "stay_above", Type: loose},
 	{Name: "reach", Type: loose, Help: `"90 °C"`, With: []string{"within"}},
 	{Name: "settle", Type: loose, With: []string{"within"}},
 	{Name: "overshoot_below", Type: loose},
+	{Name: "swing_below", Type: loose},
+	{Name: "rate_below", Type: loose},
+	{Name: "rise_rate_below", Type: loose},
+	{Name: "fall_rate_below", Type: loose},
+	{Name: "time_above", Type: loose},
 }
 
-var limitNotBuilt = []string{"limit.swing_below", "limit.rate_below", "limit.rise_rate_below", "limit.fall_rate_below", "limit.time_above", "limit.in"}
+// maxLimits is how many limits a case may have.
+const maxLimits = 10_000
 
 // limits reads [limit.NAME].
 func (r *reader) limits(k *key) {
-	if k.value.kind != kindTable {
-		r.wrongType(owner{}, k.value, &Field{Name: k.name}, "tables like [limit.NAME]")
-		return
-	}
-	for i := range k.value.table.keys {
-		l := &k.value.table.keys[i]
-		if l.value.kind != kindTable {
-			r.at(l.span, Diagnostic{Code: "wrong-type", Text: fmt.Sprintf("%s stands where the name of a limit is expected", quoted(l.name)), Hint: "write [limit.NAME] above it"})
-			continue
-		}
-		r.limit(l)
+	if r.countNamed(k, maxLimits) {
+		r.eachAsked(k, r.limit)
 	}
 }
 
 func (r *reader) limit(k *key) {
 	o := owner{label: "limit " + quoted(k.name)}
 	named := r.checkName(k, o)
-	f := fielder{r: r, o: o, v: &Vocabulary{NotBuilt: limitNotBuilt}, word: "limit", header: k.span}
-	list, _, ok := f.fields(k.value, limitFields, [][]string{limitKeys[:]})
-	ask := AskLimit{Name: k.name, Ref: r.c.ref(k.span, o), Margin: noSlot}
+	f := fielder{r: r, o: o, word: "limit", header: k.span}
+	list, source, ok := f.fields(k.value, limitFields, [][]string{limitKeys[:]})
+	ask := AskLimit{Name: k.name, Source: source, Ref: r.c.ref(k.span, o), Margin: noSlot, LessThan: noSlot}
 	stated := map[string]*node{}
 	for i := range list {
 		x := &list[i]
@@ -66,6 +119,8 @@ func (r *reader) limit(k *key) {
 			ask.Until, ask.HasUntil = x.slot, true
 		case "within":
 			ask.Within, ask.HasWithin = x.slot, true
+		case "in":
+			ask.InCycle = x.n.text == "cycle"
 		case "margin":
 			ask.HasMargin = true
 		default:
@@ -106,94 +161,4 @@ func (r *reader) shownList(o owner, n *node) ([]Shown, bool) {
 		}
 	}
 	return all, ok
-}
-
-// window checks the times of a limit against each other and the run.
-func (r *reader) window(o owner, stated map[string]*node, ask *AskLimit) bool {
-	at := func(s Slot, has bool) float64 {
-		if has {
-			return r.c.slots[s].si
-		}
-		return 0
-	}
-	ok := true
-	after := at(ask.After, ask.HasAfter)
-	for _, t := range []struct {
-		name string
-		has  bool
-		at   float64
-	}{{"after", ask.HasAfter, after}, {"until", ask.HasUntil, at(ask.Until, ask.HasUntil)}, {"within", ask.HasWithin, after + at(ask.Within, ask.HasWithin)}} {
-		if t.has {
-			ok = r.inRun(o, stated[t.name], t.name, t.at) && ok
-		}
-	}
-	if ask.HasUntil && ask.HasAfter && at(ask.Until, true) <= after {
-		r.at(stated["until"].span, Diagnostic{Code: "order", Thing: o.thing(), Text: fmt.Sprintf("until, %s, does not come after after, %s",
-			quantity.Duration(at(ask.Until, true)), quantity.Duration(after))})
-		ok = false
-	}
-	timed := ask.Kind == Reach || ask.Kind == Settle
-	if ask.HasWithin && !timed {
-		r.at(stated["within"].span, Diagnostic{Code: "no-effect", Thing: o.thing(), Text: "within goes with reach and settle, not with " + ask.Kind.String(),
-			Hint: "until ends the time in which a limit holds"})
-		ok = false
-	}
-	if ask.HasUntil && timed {
-		r.at(stated["until"].span, Diagnostic{Code: "no-effect", Thing: o.thing(), Text: "until does not go with " + ask.Kind.String() + "; within says how soon"})
-		ok = false
-	}
-	return ok
-}
-
-// demand reads the level, band and margin of a limit.
-func (r *reader) demand(o owner, stated map[string]*node, ask *AskLimit) bool {
-	dim, kind := ask.Of[0].Dim, ask.Of[0].Kind
-	apart := kind // of how far two of that kind are apart
-	if kind == quantity.Level {
-		apart = quantity.Difference
-	}
-	if ask.Above != "" {
-		kind = apart
-	}
-	name := ask.Kind.String()
-	n := stated[name]
-	var ok bool
-	switch ask.Kind {
-	case StayBelow, StayAbove, Reach:
-		ask.Level, ok = r.number(o, n, &Field{Name: name, Dim: dim, Kind: kind})
-	default:
-		ask.Level, ask.Percent, ok = r.band(o, n, name, dim, apart)
-	}
-	if !ok || !ask.HasMargin {
-		return ok
-	}
-	m := &Field{Name: "margin", Dim: dim, Kind: apart, HasMin: true}
-	switch {
-	case ask.Kind == Reach || ask.Kind == Settle:
-		m = &Field{Name: "margin", Dim: dimTime, HasMin: true}
-	case ask.Percent:
-		m = &Field{Name: "margin", HasMin: true}
-	}
-	ask.Margin, ok = r.number(o, stated["margin"], m)
-	return ok
-}
-
-// band reads a percentage of the final change, or a difference.
-func (r *reader) band(o owner, n *node, name string, dim quantity.Dim, kind quantity.Kind) (s Slot, percent, ok bool) {
-	f := &Field{Name: name, Dim: dim, Kind: kind, HasMin: true, MinOpen: name == "settle"}
-	if n = r.bareValue(o, n); n == nil {
-		return noSlot, false, false
-	}
-	if n.kind == kindString || n.kind == kindInteger || n.kind == kindFloat {
-		_, v, ok := r.quantity(o, n, &Field{Name: name})
-		if !ok {
-			return noSlot, false, false
-		}
-		if v.Dim == (quantity.Dim{}) {
-			percent = true
-			f = &Field{Name: name, HasMin: true, MinOpen: f.MinOpen, HasMax: name == "settle", Max: 1}
-		}
-	}
-	s, ok = r.number(o, n, f)
-	return s, percent, ok
 }

@@ -3,6 +3,7 @@ package casefile_test
 import (
 	"flag"
 	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -13,7 +14,20 @@ import (
 
 var update = flag.Bool("update", false, "write expected output anew")
 
-const malformed = "testdata/malformed.txt"
+// An archive holds mistakes, one to a section, made with the words of a vocabulary.
+type archive struct {
+	file  string
+	words func() []casefile.Vocabulary
+	least int // mistakes it holds
+}
+
+var archives = []archive{
+	{"testdata/malformed.txt", testVocabulary, 60},
+	{"testdata/plant.txt", plantVocabulary, 60},
+	{"testdata/profile.txt", profileVocabulary, 40},
+	{"testdata/parts.txt", testVocabulary, 55},
+	{"testdata/asked.txt", profileVocabulary, 90},
+}
 
 // A section is one part of an archive: a name and a text.
 type section struct{ name, text string }
@@ -34,10 +48,10 @@ func sections(text string) (head string, list []section) {
 	return head, list
 }
 
-// mistakes reads the archive of malformed cases: name, text, expected listing.
-func mistakes(t *testing.T) (head string, names []string, texts, want map[string]string) {
+// mistakes reads the archive: name, text, expected listing.
+func (a archive) mistakes(t *testing.T) (head string, names []string, texts, want map[string]string) {
 	t.Helper()
-	b, err := os.ReadFile(malformed)
+	b, err := os.ReadFile(a.file)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -56,8 +70,14 @@ func mistakes(t *testing.T) (head string, names []string, texts, want map[string
 
 // TestMalformed holds every message a user may see, with its place.
 func TestMalformed(t *testing.T) {
-	head, names, texts, want := mistakes(t)
-	if len(names) < 60 {
+	for _, a := range archives {
+		t.Run(filepath.Base(a.file), a.holds)
+	}
+}
+
+func (a archive) holds(t *testing.T) {
+	head, names, texts, want := a.mistakes(t)
+	if len(names) < a.least {
 		t.Fatalf("%d mistakes, expected more", len(names))
 	}
 	var b strings.Builder
@@ -67,7 +87,7 @@ func TestMalformed(t *testing.T) {
 		if name != "base" && strings.HasSuffix(name, "+base") {
 			text += texts["base"]
 		}
-		c, diags := casefile.Read("case.toml", []byte(text), nil, testVocabulary()...)
+		c, diags := casefile.Read("case.toml", []byte(text), nil, a.words()...)
 		got := casefile.Listing(diags)
 		if (c == nil) != casefile.Failed(diags) {
 			t.Errorf("%s: a case and errors, or neither", name)
@@ -88,7 +108,7 @@ func TestMalformed(t *testing.T) {
 		}
 	}
 	if *update {
-		if err := os.WriteFile(malformed, []byte(b.String()), 0o644); err != nil {
+		if err := os.WriteFile(a.file, []byte(b.String()), 0o644); err != nil {
 			t.Fatal(err)
 		}
 	}

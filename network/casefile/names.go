@@ -2,6 +2,7 @@ package casefile
 
 import (
 	"fmt"
+	"strconv"
 	"strings"
 	"unicode"
 
@@ -76,26 +77,35 @@ func tomlKey(name string) string {
 	return name
 }
 
-// references checks that the names fields refer to exist.
+// references checks that the names fields refer to exist, in parts at fault too: a
+// fault of one key does not hide that of another.
 func (r *reader) references() {
+	r.joins()
 	for _, e := range r.c.Elements {
-		if !r.refer(e, e.fields) {
+		r.scope = e.use
+		if !r.refer(e, e.fields, "") {
 			e.faulty = true
 			r.blamed[e.Name] = true
 			r.blameNames(e.fields)
 		}
 	}
+	r.scope = nil
 }
 
-func (r *reader) refer(e *Element, list []entry) bool {
+// refer checks the names in a list of entries that lies under a path.
+func (r *reader) refer(e *Element, list []entry, path string) bool {
 	ok := true
 	for i := range list {
 		x := &list[i]
 		switch {
-		case x.field.Refers == "" || x.n == nil:
-			if x.field.Type == Group || x.field.Type == Groups {
-				ok = r.refer(e, x.list) && ok
-			}
+		case x.n == nil:
+		case x.field.Look != nil && x.n.kind == kindString && x.n.text != "":
+			diags := x.field.Look(e, r.c, under(path, x, i))
+			r.reportAll(diags)
+			ok = ok && !Failed(diags)
+		case x.holdsFields():
+			ok = r.refer(e, x.list, under(path, x, i)) && ok
+		case x.field.Refers == "":
 		case x.field.Type == Name:
 			ok = r.exists(e, x.field.Refers, x.n) && ok
 		case x.field.Type == Names:
@@ -107,10 +117,24 @@ func (r *reader) refer(e *Element, list []entry) bool {
 	return ok
 }
 
+// under is the path of entry i of a list: by its name, or by its place where it has none.
+func under(path string, x *entry, i int) string {
+	switch {
+	case x.name == "":
+		return path + "[" + strconv.Itoa(i) + "]"
+	case path == "":
+		return x.name
+	}
+	return path + "." + x.name
+}
+
 // exists checks one name.
 func (r *reader) exists(e *Element, table string, n *node) bool {
 	if n.kind != kindString || n.text == "" {
 		return false // reported where it was read
+	}
+	if e.use != nil {
+		return r.existsInUse(e, table, n)
 	}
 	if other := r.c.byName[elementKey(e.domain, table, n.text)]; other != nil {
 		if other.Table.Name == table {
@@ -168,7 +192,7 @@ func (r *reader) blame(n *node) {
 		return
 	}
 	if n.kind == kindString {
-		if r.blamed[n.text] = true; len(r.blamed) > most {
+		if r.blamed[r.inScope(n.text)] = true; len(r.blamed) > most {
 			r.anything = true
 		}
 	}

@@ -14,13 +14,30 @@ func (r *reader) number(o owner, n *node, f *Field) (s Slot, ok bool) {
 	if n = r.bareValue(o, n); n == nil {
 		return noSlot, false
 	}
+	if f.clock {
+		if s, is, ok := r.clocked(o, n, f); is {
+			return s, ok
+		}
+	}
 	expr, v, ok := r.quantity(o, n, f)
 	if !ok {
 		return noSlot, false
 	}
+	if f.Unit == turns && strings.Contains(n.text, "rad") && !strings.HasPrefix(strings.TrimSpace(n.text), "=") {
+		r.radians(o, n, f)
+		return noSlot, false
+	}
 	si, dim, err := r.c.want(v, f)
 	if err != nil {
-		r.report(r.c.dimension(o, n, f, err))
+		d := r.c.dimension(o, n, f, err)
+		if expr == nil && f.Unit != "" && v.Dim == (quantity.Dim{}) && d.Fix != "" {
+			d.Fix = basic(strings.TrimSpace(n.text) + " " + f.Unit)
+		}
+		if key := f.orFor(v.Dim); key != "" && d.Fix == "" && n.kind == kindString {
+			d = r.src.place(d, n.span)
+			d.Fix = "{ " + key + " = " + basic(n.text) + " }"
+		}
+		r.report(d)
 		return noSlot, false
 	}
 	x := slot{expr: expr, si: si, dim: dim, field: f, n: n, owner: o}
@@ -65,7 +82,7 @@ func (r *reader) quantity(o owner, n *node, f *Field) (*quantity.Expr, quantity.
 			r.at(n.span, Diagnostic{Code: "not-finite", Thing: o.thing(), Text: label(f) + n.text + " is not a number a case can use"})
 			return nil, none, false
 		}
-		if f != nil && f.Dim != (quantity.Dim{}) {
+		if f != nil && !f.bare() {
 			unit := unitOf(f)
 			r.at(n.span, Diagnostic{Code: "no-unit", Thing: o.thing(), Text: label(f) + n.text + " has no unit; expected " + wanted(f),
 				Found: n.text, Want: wanted(f), Fix: `"` + n.text + " " + unit + `"`})
@@ -179,10 +196,11 @@ func (c *Case) inRange(s *slot, si float64) *Diagnostic {
 		found = c.show(si, f) + " (" + found + ")"
 	}
 	d := c.src.place(Diagnostic{Code: "range", Thing: s.owner.thing(), Text: f.Name + " is " + found + ", must be " + must,
-		Found: found, Want: must}, s.n.span)
+		Found: found, Want: must, Hint: c.setBy(s)}, s.n.span)
 	return &d
 }
 
+var dimLength = quantity.Dim{0, 1, 0, 0, 0}
 var dimKelvin = quantity.Dim{0, 0, 0, 1, 0}
 var dimTime = quantity.Dim{0, 0, 1, 0, 0}
 
@@ -190,6 +208,9 @@ var dimTime = quantity.Dim{0, 0, 1, 0, 0}
 func (r *reader) syntax(o owner, n *node, f *Field, err error) {
 	if r.full() {
 		r.report(Diagnostic{})
+		return
+	}
+	if r.changes(o, n, f, err) {
 		return
 	}
 	d := r.c.syntax(o, n, f, err)
@@ -215,8 +236,9 @@ func (c *Case) syntax(o owner, n *node, f *Field, err error) Diagnostic {
 	switch {
 	case e.Name != "":
 		d.Code = "unknown-name"
-		d.Text = label(f) + quoted(e.Name) + " is not defined in [given]"
-		if near, ok := quantity.Nearest(e.Name, c.givenNames()); ok {
+		names, where := c.namesFor(f)
+		d.Text = label(f) + quoted(e.Name) + " is not defined in " + where
+		if near, ok := quantity.Nearest(e.Name, append(o.e.inner().givenNames(), names...)); ok {
 			d.Fix = near
 			if at == n.span {
 				d.Fix = basic(strings.Replace(n.text, e.Name, near, 1))
@@ -286,48 +308,4 @@ func label(f *Field) string {
 		return ""
 	}
 	return f.Name + ": "
-}
-
-// unitOf is the unit a suggestion uses for a field.
-func unitOf(f *Field) string {
-	switch {
-	case f.Dim == dimKelvin && f.Kind == quantity.Level:
-		return "°C"
-	case f.Dim == dimPressure:
-		return "bar"
-	}
-	return quantity.UnitOf(f.Dim)
-}
-
-// wanted says what stands after a field's key.
-func wanted(f *Field) string {
-	if f == nil {
-		return "a quantity"
-	}
-	unit := unitOf(f)
-	if f.Dim == (quantity.Dim{}) {
-		return "a number"
-	}
-	word := quantity.WordOf(f.Dim)
-	switch {
-	case f.Dim == dimKelvin && f.Kind == quantity.Level:
-		word = "temperature"
-	case f.Dim == dimKelvin:
-		word = "temperature difference"
-	case word == "":
-		return `a quantity with its unit, like "1 ` + unit + `"`
-	}
-	text := article(word) + ` with its unit, like "1 ` + unit + `"`
-	for _, d := range f.Also {
-		text += ` or "1 ` + quantity.UnitOf(d) + `"`
-	}
-	return text
-}
-
-// article puts a or an before a word.
-func article(word string) string {
-	if strings.IndexByte("aeiou", word[0]) >= 0 {
-		return "an " + word
-	}
-	return "a " + word
 }

@@ -1,6 +1,8 @@
 package casefile
 
 import (
+	"strconv"
+
 	"lagbook/network"
 	"lagbook/network/quantity"
 )
@@ -22,6 +24,32 @@ func NodeName(name, help string) Field {
 func Between() Field {
 	return Field{Name: "between", Type: Names, Refers: "node", Structural: true, Required: true,
 		HasMin: true, Min: 2, HasMax: true, Max: 2, Help: "the two nodes it joins; flow from the first to the second is positive"}
+}
+
+// From names the end that a part with one way takes from; its flow is positive from there.
+func From() Field {
+	f := NodeName("from", "the node it takes from")
+	f.Required = true
+	return f
+}
+
+// To names the end that a part with one way feeds.
+func To() Field {
+	f := NodeName("to", "the node it feeds")
+	f.Required = true
+	return f
+}
+
+// FromTo returns the two nodes of a part with one way.
+func (e *Element) FromTo() (from, to network.NodeID, faults []Diagnostic) {
+	from, faults = e.NodeAt("from")
+	to, more := e.NodeAt("to")
+	if faults = append(faults, more...); faults == nil && from == to {
+		d := e.Fault("to", "it takes from "+strconv.Quote(e.NameOf("from"))+" and feeds it too", "another node", "")
+		d.Code = "same-name"
+		faults = append(faults, d)
+	}
+	return from, to, faults
 }
 
 // Ends returns the two nodes of a part that lies between them.
@@ -54,12 +82,13 @@ func (e *Element) SourceEnd() (key string, sign float64) {
 }
 
 // AddNode adds a node with what any node may have, held and start. Where it stores is
-// for the domain to say.
+// for the domain to say, and what a held or a start means that is not a plain value: a
+// node is then held by whoever reads it.
 func (e *Element) AddNode(c *Case, b *network.Builder) (network.NodeID, []Setter, []Diagnostic) {
 	id := b.Node(e.FullName(), e.Ref)
 	c.BindNode(e.FullName(), id)
 	var set []Setter
-	if e.Has("held") {
+	if e.Plain("held") {
 		set = append(set, SetWave(b.Hold(id, e.Ref), e.Wave("held")))
 	}
 	if !e.Has("start") {
@@ -67,6 +96,9 @@ func (e *Element) AddNode(c *Case, b *network.Builder) (network.NodeID, []Setter
 	}
 	if e.Has("held") {
 		return id, set, []Diagnostic{e.Fault("start", "start of a held node: it starts where it is held", "", "")}
+	}
+	if !e.Plain("start") {
+		return id, set, nil
 	}
 	return id, append(set, SetStart(id, e.Num("start"))), nil
 }

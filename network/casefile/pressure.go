@@ -67,6 +67,9 @@ func (c *Case) want(v quantity.Value, f *Field) (si float64, dim quantity.Dim, e
 	si, err = v.Want(f.Dim, f.Kind)
 	var e *quantity.DimensionError
 	if errors.As(err, &e) {
+		if word := f.noun(); f.Unit != "" && word != "" {
+			e.Expected = article(word) + " (" + f.Unit + ")"
+		}
 		for _, other := range f.Also {
 			e.Expected += " or " + quantity.Describe(other, quantity.Plain)
 		}

@@ -2,6 +2,7 @@ package casefile
 
 import (
 	"errors"
+	"fmt"
 	"strings"
 
 	"lagbook/network/quantity"
@@ -25,9 +26,17 @@ var printWords = []struct {
 	{"capacitance", []quantity.Dim{{1, 2, -2, -1, 0}}, quantity.Plain},
 	{"compliance", []quantity.Dim{{-1, 4, 2, 0, 0}}, quantity.Plain},
 	{"inertance", []quantity.Dim{{1, -4, 0, 0, 0}}, quantity.Plain},
+	{"level", []quantity.Dim{dimLength}, quantity.Plain},
+	{"volume", []quantity.Dim{{0, 3, 0, 0, 0}}, quantity.Plain},
+	{"energy", []quantity.Dim{{1, 2, -2, 0, 0}}, quantity.Plain},
+	{"velocity", []quantity.Dim{{0, 1, -1, 0, 0}}, quantity.Plain},
+	{"speed", []quantity.Dim{dimRate}, quantity.Plain},
 }
 
-var printNotBuilt = []string{"print.volume", "print.level", "print.energy", "print.length", "print.mass"}
+// printAlso are other words for those above.
+var printAlso = [][2]string{{"heat", "power"}, {"length", "level"}}
+
+var printNotBuilt = []string{"print.mass"}
 
 // PrintWord returns the word of [print] under which the unit of a quantity is
 // stated, "" where there is none.
@@ -52,7 +61,11 @@ func (r *reader) print(k *key) {
 	for _, w := range printWords {
 		fields = append(fields, Field{Name: w.word, Type: Text})
 	}
+	for _, also := range printAlso {
+		fields = append(fields, Field{Name: also[0], Type: Text})
+	}
 	list, _ := r.single(k, o, fields, printNotBuilt)
+	stated := map[string]string{}
 	q := &r.c.Questions
 	for i := range list {
 		x := &list[i]
@@ -65,9 +78,20 @@ func (r *reader) print(k *key) {
 		if x.n.kind != kindString {
 			continue // reported where it was read
 		}
+		word := x.name
+		for _, also := range printAlso {
+			if also[0] == word {
+				word = also[1]
+			}
+		}
+		if first := stated[word]; first != "" {
+			r.at(x.n.span, Diagnostic{Code: "stated-twice", Thing: o.thing(), Text: fmt.Sprintf("%s and %s are the unit of one thing", first, x.name), Hint: "keep one of them"})
+			continue
+		}
+		stated[word] = x.name
 		for i := range printWords {
-			if w := &printWords[i]; w.word == x.name {
-				r.printUnit(o, x.n, w.word, w.dims, w.kind)
+			if w := &printWords[i]; w.word == word {
+				r.printUnit(o, x.n, word, w.dims, w.kind)
 			}
 		}
 	}

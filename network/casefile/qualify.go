@@ -56,8 +56,10 @@ func (c *Case) parts(name string) []*Element {
 		if d == "" || domain != "" && d != domain {
 			continue
 		}
-		if e := c.byName[elementKey(d, "", rest)]; e != nil {
-			list = append(list, e)
+		for _, key := range []elementName{elementKey(d, "", rest), besideKey(d, rest)} {
+			if e := c.byName[key]; e != nil {
+				list = append(list, e)
+			}
 		}
 	}
 	return list
@@ -109,6 +111,10 @@ func (r *reader) ambiguous(o owner, n *node, name string, list []*Element) {
 	}
 	d := Diagnostic{Code: "ambiguous", Thing: o.thing(), Found: name,
 		Text: fmt.Sprintf("%s is a name in %s and in %s", quoted(name), list[0].domain, list[1].domain), Hint: "write " + strings.Join(words, " or ")}
+	if list[0].domain == list[1].domain {
+		d.Text = fmt.Sprintf("%s is %s and %s, and both may be meant here", quoted(name), article(list[0].Table.Name), article(list[1].Table.Name))
+		d.Hint = "give one of them another name"
+	}
 	at := n.span
 	if name != n.text {
 		at = n.part(strings.LastIndex(n.text, name), len(name))

@@ -10,6 +10,11 @@ type Questions struct {
 	Transfers   []AskTransfer
 	Tables      []AskTable
 	Limits      []AskLimit
+	Scenarios   []Scenario
+	Results     []AskResult // each after those it is made of
+	Finds       []AskFind
+	Sizes       []AskSize
+	Measured    []AskMeasured
 	To          Slot // [run] to, s, where HasTo
 	HasTo       bool
 	Start       StartWord
@@ -33,24 +38,28 @@ const (
 	StartAtRest // nothing flows: every node without a start of its own stands at the level that holds it
 )
 
-// A Shown is one thing asked for by name: a node, a difference "a - b", or the
-// flow of a part.
+// A Shown is one thing asked for by name: a node, a difference "a - b", a reading of a
+// part, its flow included, or a result. Case.Showing(Part, Word) is what to show of a
+// reading.
 type Shown struct {
 	Text   string // as written; the column's name
+	Word   string // "flow", "level", "flow at valve_in"; "" for anything else
+	Part   string // the full name of the part it is a reading of, or ""
 	Node   string // full names, as the network has them
 	Minus  string // the second node of a difference, or ""
-	FlowOf string // the part, source or held node whose flow is meant, or ""
+	Result string // the name of the result it is, or ""; the others are empty then
 	Dim    quantity.Dim
-	Kind   quantity.Kind // Level, Difference, or Plain for a flow
+	Kind   quantity.Kind // Level, Difference, or Plain for a flow; of a reading or a result its own
 	Ref    network.Ref
 }
 
 // AskTransfer names an input and an output.
 type AskTransfer struct {
-	From     string
+	From     string // the full name of a source or a held node, or of a drive: "opening of sv1"
 	To       Shown
 	About    Slot // s, where HasAbout; else the network just before t = 0
 	HasAbout bool
+	Source   string // where it comes from, "" if not stated
 	Ref      network.Ref
 }
 
@@ -65,43 +74,6 @@ type AskTable struct {
 	HasFrom, HasTo  bool
 	HasEvery        bool
 	Peaks, Jumps    bool
+	Source          string // where it comes from, "" if not stated
 	Ref             network.Ref
-}
-
-// LimitKind is what a limit demands.
-type LimitKind uint8
-
-const (
-	StayBelow LimitKind = iota
-	StayAbove
-	Reach
-	Settle
-	OvershootBelow
-)
-
-// String returns the key that states it.
-func (k LimitKind) String() string { return limitKeys[k] }
-
-// AskLimit is one [limit.NAME]. All of Of are levels, or all are differences
-// (so are rises, where Above is stated), or all are flows. Level is in their
-// unit: of stay_below, stay_above and reach a value of that kind; of settle and
-// overshoot_below the band, a difference or, where Percent, a fraction of the
-// final change. Margin is a difference for stay_below and stay_above, a time for
-// reach and settle, and like Level for overshoot_below.
-type AskLimit struct {
-	Name      string
-	Of        []Shown
-	Above     string
-	Kind      LimitKind
-	Level     Slot
-	Percent   bool
-	Within    Slot
-	After     Slot
-	Until     Slot
-	Margin    Slot
-	HasWithin bool
-	HasAfter  bool
-	HasUntil  bool
-	HasMargin bool
-	Ref       network.Ref
 }

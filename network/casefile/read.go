@@ -24,18 +24,23 @@ type reader struct {
 	known      []quantity.Value          // of the given, as written
 	parsed     map[string]quantity.Value // by text
 	forms      map[*Field]*waveFields
-	blamed     map[string]bool // names that a faulty part may have meant: faults that follow are not reported
-	second     map[string]bool // table.name of elements whose name is taken
-	lost       map[string]bool // names of parts in tables that could not be read
-	later      bool            // names may come from parts, uses and results, which are not built
-	anything   bool            // a faulty part may have meant any name
-	endless    bool            // [run] to is stated and at fault
-	rows       int             // read from data files so far
-	breaks     int             // pieces of waveforms so far
-	files      map[string]*csvFile
-	elems      []Element // slabs of what every element needs
-	entries    []entry
-	branches   map[string]bool // of the network, with a flow
+
+	profileFields []*Field        // one for each dimension and kind
+	blamed        map[string]bool // names that a faulty part may have meant: faults that follow are not reported
+	second        map[string]bool // table.name of elements whose name is taken
+	lost          map[string]bool // names of parts in tables that could not be read
+	later         bool            // names may come from uses that could not be read
+	anything      bool            // a faulty part may have meant any name
+	endless       bool            // [run] to is stated and at fault
+	rows          int             // read from data files so far
+	breaks        int             // pieces of waveforms so far
+	work          int             // pieces that expressions of waveforms went through
+	files         map[string]*csvFile
+	elems         []Element // slabs of what every element needs
+	entries       []entry
+	unready       map[string]bool // domains whose head is at fault: nothing of them is built, and nothing said of what they lack
+	usage
+	asking
 }
 
 // Read reads a case. name is how messages call the file; fsys is the directory
@@ -47,7 +52,7 @@ type reader struct {
 // several goroutines.
 func Read(name string, src []byte, fsys *os.Root, voc ...Vocabulary) (*Case, []Diagnostic) {
 	r := &reader{src: &source{file: name}, fsys: fsys, voc: voc, givenIndex: map[string]int{},
-		forms: map[*Field]*waveFields{}, blamed: map[string]bool{}, second: map[string]bool{}, lost: map[string]bool{}, files: map[string]*csvFile{}}
+		forms: map[*Field]*waveFields{}, blamed: map[string]bool{}, second: map[string]bool{}, lost: map[string]bool{}, unready: map[string]bool{}, files: map[string]*csvFile{}}
 	if len(src) > maxBytes {
 		r.src.text = string(src[:maxBytes+1])
 	} else {
@@ -62,7 +67,8 @@ func Read(name string, src []byte, fsys *os.Root, voc ...Vocabulary) (*Case, []D
 		r.parsed = make(map[string]quantity.Value, keys/8)
 		r.read(root)
 	}
-	inFileOrder(r.diags)
+	r.same.spell(r.c, r.diags)
+	r.diags = inFileOrder(r.diags)
 	if r.silent {
 		r.diags = append(r.diags, Diagnostic{File: name, Code: "too-many", Text: fmt.Sprintf("more than %d faults; the others are not listed", maxDiagnostics)})
 	}
@@ -75,18 +81,24 @@ func Read(name string, src []byte, fsys *os.Root, voc ...Vocabulary) (*Case, []D
 
 // read goes through the top of the file.
 func (r *reader) read(root *node) {
+	r.readParts(root)
+	r.nameProfiles(root.table.find("profile"))
 	if k := root.table.find("given"); k != nil {
 		r.readGiven(k)
 	}
+	r.usesGiven()
 	r.heads(root)
+	r.usedDomains()
 	if k := root.table.find("run"); k != nil {
 		r.run(k)
 	}
+	r.findHorizon(root)
+	r.readProfiles()
 	var asked []*key
 	for i := range root.table.keys {
 		k := &root.table.keys[i]
 		switch {
-		case k.name == "given":
+		case k.name == "given" || k.name == "profile" || k.name == "part" || k.name == "use":
 		case r.about(k):
 		case askedWord(k.name):
 			asked = append(asked, k)
@@ -95,15 +107,22 @@ func (r *reader) read(root *node) {
 			r.unknownTop(k)
 		}
 	}
-	slices.SortStableFunc(r.c.Elements, func(a, b *Element) int { return int(a.header.at) - int(b.header.at) })
+	r.expand()
+	slices.SortStableFunc(r.c.Elements, inFile)
 	r.references()
 	r.build()
 	r.questions(asked)
+	r.sizes(asked)
 	if !Failed(r.diags) {
 		r.trial()
 	}
 	if !Failed(r.diags) {
+		r.trialScenarios()
+	}
+	if !Failed(r.diags) {
 		r.unused()
+		r.unusedProfiles()
+		r.unusedParts()
 	}
 }
 
@@ -121,7 +140,9 @@ func (r *reader) report(d Diagnostic) {
 		r.silent = r.silent || d.Severity == Error
 		return
 	}
-	r.diags = append(r.diags, d)
+	if !r.same.repeats(d, r.useFor(d), len(r.diags)) {
+		r.diags = append(r.diags, d)
+	}
 }
 
 func (r *reader) reportAll(list []Diagnostic) {
@@ -201,10 +222,10 @@ func (r *reader) wrongType(o owner, n *node, f *Field, want string) {
 }
 
 // Words agreed for the top of a case that a later version will read.
-var notBuiltTop = []string{"profile", "scenario", "part", "use", "result", "find", "size", "tolerance", "air", "measured", "hydraulic", "pneumatic", "thermal"}
+var notBuiltTop = []string{"tolerance", "air", "hydraulic", "pneumatic", "thermal"}
 
 // words that [run], [[table]] and the like are read from.
-var askedWords = []string{"run", "print", "show", "transfer", "table", "limit"}
+var askedWords = []string{"run", "print", "show", "transfer", "table", "limit", "scenario", "result", "find", "size", "measured"}
 
 func askedWord(w string) bool {
 	for _, a := range askedWords {
@@ -217,7 +238,7 @@ func askedWord(w string) bool {
 
 // topWords lists what may stand at the top of the file.
 func (r *reader) topWords() []string {
-	words := []string{"title", "author", "date", "revision", "references", "leaves_out", "given", "run", "print", "transfer", "table", "limit"}
+	words := []string{"title", "author", "date", "revision", "references", "leaves_out", "given", "profile", "part", "use", "scenario", "run", "print", "transfer", "table", "result", "limit", "find", "size", "measured"}
 	for i := range r.voc {
 		if r.voc[i].Domain != "" {
 			words = append(words, r.voc[i].Domain)
@@ -234,7 +255,7 @@ func (r *reader) topWords() []string {
 // could not be read: then its absence is not a fault of its own.
 func (r *reader) missing(name string) bool {
 	_, bare := r.c.domainOf(name)
-	return r.later || r.lost[bare]
+	return r.later || r.noResults || r.lost[bare] || r.inAbsent(bare)
 }
 
 // lose notes the names of the parts in a table that cannot be read.
@@ -244,14 +265,13 @@ func (r *reader) lose(n *node) {
 		return
 	}
 	for i := range n.table.keys {
-		r.lost[n.table.keys[i].name] = true
+		r.lost[r.scope.in(n.table.keys[i].name)] = true
 	}
 }
 
 // unknownTop reports a word at the top of the file that nothing reads.
 func (r *reader) unknownTop(k *key) {
 	r.blame(k.value)
-	r.later = r.later || contains([]string{"part", "use", "result"}, k.name)
 	for i := range r.voc {
 		if r.voc[i].Domain == "" && contains(r.voc[i].NotBuilt, k.name) {
 			r.notBuilt(owner{}, k, k.name)

@@ -179,7 +179,7 @@ func TestQuestions(t *testing.T) {
 	}
 	shown := q.Tables[0].Show
 	if len(q.Tables) != 2 || len(q.Tables[0].Times) != 3 || v.Num[q.Tables[0].Times[1]] != 1 || !q.Tables[0].Peaks || !q.Tables[0].Jumps ||
-		shown[1].Node != "array.1" || shown[2].Kind != quantity.Difference || shown[3].FlowOf != "hot pad" || shown[3].Dim != dimPower {
+		shown[1].Node != "array.1" || shown[2].Kind != quantity.Difference || shown[3].Part != "hot pad" || shown[3].Word != "flow" || shown[3].Dim != dimPower {
 		t.Errorf("tables: %+v", q.Tables)
 	}
 	if b := q.Tables[1]; b.Above != "room" || !b.HasEvery || v.Num[b.Every] != 1200 || b.HasTo {

@@ -62,9 +62,6 @@ func (r *reader) start(o owner, n *node) {
 	case n.text == "at rest":
 		q.Start = StartAtRest
 		return
-	case contains(words, n.text):
-		r.at(n.span, Diagnostic{Code: "not-built", Thing: "run", Text: "start = " + quoted(n.text) + " is not known yet: this version does not build it"})
-		return
 	case n.text != "" && !digit(n.text[0]) && strings.IndexByte("=+-.−", n.text[0]) < 0:
 		d := Diagnostic{Code: "unknown-word", Thing: "run", Text: "start is " + quoted(n.text) + "; expected \"steady\", \"at rest\", \"cycle\" or " + r.levelSample()}
 		if near, ok := quantity.Nearest(n.text, words); ok {

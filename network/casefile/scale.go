@@ -56,9 +56,10 @@ var stepwise = map[string]bool{"constant": true, "step": true, "stairs": true, "
 
 // NotInSteps refuses a waveform that changes otherwise than in steps.
 func NotInSteps(e *Element, c *Case, key, why string) []Diagnostic {
-	form := c.WaveInfo(e.Wave(key)).Form
-	if stepwise[form] {
+	slot := e.Wave(key)
+	if slot == noSlot || c.waves[slot].steps {
+		c.mustStep(slot, why)
 		return nil
 	}
-	return []Diagnostic{e.Fault(key, key+" is stated as "+form, "a number, step, stairs or pulse: "+why, "")}
+	return []Diagnostic{e.Fault(key, key+" "+c.statedAs(slot), "a number, step, stairs or pulse: "+why, "")}
 }

@@ -4,100 +4,23 @@ import (
 	"fmt"
 	"strings"
 
-	"lagbook/network"
 	"lagbook/network/quantity"
 )
 
 // measures says what a part's domain carries.
 func (r *reader) measures(e *Element) Measures { return r.c.Measures(e.domain) }
 
-// input checks that a name is that of a source or a held node, and returns its
-// full name.
-func (r *reader) input(o owner, n *node) (string, bool) {
-	e, ok := r.pick(o, n, n.text, (*Element).drives)
-	switch {
-	case ok:
-		return e.FullName(), true
-	case e != nil && (e.faulty || e.drives()):
-		return "", false // it may be an input, or two are, which is reported
-	case e != nil:
-		r.noInput(o, n, e)
-		return "", false
-	}
-	if r.missing(n.text) {
-		return "", false
-	}
-	d := Diagnostic{Code: "unknown-name", Thing: o.thing(), Text: quoted(n.text) + " is not defined", Found: n.text, Want: "a source or a held node"}
-	var inputs []string
-	for _, e := range r.c.Elements {
-		if e.domain != "" && e.drives() {
-			inputs = append(inputs, e.FullName())
-		}
-	}
-	if strings.HasPrefix(n.text, "opening of ") {
-		d.Code, d.Text = "not-built", quoted(n.text)+" is not known yet: this version does not build it"
-	} else if near, ok := quantity.Nearest(n.text, inputs); ok {
-		d.Fix = basic(near)
-	} else {
-		d.Hint = "an input is a source or a held node" + listed(inputs)
-	}
-	r.at(n.span, d)
-	return "", false
-}
-
-// noInput reports a part that nothing drives.
-func (r *reader) noInput(o owner, n *node, e *Element) {
-	d := Diagnostic{Code: "no-input", Thing: o.thing(), Text: fmt.Sprintf("%s is %s, not an input", quoted(n.text), article(e.Table.Name)),
-		Hint: "an input is a source or a held node"}
-	if e.isNode() {
-		d.Text = fmt.Sprintf("node %s is not held: it is not an input", quoted(n.text))
-	}
-	r.at(n.span, d)
-}
-
-// listed adds a few names to a hint.
-func listed(names []string) string {
-	const most = 8
-	if len(names) == 0 {
-		return ""
-	}
-	if len(names) > most {
-		return ": " + strings.Join(names[:most], ", ") + ", …"
-	}
-	return ": " + strings.Join(names, ", ")
-}
-
-// drives reports whether an element has a waveform, and so is an input.
-func (e *Element) drives() bool {
-	for i := range e.fields {
-		if e.fields[i].field.Type == Wave {
-			return true
-		}
-	}
-	return false
-}
-
-// Words that will name other things to show.
-var shownNotBuilt = []string{"level of ", "stored of ", "spill of ", "travel of ", "heat of ", "energy of "}
-
-// shown reads what is to be shown: "node", "a - b", "flow of part".
+// shown reads what is to be shown: "node", "a - b", "flow of part", "level of part".
 func (r *reader) shown(o owner, n *node) (Shown, bool) {
 	s := Shown{Text: n.text, Kind: quantity.Level, Ref: r.c.ref(n.span, o)}
+	if is, ok := r.resultShown(o, n, &s); is {
+		return s, ok
+	}
 	if a, b, ok := strings.Cut(n.text, " - "); ok && !r.isNode(n.text) {
 		return s, r.difference(o, n, &s, strings.TrimSpace(a), strings.TrimSpace(b))
 	}
-	if part, ok := strings.CutPrefix(n.text, "flow of "); ok && !r.isNode(n.text) {
-		e, full, good := r.flow(o, n, strings.TrimSpace(part))
-		if s.FlowOf, s.Kind = full, quantity.Plain; e != nil {
-			s.Dim = r.measures(e).Flow
-		}
-		return s, good
-	}
-	for _, w := range shownNotBuilt {
-		if strings.HasPrefix(n.text, w) && !r.isNode(n.text) {
-			r.at(n.span, Diagnostic{Code: "not-built", Thing: o.thing(), Text: quoted(strings.TrimSpace(w)) + " is not known yet: this version does not build it"})
-			return s, false
-		}
+	if word, part, ok := r.asReading(n.text); ok && !r.isNode(n.text) {
+		return s, r.reading(o, n, &s, word, part)
 	}
 	full, e, ok := r.nodeAt(o, n, n.text)
 	if s.Node = full; e != nil {
@@ -111,6 +34,15 @@ func (r *reader) difference(o owner, n *node, s *Shown, a, b string) bool {
 	var one, other *Element
 	var okA, okB bool
 	s.Kind = quantity.Difference
+	for _, half := range []string{a, b} {
+		_, result := r.resultIndex[half]
+		if _, _, ok := r.asReading(half); (ok || result) && !r.isNode(half) {
+			r.at(n.part(strings.Index(n.text, half), len(half)), Diagnostic{Code: "kinds", Thing: o.thing(),
+				Text: quoted(half) + " is no node: a difference is one of two nodes",
+				Hint: `show each by itself, or write a result: [result.NAME] expression = "= ` + operandText(a) + " - " + operandText(b) + `"`})
+			return false
+		}
+	}
 	s.Node, one, okA = r.nodeAt(o, n, a)
 	s.Minus, other, okB = r.nodeAt(o, n, b)
 	if one != nil {
@@ -182,6 +114,10 @@ func (r *reader) noNode(o owner, n *node, name string, e *Element) {
 	if e == nil && r.missing(name) {
 		return
 	}
+	if r.full() {
+		r.report(Diagnostic{})
+		return
+	}
 	at := n.part(strings.Index(n.text, name), len(name))
 	whole := name == n.text || at == n.span
 	fix := func(better string) string {
@@ -195,14 +131,17 @@ func (r *reader) noNode(o owner, n *node, name string, e *Element) {
 	}
 	if e != nil {
 		d := Diagnostic{Code: "wrong-part", Thing: o.thing(), Text: fmt.Sprintf("%s is %s, not a node", quoted(name), article(e.Table.Name))}
-		if name == n.text && r.flows(e.FullName()) {
-			d.Fix = basic("flow of " + name)
+		if has := e.readings(); name == n.text && len(has) > 0 {
+			d.Fix = basic(has[0] + " of " + name)
 		}
 		r.at(at, d)
 		return
 	}
 	d := Diagnostic{Code: "unknown-name", Thing: o.thing(), Text: "node " + quoted(name) + " is not defined", Found: name, Want: "a node"}
 	names := r.nodeNames()
+	if whole {
+		names = append(names, r.resultNames()...)
+	}
 	near, ok := quantity.Nearest(name, names)
 	if domain, rest := r.c.domainOf(name); domain != "" && !ok {
 		near, ok = quantity.Nearest(rest, names)
@@ -234,66 +173,4 @@ func (r *reader) nodeNames() []string {
 		}
 	}
 	return names
-}
-
-// flow checks the name of a part whose flow is asked for, and returns the part
-// and its full name.
-func (r *reader) flow(o owner, n *node, name string) (*Element, string, bool) {
-	at := n.part(strings.LastIndex(n.text, name), len(name))
-	e, ok := r.pick(o, n, name, func(e *Element) bool { return r.c.net == nil || e.faulty || r.flows(e.FullName()) })
-	switch {
-	case ok:
-		return e, e.FullName(), true
-	case e != nil && (r.c.net == nil || r.flows(e.FullName())):
-		return e, "", false // there are two: reported
-	case e != nil:
-		r.at(at, Diagnostic{Code: "no-flow", Thing: o.thing(), Text: fmt.Sprintf("%s is %s, whose flow cannot be shown", quoted(name), article(e.Table.Name)),
-			Hint: "shown is the flow of a part between two nodes, of a source, or into a held node"})
-		return e, "", false
-	}
-	if r.missing(name) {
-		return nil, "", false
-	}
-	d := Diagnostic{Code: "unknown-name", Thing: o.thing(), Text: quoted(name) + " is not defined", Found: name, Want: "a part between two nodes"}
-	var parts []string
-	for _, e := range r.c.Elements {
-		if e.domain != "" && !e.isNode() && (r.c.net == nil || r.flows(e.FullName())) {
-			parts = append(parts, e.FullName())
-		}
-	}
-	_, place, atPlace := strings.Cut(name, " at ")
-	near, ok := quantity.Nearest(name, parts)
-	switch {
-	case atPlace && place != "":
-		d = Diagnostic{Code: "not-built", Thing: o.thing(), Text: "the flow at one end, " + quoted("flow of … at …") + ", is not known yet: this version does not build it",
-			Hint: "the flow of a part is read at its first-named end"}
-	case ok && at == n.span:
-		d.Fix = basic("flow of " + near)
-	case ok:
-		d.Fix = near
-	case len(parts) > 0:
-		d.Hint = "parts with a flow" + listed(parts)
-	}
-	r.at(at, d)
-	return nil, "", false
-}
-
-// flows reports whether the network has a flow under a full name: that of a
-// branch, of a source, or what a held node is supplied with.
-func (r *reader) flows(name string) bool {
-	if r.c.net == nil {
-		return false
-	}
-	if r.branches == nil {
-		r.branches = map[string]bool{}
-		for _, b := range r.c.net.Branches() {
-			if b.Kind == network.ResistanceBranch || b.Kind == network.InertanceBranch {
-				r.branches[b.Name] = true
-			}
-		}
-		for _, in := range r.c.net.Inputs() {
-			r.branches[in.Name] = true
-		}
-	}
-	return r.branches[name]
 }

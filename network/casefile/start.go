@@ -11,7 +11,9 @@ import (
 // numbers can.
 func (r *reader) trial() {
 	v, diags := r.c.Eval(nil)
-	if r.reportAll(diags); Failed(diags) || r.c.net == nil {
+	r.reportAll(diags)
+	r.c.warn(diags)
+	if Failed(diags) || r.c.net == nil {
 		return
 	}
 	p := r.c.net.NewParams()
@@ -86,7 +88,7 @@ func (r *reader) halfStart(s *startedness) {
 	if len(without) > most {
 		names += fmt.Sprintf(" and %d more", len(without)-most)
 	}
-	d := r.c.Diagnose(s.with, "half-started", "it states a start, but "+names+" do not", `state start for all, or [run] start = "steady" or a level for the rest`)
+	d := r.c.Diagnose(s.with, "half-started", "it states a start, but "+names+" do not", `state start for all, or [run] start = "steady", "at rest" or a level for the rest`)
 	if len(without) == 1 {
 		d.Text = "it states a start, but " + names + " does not"
 	}
@@ -98,15 +100,16 @@ func (r *reader) halfStart(s *startedness) {
 	r.report(d)
 }
 
-// partOf names the part a node belongs to: a node of its own, or the part it
-// lies inside.
+// partOf names the part that a node or a branch belongs to: a node of its own, or the
+// part it lies inside, as "wall.2" or "pipe/2".
 func (r *reader) partOf(node string) string {
+	node, _, _ = strings.Cut(node, "/")
 	e, ok := r.c.Part(node)
 	if dot := strings.LastIndexByte(node, '.'); !ok && dot > 0 {
 		e, ok = r.c.Part(node[:dot])
 	}
 	switch {
-	case ok && e.FullName() != e.Name:
+	case ok && (e.FullName() != e.Name || e.use != nil):
 		return e.Table.Name + " " + quoted(e.FullName())
 	case ok:
 		return e.Thing()

@@ -48,7 +48,7 @@ func testVocabulary() []casefile.Vocabulary {
 			{Name: "resistance", Stage: 1, Build: buildResistance, OneOf: [][]string{{"value", "conductance", "layer", "film"}}, Fields: []casefile.Field{
 				between(), positive("value", dimResistance), positive("conductance", dimConductance),
 				{Name: "layer", Type: casefile.Group, OneOf: [][]string{{"conductivity", "material"}}, Fields: []casefile.Field{
-					positive("conductivity", dimConduct), {Name: "material", Type: casefile.Name},
+					positive("conductivity", dimConduct), {Name: "material", Type: casefile.Name, Look: lookMaterial},
 					required(positive("thickness", dimLength)), required(positive("area", dimArea))}},
 				{Name: "film", Type: casefile.Group, Fields: []casefile.Field{
 					required(positive("coefficient", quantity.Dim{1, 0, -3, -1, 0})), required(positive("area", dimArea)),
@@ -70,7 +70,7 @@ func testVocabulary() []casefile.Vocabulary {
 				required(casefile.Field{Name: "stream", Type: casefile.Name, Refers: "stream"}),
 				required(casefile.Field{Name: "along", Type: casefile.Name, Refers: "node"})}},
 			{Name: "wall", Stage: 1, Fields: []casefile.Field{between(), {Name: "layers", Type: casefile.Groups, Required: true, Fields: []casefile.Field{
-				required(positive("thickness", dimLength)), {Name: "material", Type: casefile.Name, Required: true}}}}},
+				required(positive("thickness", dimLength)), {Name: "material", Type: casefile.Name, Required: true, Look: lookMaterial}}}}},
 		},
 		NotBuilt: []string{"heater", "resistance.radiation", "resistance.film.natural", "resistance.scale"},
 	}, {
@@ -107,15 +107,18 @@ func buildNode(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 	}, nil
 }
 
+func lookMaterial(e *casefile.Element, c *casefile.Case, path string) []casefile.Diagnostic {
+	name := e.NameOf(path)
+	if _, ok := c.Element("material", name); ok {
+		return nil
+	}
+	return []casefile.Diagnostic{e.Fault(path, fmt.Sprintf("material %q is not known", name), "a material of the case", "")}
+}
+
 func buildResistance(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	ends := e.Names("between")
 	from, _ := c.Node(ends[0])
 	to, _ := c.Node(ends[1])
-	if e.Has("layer.material") {
-		if _, ok := c.Element("material", e.NameOf("layer.material")); !ok {
-			return nil, []casefile.Diagnostic{e.Fault("layer.material", fmt.Sprintf("material %q is not known", e.NameOf("layer.material")), "a material of the case", "")}
-		}
-	}
 	id := b.Resistance(e.Name, from, to, e.Ref)
 	slot := e.NumOr("value", 1)
 	return func(v casefile.Values, p *network.Params) error {

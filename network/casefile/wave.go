@@ -1,6 +1,7 @@
 package casefile
 
 import (
+	"cmp"
 	"fmt"
 	"strings"
 
@@ -8,32 +9,6 @@ import (
 	"lagbook/network"
 	"lagbook/network/quantity"
 )
-
-// WaveInfo tells how a waveform was stated.
-type WaveInfo struct {
-	Text      string // as written, on one line
-	Form      string // "constant", "step", "points", "stairs", "pulse", "sine", "decay", "file"
-	Constant  bool   // a single quantity: it never changes
-	HasBefore bool   // the value before t = 0 was stated with `before`
-	Repeats   bool   // for ever: `repeat`, a sine, or a pulse without count
-	Dim       quantity.Dim
-	Kind      quantity.Kind
-	Ref       network.Ref // its place
-}
-
-// WaveInfo returns how the waveform of a slot was stated.
-func (c *Case) WaveInfo(s WaveSlot) WaveInfo {
-	w := &c.waves[s]
-	text := oneLine(c.src.text[w.n.at:w.n.end])
-	if w.n.kind == kindString {
-		text = w.n.text
-	}
-	return WaveInfo{
-		Text: text, Form: w.form, Constant: w.form == "constant", HasBefore: w.before != noSlot,
-		Repeats: w.repeat != noSlot || w.form == "sine" || w.form == "pulse" && w.count == 0,
-		Dim:     w.field.Dim, Kind: w.field.Kind, Ref: w.ref,
-	}
-}
 
 // A wave is a waveform as stated: slots, from which each Eval makes the waveform.
 type wave struct {
@@ -54,6 +29,16 @@ type wave struct {
 	repeat Slot
 	fixed  bool // depends on no given value
 	made   laplace.Waveform
+
+	expr     *quantity.Expr // of profiles: what form "profile" follows
+	text     *node          // that expression
+	profiles []int          // in it
+	self     int            // 1 + the profile that this is; 0: none
+	loose    bool           // a given value or a profile that varies is in the expression
+	steps    bool           // changes in steps only
+	still    bool           // form "profile": none of its profiles changes
+	earlier  bool           // form "profile": each that changes states its value before t = 0
+	bound    float64        // by how much made may be off
 }
 
 // maxBreaks is how many pieces all waveforms of a case may have together.
@@ -65,7 +50,7 @@ type waveFields struct {
 	table  []Field // what a table may hold
 }
 
-var waveForms = [][]string{{"step", "points", "stairs", "pulse", "sine", "decay", "file"}}
+var waveForms = [][]string{{"step", "points", "stairs", "pulse", "sine", "decay", "file", "expression"}}
 
 // formsOf makes the tables for a Wave field: its values have the dimension and
 // kind of the field, what is added to one is a difference.
@@ -76,6 +61,7 @@ func (r *reader) formsOf(field *Field) *waveFields {
 	value := func(name string) Field {
 		v := *field
 		v.Name, v.Type, v.Required = name, Number, true
+		v.Or, v.Against, v.Drives = nil, nil, ""
 		return v
 	}
 	diff := func(name string) Field {
@@ -88,28 +74,33 @@ func (r *reader) formsOf(field *Field) *waveFields {
 	time := func(name string, positive, required bool) Field {
 		return Field{Name: name, Type: Number, Dim: dimTime, HasMin: positive, MinOpen: true, Required: required}
 	}
+	instant := func(name string, required bool) Field {
+		return Field{Name: name, Type: Number, Dim: dimTime, Required: required, clock: true}
+	}
 	pairs := func(name string) Field {
 		v := value(name)
-		return Field{Name: name, Type: Pairs, Dim: dimTime, Second: &v}
+		return Field{Name: name, Type: Pairs, Dim: dimTime, clock: true, Second: &v}
 	}
 	optional := func(f Field) Field { f.Required = false; return f }
 	amplitude := diff("amplitude")
 	amplitude.HasMin, amplitude.Min = true, 0
 	forms := &waveFields{
-		number: value(field.Name),
+		number: value(cmp.Or(field.Name, "value")),
 		table: []Field{
-			{Name: "step", Type: Group, Fields: []Field{value("from"), value("to"), time("at", false, true)}},
+			{Name: "step", Type: Group, Fields: []Field{value("from"), value("to"), instant("at", true)}},
 			pairs("points"), pairs("stairs"),
 			{Name: "pulse", Type: Group, Fields: []Field{value("low"), value("high"), {Name: "width", Type: loose, Required: true, Dim: dimTime},
-				time("period", true, false), time("at", false, false), {Name: "count", Type: Count, HasMin: true, Min: 1, HasMax: true, Max: maxPulses}}},
+				time("period", true, false), instant("at", false), {Name: "count", Type: Count, HasMin: true, Min: 1, HasMax: true, Max: maxPulses}}},
 			{Name: "sine", Type: Group, OneOf: [][]string{{"period", "frequency"}, {"highest_at", "phase", ""}}, Fields: []Field{value("mean"), amplitude,
 				time("period", true, false), {Name: "frequency", Type: Number, Dim: dimRate, HasMin: true, MinOpen: true},
 				{Name: "highest_at", Type: loose, Dim: dimTime}, {Name: "phase", Type: Number}}},
 			{Name: "decay", Type: Groups, Fields: []Field{diff("amplitude"), time("time_constant", true, true)}},
 			{Name: "file", Type: Text}, {Name: "time", Type: Text, With: []string{"file"}}, {Name: "column", Type: Text, With: []string{"file"}},
+			{Name: "expression", Type: loose, Help: `"= load"`},
 			time("repeat", true, false), optional(value("before")),
 		},
 	}
+	forms.number.Or = field.Or // for a message that proposes it
 	r.forms[field] = forms
 	return forms
 }
@@ -123,7 +114,7 @@ var dimRate = quantity.Dim{0, 0, -1, 0, 0}
 func (f fielder) wave(n *node, field *Field) (s WaveSlot, source string, ok bool) {
 	c := f.r.c
 	forms := f.r.formsOf(field)
-	w := wave{field: field, n: n, owner: f.o, value: noSlot, before: noSlot, repeat: noSlot}
+	w := wave{field: field, n: n, owner: f.o, value: noSlot, before: noSlot, repeat: noSlot, self: f.profile}
 	moving := len(c.moving)
 	if n.kind == kindTable && n.get("value") != nil {
 		if n, source = f.r.withSource(f.o, n); n == nil {
@@ -134,32 +125,69 @@ func (f fielder) wave(n *node, field *Field) (s WaveSlot, source string, ok bool
 	if n.kind == kindTable {
 		source, ok = f.waveTable(n, forms, &w)
 	} else {
-		w.form = "constant"
-		w.value, ok = f.r.number(f.o, n, &forms.number)
+		ok = f.single(n, forms, &w)
 	}
 	if !ok {
 		return noSlot, source, false
 	}
-	w.fixed = len(c.moving) == moving
-	if f.r.breaks += 2*w.count + len(w.list) + len(w.data); f.r.breaks > maxBreaks {
-		f.r.at(n.span, Diagnostic{Code: "too-many", Thing: f.o.thing(), Text: fmt.Sprintf("with this, the waveforms of the case have more than %d pieces", maxBreaks)})
+	w.fixed = len(c.moving) == moving && !w.loose
+	w.steps = w.steps || stepwise[w.form]
+	pieces := 2*w.count + len(w.list) + len(w.data)
+	if f.r.breaks += pieces; pieces > 0 && f.r.breaks > maxBreaks {
+		f.tooMany(n)
 		return noSlot, source, false
 	}
-	made, diags := c.makeWave(&w, nil)
+	made, diags := c.makeWave(&w, f.r.asWritten())
 	if diags != nil {
 		f.r.reportAll(diags)
 		return noSlot, source, false
 	}
-	w.made = made
+	if f.r.breaks += piecesOf(&w, &made.wave); w.form == "profile" && f.r.breaks > maxBreaks {
+		f.tooMany(n)
+		return noSlot, source, false
+	}
+	w.made, w.bound = made.wave, made.bound
+	f.sampledRemark(&w)
 	w.ref = c.ref(n.span, f.o)
 	c.waves = append(c.waves, w)
+	if w.self > 0 {
+		c.curves[w.self-1] = made.curve
+	}
 	return WaveSlot(len(c.waves) - 1), source, true
+}
+
+func (f fielder) tooMany(n *node) {
+	f.r.at(n.span, Diagnostic{Code: "too-many", Thing: f.o.thing(), Text: fmt.Sprintf("with this, the waveforms of the case have more than %d pieces", maxBreaks)})
+}
+
+// piecesOf counts the pieces of the waveform of an expression, with the exponentials in them.
+func piecesOf(w *wave, made *laplace.Waveform) int {
+	if w.form != "profile" {
+		return 0 // counted as stated
+	}
+	n := len(made.Segments)
+	for i := range made.Segments {
+		n += len(made.Segments[i].Exp)
+	}
+	return n
+}
+
+// single reads what is no table: an expression of profiles, one by name, or a number.
+func (f fielder) single(n *node, forms *waveFields, w *wave) (ok bool) {
+	if is, ok := f.follow(n, w); is {
+		return ok
+	}
+	w.form = "constant"
+	w.value, ok = f.r.number(f.o, n, &forms.number)
+	return ok
 }
 
 // waveTable reads a waveform stated as a table.
 func (f fielder) waveTable(n *node, forms *waveFields, w *wave) (source string, ok bool) {
 	inner := f
-	inner.word += "." + w.field.Name
+	if w.field.Name != "" {
+		inner.word += "." + w.field.Name
+	}
 	list, source, ok := inner.fields(n, forms.table, waveForms)
 	file, column, times := "", "", ""
 	for i := range list {
@@ -175,6 +203,8 @@ func (f fielder) waveTable(n *node, forms *waveFields, w *wave) (source string, 
 			times = x.n.text
 		case "column":
 			column = x.n.text
+		case "expression":
+			ok = f.single(x.n, forms, w) && ok
 		default:
 			w.form = x.name
 			if ok {
@@ -253,16 +283,4 @@ func (f fielder) width(n *node) (s Slot, share, ok bool) {
 	}
 	s, ok = f.r.number(f.o, n, as)
 	return s, share, ok
-}
-
-// onClock reads a time from t = 0, or on the clock where the case has one.
-func (f fielder) onClock(n *node) (Slot, bool) {
-	if at, ok := clockTime(n.text); ok && n.kind == kindString {
-		if !f.r.c.Questions.HasClock {
-			f.r.at(n.span, Diagnostic{Code: "no-clock", Thing: f.o.thing(), Text: quoted(n.text) + " is a time of day; [run] states no clock", Hint: `add clock = "00:00" to [run]`})
-			return noSlot, false
-		}
-		return f.r.c.constant(at), true
-	}
-	return f.r.number(f.o, n, &Field{Name: "highest_at", Dim: dimTime})
 }

@@ -45,21 +45,17 @@ func (e *errData) Error() string { return e.text }
 
 // file reads the points of a waveform from a data file.
 func (f fielder) file(n *node, w *wave, name, timeName, valueName string) ([][2]float64, bool) {
-	place := n.get("file").span
-	data, err := f.r.open(name)
+	data, err := f.r.reopen(name)
+	key := "file"
 	var pts [][2]float64
 	if err == nil {
-		key := "file"
 		pts, key, err = data.points(f.r.c, name, timeName, valueName, w.field)
-		if k := n.get(key); k != nil {
-			place = k.span
-		}
 	}
 	if err == nil {
 		for _, p := range pts {
 			x := slot{field: &f.r.formsOf(w.field).number, n: n.get("file"), owner: f.o}
 			if d := f.r.c.inRange(&x, p[1]); d != nil {
-				err = &errData{text: fmt.Sprintf("%s holds %s, must be %s", quoted(name), f.r.c.show(p[1], w.field), d.Want)}
+				key, err = "file", &errData{text: fmt.Sprintf("%s holds %s, must be %s", quoted(name), f.r.c.show(p[1], w.field), d.Want)}
 				break
 			}
 		}
@@ -67,13 +63,22 @@ func (f fielder) file(n *node, w *wave, name, timeName, valueName string) ([][2]
 	if err == nil {
 		return pts, true
 	}
+	f.dataFault(n, key, err)
+	return nil, false
+}
+
+// dataFault reports what is wrong with a data file at the key of the case to blame.
+func (f fielder) dataFault(n *node, key string, err error) {
+	place := n.get("file").span
+	if k := n.get(key); k != nil {
+		place = k.span
+	}
 	d := Diagnostic{Code: "data-file", Thing: f.o.thing(), Text: err.Error()}
 	var e *errData
 	if errors.As(err, &e) {
 		d.Hint = e.hint
 	}
 	f.r.at(place, d)
-	return nil, false
 }
 
 // open reads a data file once.
@@ -205,22 +210,28 @@ func splitHead(cell string) columnHead {
 	return h
 }
 
-// points returns time and value; key is the key of the case to blame in an error.
-func (d *csvFile) points(c *Case, file, timeName, valueName string, field *Field) (pts [][2]float64, key string, err error) {
-	t, err := d.column(file, timeName, 0)
+// columns finds the columns of time and value; key is the key of the case to blame
+// in an error.
+func (d *csvFile) columns(file, timeName, valueName string) (t, v int, key string, err error) {
+	t, err = d.column(file, timeName, 0)
 	if err != nil {
-		return nil, "time", err
+		return t, v, "time", err
 	}
-	v := -1
 	switch {
 	case valueName != "":
-		if v, err = d.column(file, valueName, 0); err != nil {
-			return nil, "column", err
-		}
+		v, err = d.column(file, valueName, 0)
+		return t, v, "column", err
 	case len(d.heads) == 2:
-		v = 1 - t
-	default:
-		return nil, "file", &errData{text: fmt.Sprintf("%s has %d columns; column is missing", quoted(file), len(d.heads)), hint: "add column = " + basic(d.heads[len(d.heads)-1].name)}
+		return t, 1 - t, "file", nil
+	}
+	return t, v, "file", &errData{text: fmt.Sprintf("%s has %d columns; column is missing", quoted(file), len(d.heads)), hint: "add column = " + basic(d.heads[len(d.heads)-1].name)}
+}
+
+// points returns time and value; key is the key of the case to blame in an error.
+func (d *csvFile) points(c *Case, file, timeName, valueName string, field *Field) (pts [][2]float64, key string, err error) {
+	t, v, key, err := d.columns(file, timeName, valueName)
+	if err != nil {
+		return nil, key, err
 	}
 	ft, err := d.scale(c, file, t, &Field{Dim: dimTime})
 	if err != nil {

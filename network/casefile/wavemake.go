@@ -9,34 +9,52 @@ import (
 	"lagbook/network/quantity"
 )
 
-// makeWave makes the waveform from the numbers of all slots, nil for as written,
-// and checks what only numbers show.
-func (c *Case) makeWave(w *wave, num []float64) (laplace.Waveform, []Diagnostic) {
-	m := maker{c: c, w: w, num: num}
+// A madeWave is a waveform made from numbers.
+type madeWave struct {
+	wave  laplace.Waveform
+	bound float64 // by how much it may be off
+	curve *curve  // what it is in an expression
+}
+
+// makeWave makes the waveform in a scene and checks what only numbers show.
+func (c *Case) makeWave(w *wave, s *scene) (madeWave, []Diagnostic) {
+	m := maker{c: c, w: w, s: s}
 	made := m.make()
+	whole := m.curve != nil // the curve says all
 	if m.diags == nil && w.repeat != noSlot {
-		made = m.repeated(made)
+		made, whole = m.repeated(made), false
 	}
 	if m.diags == nil && w.before != noSlot {
-		made = made.WithBefore(m.at(w.before))
+		made, whole = made.WithBefore(m.at(w.before)), false
 	}
-	return made, m.diags
+	if m.diags == nil && w.form == "profile" {
+		m.inRange(&made)
+	}
+	if !whole {
+		return madeWave{made, m.bound, &curve{wave: made, bound: m.bound}}, m.diags
+	}
+	kept := *m.curve
+	kept.wave, kept.bound, kept.done = made, m.bound, true
+	return madeWave{made, m.bound, &kept}, m.diags
 }
 
 // A maker makes one waveform.
 type maker struct {
 	c     *Case
 	w     *wave
-	num   []float64
+	s     *scene
+	first float64 // the first time stated, where it lies before t = 0
 	last  float64 // the last time stated
+	curve *curve  // of an expression
+	bound float64
 	diags []Diagnostic
 }
 
 func (m *maker) at(s Slot) float64 {
-	if m.num == nil {
+	if m.s.num == nil {
 		return m.c.slots[s].si
 	}
-	return m.num[s]
+	return m.s.num[s]
 }
 
 // key returns the value of a key, 0 where it is not stated.
@@ -58,6 +76,8 @@ func (m *maker) make() laplace.Waveform {
 	var made laplace.Waveform
 	var err error
 	switch m.w.form {
+	case "profile":
+		return m.follow()
 	case "constant":
 		return laplace.Constant(m.at(m.w.value))
 	case "step":
@@ -103,6 +123,9 @@ func (m *maker) points() [][2]float64 {
 		pts = make([][2]float64, len(m.w.list))
 		for i, x := range m.w.list {
 			pts[i] = [2]float64{m.at(x.list[0].slot), m.at(x.list[1].slot)}
+			if i > 0 {
+				pts[i][0] = laterDay(x.list[0].n, pts[i][0], pts[i-1][0])
+			}
 			if i > 0 && pts[i][0] < pts[i-1][0] {
 				m.fault(x.list[0].n, fmt.Sprintf("%s: the time %s comes after %s; times do not go back", m.w.form,
 					quantity.Duration(pts[i][0]), quantity.Duration(pts[i-1][0])))
@@ -115,6 +138,9 @@ func (m *maker) points() [][2]float64 {
 		}
 	}
 	m.last = pts[len(pts)-1][0]
+	if m.w.repeat != noSlot && m.onClock() {
+		return m.around(pts)
+	}
 	return pts
 }
 
@@ -155,7 +181,10 @@ func (m *maker) repeated(made laplace.Waveform) laplace.Waveform {
 	case m.w.form == "sine" || m.w.form == "pulse" && m.w.count == 0:
 		m.fault(n, m.w.form+" repeats by itself; repeat has no place here")
 		return made
-	case m.last > period*(1+1e-12):
+	case m.last-m.first > period*(1+1e-12) && m.first < 0:
+		m.fault(n, fmt.Sprintf("repeat is %s, but the %s go on for %s", quantity.Duration(period), m.w.form, quantity.Duration(m.last-m.first)))
+		return made
+	case m.last > period*(1+1e-12) && m.first == 0:
 		m.fault(n, fmt.Sprintf("repeat is %s, but the last time of the %s is %s", quantity.Duration(period), m.w.form, quantity.Duration(m.last)))
 		return made
 	}

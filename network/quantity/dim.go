@@ -108,6 +108,7 @@ var names = []named{
 	{Dim{1, 2, -3, -1, -2}, "electrical resistance of a kelvin", "Ω/K", "µΩ/K mΩ/K Ω/K"},
 	{Dim{-1, -2, 3, 0, 2}, "electrical conductance", "S", "µS mS S"},
 	{Dim{0, 0, 1, 0, 1}, "charge", "C", "µC mC C kC"},
+	{Dim{1, 2, -2, 0, -1}, "magnetic flux", "V·s", "µV·s mV·s V·s"},
 	{Dim{-1, -2, 4, 0, 2}, "capacitance", "F", "pF nF µF mF F"},
 	{Dim{1, 2, -2, 0, -2}, "inductance", "H", "µH mH H"},
 	{Dim{0, -2, 0, 0, 1}, "current of an area", "A/m²", ""},

@@ -45,6 +45,10 @@
 //	20 W/area          area is no unit: the same
 //	20 W/m             refused where m is a name of the case
 //
+// Curves computes an expression of which some names stand for quantities that
+// change with time: it checks units and levels by the same rules, and leaves the
+// operations on what changes to its caller.
+//
 // # Not here
 //
 // Amount of substance and luminous intensity, logarithmic units, and normal

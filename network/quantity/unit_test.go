@@ -69,6 +69,15 @@ func TestFactorsFollowFromTheirDefinitions(t *testing.T) {
 		{"1 L", "= 1 dm³"},
 		{"1 P", "= 0.1 Pa·s"},
 		{"1 St", "= 1 cm^2 / 1 s"},
+		{"1 cSt", "= 1 mm²/s"},
+		{"1 cP", "= 1 mPa·s"},
+		{"46 cSt", "= 40.02 mPa·s / 870 kg/m³"},
+		{"1450 1/min", "= 1450 rpm"},
+		{"24 1/s", "= 24 rev/s"},
+		{"1 N/mm", "= 1000 N/m"},
+		{"40 N·s/m", "= 40 kg/s"},
+		{"1 kg·m²", "= 1 N·m·s² * 1 rad"},
+		{"16 m³/h", "= 16 m³ / 3600 s"},
 	} {
 		got := parsed(t, c.unit)[0]
 		e, err := Compile(c.definition, testNames())

@@ -1,6 +1,6 @@
 // Package casetest is what the tests of every domain need: a case read, built and
-// answered straight from its network, the published checks under testdata, and the
-// fuzzing of whole cases. It is the way from text to response without package study.
+// answered or marched straight from its network, the published checks under testdata, and
+// the fuzzing of whole cases. It is the way from text to response without package study.
 //
 // A test fails with the name of the case and what was said about it. Everything is
 // in SI. Read is where to start.
@@ -81,30 +81,25 @@ func Said(text string, words ...casefile.Vocabulary) string {
 	return said.String()
 }
 
-// output is a node, a difference "a - b", or "flow of X" of a part or a held node.
+// output is a node, a difference "a - b", or a reading: "flow of main", "level of t1",
+// "flow of main at vessel".
 func (m *Model) output(name string) network.Output {
 	m.t.Helper()
-	if part, ok := strings.CutPrefix(name, "flow of "); ok {
-		return m.flow(part)
-	}
 	if a, b, ok := strings.Cut(name, " - "); ok {
 		return m.Net.Difference(m.node(a), m.node(b))
 	}
-	return m.Net.Level(m.node(name))
-}
-
-func (m *Model) flow(part string) network.Output {
-	m.t.Helper()
-	for _, b := range m.Net.Branches() {
-		switch {
-		case b.Name != part:
-		case b.Kind == network.ResistanceBranch:
-			return m.Net.FlowOf(network.ResistanceID(b.Index))
-		case b.Kind == network.InertanceBranch:
-			return m.Net.InertanceFlowOf(network.InertanceID(b.Index))
-		}
+	word, part, ok := strings.Cut(name, " of ")
+	if !ok {
+		return m.Net.Level(m.node(name))
 	}
-	return m.Net.SupplyOf(m.node(part))
+	out, ok := m.Case.Showing(part, word)
+	if before, at, end := strings.Cut(part, " at "); !ok && end {
+		out, ok = m.Case.Showing(before, word+" at "+at)
+	}
+	if !ok {
+		m.t.Fatalf("%s: no %s of %q", m.Case.File, word, part)
+	}
+	return out
 }
 
 func (m *Model) node(name string) network.NodeID {
@@ -116,14 +111,19 @@ func (m *Model) node(name string) network.NodeID {
 	return id
 }
 
+func (m *Model) outputs(names []string) []network.Output {
+	m.t.Helper()
+	list := make([]network.Output, len(names))
+	for i, name := range names {
+		list[i] = m.output(name)
+	}
+	return list
+}
+
 // Reduce reduces the network with the outputs named.
 func (m *Model) Reduce(outputs ...string) *network.Reduction {
 	m.t.Helper()
-	list := make([]network.Output, len(outputs))
-	for i, name := range outputs {
-		list[i] = m.output(name)
-	}
-	r, err := m.Net.Reduce(m.Params, list)
+	r, err := m.Net.Reduce(m.Params, m.outputs(outputs))
 	if err != nil {
 		m.t.Fatalf("%s: %v", m.Case.File, err)
 	}
@@ -138,16 +138,6 @@ func (m *Model) Respond(until float64, outputs ...string) *laplace.Response {
 		m.t.Fatalf("%s: %v", m.Case.File, err)
 	}
 	return r
-}
-
-// Final is what an output of a response comes to, which must exist.
-func Final(t testing.TB, r *laplace.Response, out int) float64 {
-	t.Helper()
-	v, ok := r.Final(out)
-	if !ok {
-		t.Fatalf("output %d has no final value", out)
-	}
-	return v
 }
 
 // Derived returns the derivation that shows a quantity.

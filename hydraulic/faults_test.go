@@ -20,7 +20,7 @@ resistance = "1 MPa·s/m³"
 // Every mistake that this package finds, or that its tables make casefile find.
 func TestFaults(t *testing.T) {
 	for _, c := range []struct{ name, text, want string }{
-		{"neither R nor L", good + "[hydraulic.line.x]\nbetween = [\"main\", \"tank\"]", "missing-key: case.toml:9:17: line \"x\": neither resistance nor inertance is stated"},
+		{"neither R nor L", good + "[hydraulic.line.x]\nbetween = [\"main\", \"tank\"]", "missing-key: case.toml:9:17: line \"x\": neither resistance, inertance nor pipe is stated"},
 		{"one node", good + "[hydraulic.line.x]\nbetween = [\"tank\", \"tank\"]\nresistance = \"1 Pa·s/m³\"", "names \"tank\" twice"},
 		{"no node", good + "[hydraulic.line.x]\nbetween = [\"tank\", \"tnk\"]\nresistance = \"1 Pa·s/m³\"", "node \"tnk\" is not defined"},
 		{"start without inertance", good + "start = \"1 L/s\"", "start needs inertance beside it"},
@@ -42,14 +42,8 @@ func TestFaults(t *testing.T) {
 		{"pressures misspelt", "[hydraulic]\npressures = \"guage\"\n" + good, "did you mean \"gauge\"?"},
 		{"gauge atmosphere", "[hydraulic]\natmosphere = \"0 bar(g)\"\n" + good, "an absolute pressure"},
 		{"atmosphere that varies", "[given]\np = \"1 bar(a)\"\n[hydraulic]\natmosphere = \"= p\"\n" + good, "fixed: "},
-		{"a word of a later version at the head", "[hydraulic]\nfluid = \"water\"\n" + good, "not-built: case.toml:2:1: \"fluid\" is not known yet"},
-		{"density", "[hydraulic]\ndensity = \"1000 kg/m³\"\n" + good, "not-built: "},
-		{"a pipe", good + "[hydraulic.line.x]\nbetween = [\"main\", \"tank\"]\npipe = { length = \"1 m\" }", "not-built: "},
-		{"a tank", "[hydraulic.node.x]\ntank = { area = \"1 m²\" }\n" + good, "not-built: "},
-		{"elevation", "[hydraulic.node.x]\nelevation = \"1 m\"\n" + good, "not-built: "},
-		{"a pump", good + "[hydraulic.pump.p]\nfrom = \"tank\"", "not-built: "},
-		{"a level for a pressure", "[hydraulic.node.x]\nheld = { level = \"1 m\" }\n" + good, "not-built: "},
-		{"a level for a start", strings.Replace(good, "compliance", "start = { level = \"1 m\" }\ncompliance", 1), "not-built: "},
+		{"a cylinder", good + "[hydraulic.cylinder.c]\ncap = \"tank\"", "not-built: "},
+		{"an exact pipe", good + "[hydraulic.line.x]\nbetween = [\"main\", \"tank\"]\npipe = { length = \"1 m\", bore = \"1 cm\", exact = true }", "not-built: "},
 		{"a key nobody knows", "[hydraulic]\npresures = \"gauge\"\n" + good, "did you mean \"pressures\"?"},
 		{"a capacitance", strings.Replace(good, "compliance", "capacitance", 1), "\"capacitance\" is not a key of node"},
 		{"alone", good + "[hydraulic.node.alone]\n", "unconnected: "},
@@ -61,8 +55,6 @@ func TestFaults(t *testing.T) {
 		{"throttled without a resistance", strings.Replace(good, "resistance = \"1 MPa·s/m³\"", "inertance = \"1 Pa·s²/m³\"\nscale = 0.5", 1), "a scale of 0.5 on a line with inertance and no resistance"},
 		{"half started", strings.Replace(good, "compliance", "start = \"1 bar\"\ncompliance", 1) + "inertance = \"1 Pa·s²/m³\"", "half-started: "},
 		{"a line started, its vessel not", good + "inertance = \"1 Pa·s²/m³\"\nstart = \"1 L/s\"", "half-started: "},
-		{"a flow at one end", good + "[[table]]\nshow = [\"flow of pipe at tank\"]\ntimes = [\"0 s\"]", "not-built: "},
-		{"level of", good + "[[table]]\nshow = [\"level of tank\"]\ntimes = [\"0 s\"]", "not-built: "},
 	} {
 		if got := faults(c.text + "\n"); !strings.Contains(got, c.want) {
 			t.Errorf("%s: %q is not among\n%s", c.name, c.want, got)

@@ -14,6 +14,19 @@ var (
 	compliance = quantity.Dim{-1, 4, 2, 0, 0}
 	resistance = quantity.Dim{1, -4, -1, 0, 0}
 	inertance  = quantity.Dim{1, -4, 0, 0, 0}
+
+	length      = quantity.Dim{0, 1, 0, 0, 0}
+	area        = quantity.Dim{0, 2, 0, 0, 0}
+	volume      = quantity.Dim{0, 3, 0, 0, 0}
+	velocity    = quantity.Dim{0, 1, -1, 0, 0}
+	density     = quantity.Dim{1, -3, 0, 0, 0}
+	viscosity   = quantity.Dim{1, -1, -1, 0, 0}
+	kinematic   = quantity.Dim{0, 2, -1, 0, 0}
+	turning     = quantity.Dim{1, 2, 0, 0, 0} // moment of inertia
+	power       = quantity.Dim{1, 2, -3, 0, 0}
+	frequency   = quantity.Dim{0, 0, -1, 0, 0} // of events or turns
+	duration    = quantity.Dim{0, 0, 1, 0, 0}
+	temperature = quantity.Dim{0, 0, 0, 1, 0}
 )
 
 // atmosphere is what lies between gauge and absolute.

@@ -5,24 +5,28 @@ import (
 
 	"lagbook/network"
 	"lagbook/network/casefile"
+	"lagbook/network/quantity"
 )
 
-// lineTable is [hydraulic.line.NAME]: what liquid flows through between two nodes,
-// p_a − p_b = R·q + L·dq/dt, and R/scale in the place of R where it has a scale. A
-// scale of 0 shuts it.
+// lineTable is [hydraulic.line.NAME]: what liquid flows through between two nodes. It is
+// stated by numbers, p_a − p_b = R·q + L·dq/dt, with R/scale in the place of R where it
+// has a scale, and a scale of 0 shuts it; or as a pipe.
 func lineTable() casefile.Table {
-	start := casefile.Field{Name: "start", Type: casefile.Number, Dim: flow, With: []string{"inertance"},
-		Help: "flow at t = 0, from the first-named end"}
 	return casefile.Table{
 		Name:  "line",
 		Stage: 1,
-		Help:  "a line between two nodes: a resistance, a column of liquid, or both in series",
+		Help:  "a line between two nodes: a resistance, a column of liquid, or both in series; or a pipe by its geometry",
+		OneOf: [][]string{{"resistance", "pipe", ""}, {"inertance", "pipe", ""}, {"scale", "pipe", ""}},
 		Fields: []casefile.Field{
 			casefile.Between(),
 			casefile.Positive("resistance", resistance, "R, pressure lost for each m³/s"),
 			casefile.Positive("inertance", inertance, "L, of a column of liquid: ρ·length/area"),
-			start,
+			pipeField(),
+			{Name: "start", Type: casefile.Number, Dim: flow, Help: "flow at t = 0, from the first-named end"},
 			casefile.ScaleField("multiplies what it conducts, in steps: R becomes R/scale; 0 shuts it, a valve or a pump that trips, and stops a column at once"),
+		},
+		Readings: []casefile.Reading{
+			{Word: "velocity", Dim: velocity, Kind: quantity.Plain, Help: "of a pipe: the mean one at its first end, of the bore that the file states"},
 		},
 		Build:  buildLine,
 		Derive: deriveLine,
@@ -34,6 +38,14 @@ func buildLine(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 	if faults != nil {
 		return nil, faults
 	}
+	if e.Has("pipe") {
+		return buildPipe(e, c, b, from, to)
+	}
+	if e.Has("start") && !e.Has("inertance") {
+		d := e.Fault("start", "start needs inertance beside it: without it the flow follows from the pressures", "", "")
+		d.Code, d.Hint = "missing-key", `add inertance = "1 Pa·s²/m³", or state a pipe`
+		return nil, []casefile.Diagnostic{d}
+	}
 	scale, faults := casefile.ScalingOf(e, c, b)
 	switch {
 	case faults != nil:
@@ -41,8 +53,8 @@ func buildLine(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 	case e.Has("inertance"):
 		return buildColumn(e, b, scale, from, to), nil
 	case !e.Has("resistance"):
-		d := e.Fault("", "neither resistance nor inertance is stated", "", "")
-		d.Code, d.Hint = "missing-key", `add resistance = "1 Pa·s/m³", inertance = "1 Pa·s²/m³", or both`
+		d := e.Fault("", "neither resistance, inertance nor pipe is stated", "", "")
+		d.Code, d.Hint = "missing-key", `add resistance = "1 Pa·s/m³", inertance = "1 Pa·s²/m³", both, or pipe = { … }`
 		return nil, []casefile.Diagnostic{d}
 	}
 	id, slot := b.Resistance(e.FullName(), from, to, e.Ref), e.Num("resistance")
@@ -102,7 +114,10 @@ func openOrShut(e *casefile.Element, scales []float64) error {
 	return nil
 }
 
-func deriveLine(e *casefile.Element, _ *casefile.Case, v casefile.Values) []casefile.Derivation {
+func deriveLine(e *casefile.Element, c *casefile.Case, v casefile.Values) []casefile.Derivation {
+	if e.Has("pipe") {
+		return derivePipe(e, c, v)
+	}
 	var list []casefile.Derivation
 	if e.Has("resistance") {
 		list = append(list, stated(e, "resistance", "R", resistance, v))

@@ -21,19 +21,27 @@ func nodeTable() casefile.Table {
 					required(materialName("an own material or one of the handbook")),
 					casefile.Positive("volume", volume, "V"),
 					casefile.Positive("mass", mass, "m"),
-					{Name: "extra", Type: casefile.Number, Dim: dimless, HasMin: true, Help: "what is fixed to the body, as a share of it"},
+					{Name: "extra", Type: casefile.Number, Dim: dimless, HasMin: true, Help: "what is fixed to the body, as a share of it; it does not melt"},
+					meltsField(),
 				}},
 			{Name: "held", Type: casefile.Wave, Dim: temperature, Kind: quantity.Level, HasMin: true, MinOpen: true,
 				Help: "its temperature is given, whatever flows"},
 			level("start", "temperature at t = 0"),
 		},
-		Build:  buildNode,
-		Derive: deriveNode,
+		Readings: lumpReadings(),
+		Build:    buildNode,
+		Derive:   deriveNode,
 	}
 }
 
 func buildNode(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
 	id, setters, faults := e.AddNode(c, b)
+	if l, varies, more := varyingLump(e, c); varies || more != nil {
+		if faults = append(faults, more...); faults != nil {
+			return nil, faults
+		}
+		return casefile.Together(append(setters, l.build(e, b, id))...), nil
+	}
 	store, stores, more := capacityLaw(e, c)
 	if stores && more == nil {
 		at := b.Capacity(id, e.Ref)
@@ -57,34 +65,41 @@ func capacityLaw(e *casefile.Element, c *casefile.Case) (l law, stores bool, fau
 	return l, false, nil
 }
 
-// lumpLaw is ρ·V·c·(1 + extra) or m·c·(1 + extra).
+// lumpLaw is ρ·V·c·(1 + extra) or m·c·(1 + extra); where c is stated against temperature, it
+// is that at the usual one.
 func lumpLaw(e *casefile.Element, c *casefile.Case) (law, []casefile.Diagnostic) {
-	s, faults := substanceAt(e, c, "lump.material")
+	m, heat, faults := lumpOf(e, c)
 	if faults != nil {
 		return law{}, faults
 	}
-	heat, faults := s.property(e, "lump.material", "specific_heat", specificHeat)
 	extra := typedOr(e, "lump.extra", 0, "")
-	l := law{}
-	body := number{}
-	if e.Has("lump.mass") {
-		body = typed(e, "lump.mass")
-		l.formula, l.numbers = "m·c", body.text+" · "+heat.text
-		l.value = func(v casefile.Values) float64 { return body.at(v) * heat.at(v) * (1 + extra.at(v)) }
-		l.source = sources(heat, body)
-	} else {
-		rho, more := s.property(e, "lump.material", "density", density)
-		faults = append(faults, more...)
-		body = typed(e, "lump.volume")
-		l.formula, l.numbers = "ρ·V·c", rho.text+" · "+body.text+" · "+heat.text
-		l.value = func(v casefile.Values) float64 { return rho.at(v) * body.at(v) * heat.at(v) * (1 + extra.at(v)) }
-		l.source = sources(rho, heat, body)
+	l := law{
+		formula: m.formula + "·c", numbers: m.numbers + " · " + heat.text, source: m.source,
+		value: func(v casefile.Values) float64 { return m.value(v) * heat.at(v) * (1 + extra.at(v)) },
 	}
 	if e.Has("lump.extra") {
 		l.formula += "·(1 + extra)"
 		l.numbers += " · (1 + " + extra.text + ")"
 	}
-	return l, faults
+	return l, nil
+}
+
+// lumpOf is the mass of a lump in kg, ρ·V or m, and its specific heat. The source is that of both.
+func lumpOf(e *casefile.Element, c *casefile.Case) (m law, heat number, faults []casefile.Diagnostic) {
+	s, faults := substanceAt(e, c, "lump.material")
+	if faults != nil {
+		return law{}, number{}, faults
+	}
+	heat, faults = s.against(e, "lump.material", "specific_heat", specificHeat)
+	if e.Has("lump.mass") {
+		m = asTyped("m", typed(e, "lump.mass"))
+		m.source = sources(heat, typed(e, "lump.mass"))
+		return m, heat, faults
+	}
+	rho, more := s.property(e, "lump.material", "density", density)
+	size := typed(e, "lump.volume")
+	return law{formula: "ρ·V", numbers: rho.text + " · " + size.text, source: sources(rho, heat, size),
+		value: func(v casefile.Values) float64 { return rho.at(v) * size.at(v) }}, heat, append(faults, more...)
 }
 
 func deriveNode(e *casefile.Element, c *casefile.Case, v casefile.Values) []casefile.Derivation {
@@ -92,5 +107,11 @@ func deriveNode(e *casefile.Element, c *casefile.Case, v casefile.Values) []case
 	if !stores || faults != nil {
 		return nil
 	}
-	return []casefile.Derivation{l.derive("capacitance of "+e.Name, capacitance, v)}
+	d := l.derive("capacitance of "+e.Name, capacitance, v)
+	if e.Has("lump") {
+		if _, heat, _ := lumpOf(e, c); heat.points != nil {
+			d.Quantity += " at 20 °C"
+		}
+	}
+	return append(deriveMelting(e, c, v), d)
 }

@@ -1,6 +1,7 @@
 package thermal
 
 import (
+	"fmt"
 	"strings"
 
 	"lagbook/network/casefile"
@@ -11,13 +12,20 @@ import (
 type number struct {
 	slot   casefile.Slot
 	fixed  bool
-	value  float64 // SI, where fixed
-	text   string  // as typed, or the handbook's value with its unit
+	value  float64   // SI, where fixed
+	points []onCurve // where it is stated against temperature: at is then its value at the usual one
+	text   string    // as typed, or the handbook's value with its unit
 	source string
 }
 
+// onCurve is one point of a property against temperature.
+type onCurve struct{ x, y casefile.Slot }
+
 // typed is the number that stands at a path of an element.
 func typed(e *casefile.Element, path string) number {
+	if at := path + ".points"; e.Has(at) {
+		return number{points: pointsAt(e, at), text: "(points)", source: e.SourceOf(path)}
+	}
 	return number{slot: e.Num(path), text: asFactor(e.Text(path)), source: e.SourceOf(path)}
 }
 
@@ -35,10 +43,44 @@ func known(v float64, dim quantity.Dim, source string) number {
 }
 
 func (n number) at(v casefile.Values) float64 {
-	if n.fixed {
+	switch {
+	case n.fixed:
 		return n.value
+	case n.points != nil:
+		return n.alongPoints(v, usual)
 	}
 	return v.Num[n.slot]
+}
+
+// pointsAt are the points that stand at a path.
+func pointsAt(e *casefile.Element, path string) []onCurve {
+	points := make([]onCurve, e.Len(path))
+	for i := range points {
+		one := fmt.Sprintf("%s[%d].", path, i)
+		points[i] = onCurve{e.Num(one + "first"), e.Num(one + "second")}
+	}
+	return points
+}
+
+// alongPoints is the value at x, straight between the points and constant outside.
+func (n number) alongPoints(v casefile.Values, x float64) float64 {
+	before := n.points[0]
+	for _, p := range n.points {
+		if v.Num[p.x] > x {
+			if p == before {
+				break
+			}
+			share := (x - v.Num[before.x]) / (v.Num[p.x] - v.Num[before.x])
+			return v.Num[before.y] + share*(v.Num[p.y]-v.Num[before.y])
+		}
+		before = p
+	}
+	return v.Num[before.y]
+}
+
+// onto puts points into a curve.
+func onto(c *curve, points []onCurve, v casefile.Values) {
+	c.set(len(points), func(i int) (x, y float64) { return v.Num[points[i].x], v.Num[points[i].y] })
 }
 
 // asFactor makes a typed text fit to stand in a product: an expression in

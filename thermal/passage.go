@@ -53,7 +53,10 @@ func passagesOf(e *casefile.Element, c *casefile.Case, b *network.Builder, path 
 		if !p.Has("conductance") && !(p.Has("film") && p.Has("area")) {
 			continue
 		}
-		k, faults := stretchOf(p, e)
+		k, faults := stretchOf(p, "between", e)
+		if faults == nil && builtElsewhere(c, e, k) {
+			continue
+		}
 		plate, ok := p.Node(p.NameOf("along"))
 		if faults != nil || !ok || plate == path[k] || plate == path[k+1] {
 			continue
@@ -64,6 +67,28 @@ func passagesOf(e *casefile.Element, c *casefile.Case, b *network.Builder, path 
 			fromPlate: b.OneWay(p.FullName()+"/2", plate, path[k+1], p.Ref),
 			ua:        contactLaw(p),
 		})
+	}
+	return list
+}
+
+// onStretch returns the passages, plugs and exchangers on a stretch of a stream, in file order.
+func onStretch(c *casefile.Case, stream *casefile.Element, k int) (list []*casefile.Element) {
+	for _, p := range c.Elements {
+		switch {
+		case isPassageOf(p, stream.Name), isPlugOf(p, stream.Name):
+			if j, faults := stretchOf(p, "between", stream); faults == nil && j == k {
+				list = append(list, p)
+			}
+		case isExchanger(p):
+			for i, name := range p.Names("streams") {
+				if name != stream.Name {
+					continue
+				}
+				if j, faults := stretchOf(p, exchangerKeys[i], stream); faults == nil && j == k {
+					list = append(list, p)
+				}
+			}
+		}
 	}
 	return list
 }
@@ -87,7 +112,7 @@ func buildPassage(e *casefile.Element, c *casefile.Case, _ *network.Builder) (ca
 	if !ok {
 		return nil, []casefile.Diagnostic{e.Fault("stream", "a name that is not a stream", "the name of a stream", "")}
 	}
-	k, faults := stretchOf(e, stream)
+	k, faults := stretchOf(e, "between", stream)
 	if faults != nil {
 		return nil, faults
 	}
@@ -95,37 +120,46 @@ func buildPassage(e *casefile.Element, c *casefile.Case, _ *network.Builder) (ca
 	if along := e.NameOf("along"); along == path[k] || along == path[k+1] {
 		return nil, []casefile.Diagnostic{e.Fault("along", fmt.Sprintf("%q is in the stream's own path", along), "the node of the surface it passes", "")}
 	}
-	for _, other := range c.Elements {
-		if other == e {
-			break // the first of several is right, each later one is told
-		}
-		if !isPassageOf(other, stream.Name) {
-			continue
-		}
-		if j, broken := stretchOf(other, stream); broken == nil && j == k {
-			d := e.Fault("stream", fmt.Sprintf("passage %q lies on the same stretch of stream %q, %q to %q", other.Name, stream.Name, path[k], path[k+1]), "", "")
-			d.Hint = "put a node between the two in the stream's path: a stream passes one surface after the other"
-			return nil, []casefile.Diagnostic{d}
-		}
-	}
-	return nil, nil
+	return nil, taken(e, c, stream, k)
 }
 
-// stretchOf finds which stretch of the stream's path a passage lies on.
-func stretchOf(e, stream *casefile.Element) (int, []casefile.Diagnostic) {
+// taken reports that another part lies on a part's stretch already: the first of several is
+// right, each later one is told.
+func taken(e *casefile.Element, c *casefile.Case, stream *casefile.Element, k int) []casefile.Diagnostic {
+	other := onStretch(c, stream, k)[0]
+	if other == e {
+		return nil
+	}
+	path := stream.Names("path")
+	d := e.Fault(streamKey(e), fmt.Sprintf("%s %q lies on the same stretch of stream %q, %q to %q", other.Table.Name, other.Name, stream.Name, path[k], path[k+1]), "", "")
+	d.Hint = "put a node between the two in the stream's path: a stream passes one surface after the other"
+	return []casefile.Diagnostic{d}
+}
+
+// streamKey is the key by which a part names the streams it is about.
+func streamKey(e *casefile.Element) string {
+	if isExchanger(e) {
+		return "streams"
+	}
+	return "stream"
+}
+
+// stretchOf finds which stretch of a stream's path a part lies on: the only one, or that between
+// the two neighbours that a key of the part names.
+func stretchOf(e *casefile.Element, key string, stream *casefile.Element) (int, []casefile.Diagnostic) {
 	path := stream.Names("path")
 	if len(path) < 2 {
-		return 0, []casefile.Diagnostic{e.Fault("stream", "a stream without a path", "a stream of two nodes or more", "")}
+		return 0, []casefile.Diagnostic{e.Fault("", "stream "+fmt.Sprintf("%q", stream.Name)+" has no path", "a stream of two nodes or more", "")}
 	}
-	if !e.Has("between") {
+	if !e.Has(key) {
 		if len(path) == 2 {
 			return 0, nil
 		}
-		d := e.Fault("stream", fmt.Sprintf("stream %q passes %d nodes: between is missing", stream.Name, len(path)), "", "")
-		d.Hint = "name the two neighbours of its path between which this passage lies: between = [" + quotedNames(path[:2]) + "]"
+		d := e.Fault("", fmt.Sprintf("stream %q passes %d nodes: %s is missing", stream.Name, len(path), key), "", "")
+		d.Hint = "name the two neighbours of its path between which this " + e.Table.Name + " lies: " + key + " = [" + quotedNames(path[:2]) + "]"
 		return 0, []casefile.Diagnostic{d}
 	}
-	want := e.Names("between")
+	want := e.Names(key)
 	for _, w := range [2][2]string{{want[0], want[1]}, {want[1], want[0]}} { // in the direction of flow first
 		for i := range path[1:] {
 			if path[i] == w[0] && path[i+1] == w[1] {
@@ -133,7 +167,7 @@ func stretchOf(e, stream *casefile.Element) (int, []casefile.Diagnostic) {
 			}
 		}
 	}
-	return 0, []casefile.Diagnostic{e.Fault("between", quotedNames(want)+" are not neighbours in the path of stream "+fmt.Sprintf("%q", stream.Name),
+	return 0, []casefile.Diagnostic{e.Fault(key, quotedNames(want)+" are not neighbours in the path of stream "+fmt.Sprintf("%q", stream.Name),
 		"two that follow each other in "+quotedNames(path), "")}
 }
 

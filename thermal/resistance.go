@@ -13,7 +13,7 @@ import (
 func resistanceTable() casefile.Table {
 	made := func(own ...casefile.Field) []casefile.Field {
 		return append([]casefile.Field{
-			casefile.Positive("conductivity", conductivity, "k"),
+			againstTemperature(casefile.Positive("conductivity", conductivity, "k")),
 			materialName("an own material or one of the handbook, in place of conductivity"),
 		}, own...)
 	}
@@ -22,8 +22,8 @@ func resistanceTable() casefile.Table {
 		Name:  "resistance",
 		Stage: 1,
 		Help:  "a resistance between two nodes",
-		OneOf: [][]string{{"value", "conductance", "layer", "shell", "contact", "film"}},
-		Fields: []casefile.Field{
+		OneOf: [][]string{{"value", "conductance", "layer", "shell", "contact", "film", "fins", "spreading", "radiation", "points"}},
+		Fields: append([]casefile.Field{
 			casefile.Between(),
 			casefile.Positive("value", resistance, "R"),
 			casefile.Positive("conductance", conductance, "1/R"),
@@ -32,23 +32,48 @@ func resistanceTable() casefile.Table {
 			{Name: "shell", Type: casefile.Group, OneOf: ofWhat, Help: "a tube wall: ln(ro/ri)/(2π·k·L)",
 				Fields: made(required(casefile.Positive("inner_radius", length, "ri")), required(casefile.Positive("outer_radius", length, "ro")),
 					required(casefile.Positive("length", length, "L")))},
-			{Name: "contact", Type: casefile.Group, Help: "a joint: 1/(h·A)",
-				Fields: []casefile.Field{required(casefile.Positive("coefficient", coefficient, "h")), required(casefile.Positive("area", area, "A"))}},
-			{Name: "film", Type: casefile.Group, Help: "convection at a surface: 1/(h·A·η)",
-				Fields: []casefile.Field{required(casefile.Positive("coefficient", coefficient, "h")), required(casefile.Positive("area", area, "A")),
-					{Name: "efficiency", Type: casefile.Number, Dim: dimless, HasMin: true, MinOpen: true, HasMax: true, Max: 1, Help: "η of a finned surface; 1 unless stated"}}},
+			contactField(), filmField(), finsField(), spreadingField(),
+			radiationField(),
 			scaleField(),
-		},
+		}, catalogueFields()...),
+		Readings: append(filmReadings(), // of radiation too
+			casefile.Reading{Word: "resistance", Dim: resistance, Help: "of a part whose resistance is not one number: that of the moment"}),
 		Build:  buildResistance,
 		Derive: deriveResistance,
 	}
 }
 
 func buildResistance(e *casefile.Element, c *casefile.Case, b *network.Builder) (casefile.Setter, []casefile.Diagnostic) {
+	if convects(e) {
+		return buildConvection(e, c, b)
+	}
 	from, to, faults := e.Ends()
-	l, more := conductanceLaw(e, c)
-	scale, wrong := casefile.ScalingOf(e, c, b)
-	if faults = append(append(faults, more...), wrong...); faults != nil {
+	if faults != nil {
+		return nil, faults
+	}
+	at := ends{b, from, to}
+	switch {
+	case e.Has("radiation"):
+		return buildRadiation(e, c, at)
+	case e.Has("points") || e.Has("at_rise"):
+		return buildCatalogue(e, at), nil
+	}
+	l, faults := conductanceLaw(e, c)
+	if faults != nil {
+		return nil, faults
+	}
+	points := varyingConductivity(e, c)
+	switch {
+	case points != nil:
+		return buildPart(e, at, func() *conducting { return &conducting{} }, func(v casefile.Values, f *conducting) {
+			onto(&f.k, points, v)
+			f.g = l.value(v) / f.k.usual()
+		}), nil
+	case e.Has("scale") && casefile.NotInSteps(e, c, "scale", "") != nil:
+		return buildPart(e, at, func() *ohmic { return &ohmic{} }, func(v casefile.Values, f *ohmic) { f.g = l.value(v) }), nil
+	}
+	scale, faults := casefile.ScalingOf(e, c, b)
+	if faults != nil {
 		return nil, faults
 	}
 	id := b.Resistance(e.FullName(), from, to, e.Ref)
@@ -73,7 +98,9 @@ func conductanceLaw(e *casefile.Element, c *casefile.Case) (law, []casefile.Diag
 	case e.Has("shell"):
 		return shellLaw(e, c)
 	case e.Has("contact"):
-		return surfaceLaw(e, "contact"), nil
+		return jointLaw(e, c)
+	case e.Has("spreading"):
+		return spreadingLaw(e, c)
 	}
 	return surfaceLaw(e, "film"), nil
 }
@@ -124,7 +151,7 @@ func surfaceLaw(e *casefile.Element, kind string) law {
 	}
 }
 
-// conductivityOf is k as stated, or that of the material named.
+// conductivityOf is k as stated, or that of the material named; it may be points.
 func conductivityOf(e *casefile.Element, c *casefile.Case, prefix string) (number, []casefile.Diagnostic) {
 	if e.Has(prefix + "conductivity") {
 		return typed(e, prefix+"conductivity"), nil
@@ -133,15 +160,37 @@ func conductivityOf(e *casefile.Element, c *casefile.Case, prefix string) (numbe
 	if faults != nil {
 		return number{}, faults
 	}
-	return s.property(e, prefix+"material", "conductivity", conductivity)
+	return s.against(e, prefix+"material", "conductivity", conductivity)
+}
+
+// varyingConductivity is that of a layer or shell where it is stated against temperature, else nil.
+func varyingConductivity(e *casefile.Element, c *casefile.Case) []onCurve {
+	for _, kind := range []string{"layer", "shell"} {
+		if e.Has(kind) {
+			k, _ := conductivityOf(e, c, kind+".")
+			return k.points
+		}
+	}
+	return nil
 }
 
 func deriveResistance(e *casefile.Element, c *casefile.Case, v casefile.Values) []casefile.Derivation {
+	switch {
+	case convects(e):
+		return deriveConvection(e, c, v)
+	case e.Has("radiation"):
+		return deriveRadiation(e, c, v)
+	case e.Has("points") || e.Has("at_rise"):
+		return deriveCatalogue(e, v)
+	}
 	l, faults := conductanceLaw(e, c)
 	if faults != nil {
 		return nil
 	}
 	d := l.derive("resistance of "+e.Name, resistance, v)
+	if varyingConductivity(e, c) != nil {
+		d.Quantity += " at 20 °C"
+	}
 	d.SI = 1 / d.SI
 	return []casefile.Derivation{d}
 }

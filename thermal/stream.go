@@ -45,23 +45,41 @@ func buildStream(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 	names := e.Names("path")
 	plain := make([]network.OneWayID, len(names)-1)
 	for i := range plain {
-		name := e.FullName()
-		if i > 0 {
-			name = fmt.Sprintf("%s/%d", e.FullName(), i+1)
+		plain[i] = elsewhere
+		if !builtElsewhere(c, e, i) {
+			plain[i] = b.OneWay(stretchName(e, i), nodes[i], nodes[i+1], e.Ref)
 		}
-		plain[i] = b.OneWay(name, nodes[i], nodes[i+1], e.Ref)
 	}
 	along := passagesOf(e, c, b, nodes)
 	return func(v casefile.Values, p *network.Params) error {
 		w := rate.value(v) * scale.Factor(v, p)
 		for _, id := range plain {
-			p.W[id] = w
+			if id != elsewhere {
+				p.W[id] = w
+			}
 		}
 		for i := range along {
 			along[i].set(v, p, w, plain)
 		}
 		return nil
 	}, nil
+}
+
+// elsewhere marks a stretch on which an exchanger or a plug lies: that builds it.
+const elsewhere network.OneWayID = -1
+
+// builtElsewhere reports whether the stretch of a stream is an exchanger's or a plug's.
+func builtElsewhere(c *casefile.Case, stream *casefile.Element, k int) bool {
+	on := onStretch(c, stream, k)
+	return len(on) > 0 && (isExchanger(on[0]) || isPlugOf(on[0], stream.Name))
+}
+
+// stretchName names a stretch: the first bears the name of the stream.
+func stretchName(e *casefile.Element, i int) string {
+	if i == 0 {
+		return e.FullName()
+	}
+	return fmt.Sprintf("%s/%d", e.FullName(), i+1)
 }
 
 // pathNodes returns the nodes of the path.

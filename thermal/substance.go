@@ -74,8 +74,20 @@ func keysOf(list []material.Material) string {
 // own material does not say what it is.
 func (s substance) solid() bool { return s.own == nil && s.book.Phase == material.Solid }
 
-// property returns one property. The name is that of the key in [material.NAME].
+// property returns one property that must be one number. The name is that of the key in
+// [material.NAME].
 func (s substance) property(e *casefile.Element, path, name string, dim quantity.Dim) (number, []casefile.Diagnostic) {
+	n, faults := s.against(e, path, name, dim)
+	if n.points != nil {
+		d := e.Fault(path, fmt.Sprintf("%s of material %q is stated against temperature", name, s.own.Name), "one value", "")
+		d.Hint = "layers, shells, walls and lumps take it against temperature; what else there is takes one value: define a second material for it"
+		return number{}, []casefile.Diagnostic{d}
+	}
+	return n, faults
+}
+
+// against returns one property, which may be points against temperature.
+func (s substance) against(e *casefile.Element, path, name string, dim quantity.Dim) (number, []casefile.Diagnostic) {
 	if s.own != nil {
 		if s.own.Has(name) {
 			return typed(s.own, name), nil
@@ -123,8 +135,34 @@ func materialTable() casefile.Table {
 		Help: "a material of the case's own; it hides one of the handbook by the same name",
 		Fields: []casefile.Field{
 			casefile.Positive("density", density, "ρ"),
-			casefile.Positive("specific_heat", specificHeat, "c"),
-			casefile.Positive("conductivity", conductivity, "k"),
+			againstTemperature(casefile.Positive("specific_heat", specificHeat, "c")),
+			againstTemperature(casefile.Positive("conductivity", conductivity, "k")),
+			{Name: "emissivity", Type: casefile.Number, Dim: dimless, HasMin: true, MinOpen: true, HasMax: true, Max: 1, Help: "ε of its surface"},
 		},
 	}
+}
+
+// emissivityOf is ε as stated, or that of the material named.
+func emissivityOf(e *casefile.Element, c *casefile.Case, prefix string) (number, []casefile.Diagnostic) {
+	if e.Has(prefix + "emissivity") {
+		return typed(e, prefix+"emissivity"), nil
+	}
+	path := prefix + "material"
+	s, faults := substanceAt(e, c, path)
+	if faults != nil {
+		return number{}, faults
+	}
+	if s.own != nil {
+		return s.property(e, path, "emissivity", dimless)
+	}
+	r := s.book.Emissivity
+	if r.Low > 0 && r.Low == r.High {
+		return known(r.Low, dimless, s.book.Name+": "+s.book.EmissivitySource+" (from memory)"), nil
+	}
+	d := e.Fault(path, fmt.Sprintf("the handbook has no emissivity of %s", s.book.Key), "", "")
+	if r.Low > 0 {
+		d = e.Fault(path, fmt.Sprintf("the emissivity of %s lies between %g and %g", s.book.Key, r.Low, r.High), "", "")
+	}
+	d.Hint = "state emissivity in place of material: it depends on the finish"
+	return number{}, []casefile.Diagnostic{d}
 }

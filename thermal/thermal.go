@@ -16,17 +16,26 @@
 //
 // with R of a layer t/(kA), of a shell ln(r_o/r_i)/(2πkL), of a contact 1/(hA), of
 // a film 1/(hAη); C of a lump ρVc(1 + extra); a passage, in which a stream warms
-// along a surface, by the exact 1 − exp(−UA/w); a transient thermal impedance by
-// the ladder equal to its Foster terms; a wall by lumps with half a resistance on
-// either side. Symbols: k W/(m·K), h W/(m²·K), ρ kg/m³, c J/(kg·K), A m², t m.
+// along a surface, by the exact 1 − exp(−UA/w); an exchanger of two streams by its
+// effectiveness; a transient thermal impedance by the ladder equal to its Foster
+// terms; a wall by lumps with half a resistance on either side. All these are linear,
+// with numbers that stay or change in steps (scale). These are not:
+//
+//	   q = k·(T_a⁴ − T_b⁴)                      radiation, k = σεFA, or between grey surfaces
+//	   q = h(T_a, T_b)·A·(T_a − T_b)            film and fins by correlation
+//	   q = (T_a − T_b)/R(|T_a − T_b|)           catalogue resistance
+//	   q = g·∫k dT from T_b to T_a              layer or shell with k against temperature
+//	   q = drive(t)·2^((T_on − at)/every)       source that doubles; or points against temperature
+//	S' = Σ q, S = m·∫c dT + m·L·share(T)        lump with c against temperature, or that melts
+//	   q = low … high                           heater: on or off, or gain·(e + ∫e dt/t_i)
+//
+// Symbols: k W/(m·K), h W/(m²·K), ρ kg/m³, c J/(kg·K), A m², t m, L J/kg, σ W/(m²·K⁴).
 //
 // # Not modelled
 //
-// Everything here is linear, with numbers that stay or change in steps (scale): films,
-// conductivities and capacities that depend on temperature, radiation, melting and
-// controlled heaters are words of the vocabulary that casefile refuses by name. The heat a lump conducts inside itself,
-// heat stored in a stream between its nodes, and the travel time of a stream are
-// left out.
+// The heat a lump conducts inside itself, heat stored in a stream or an exchanger between
+// its nodes, and the travel time of a stream are left out. Walls, streams and lumps by volume
+// take a density that does not change; what melts does so over a range that must be stated.
 //
 // # Where to start
 //
@@ -44,30 +53,27 @@ func Vocabulary() []casefile.Vocabulary {
 			Measures: casefile.Measures{Level: temperature, Flow: power, LevelWord: "temperature", FlowWord: "heat",
 				StoreWord: "heat store", Lump: "mass", StoreKey: "capacitance", Sample: "20 °C"},
 			Tables: []casefile.Table{
-				nodeTable(), resistanceTable(), impedanceTable(), wallTable(), streamTable(), passageTable(), sourceTable(),
+				nodeTable(), resistanceTable(), impedanceTable(), wallTable(), streamTable(), passageTable(), exchangerTable(),
+				plugTable(), sourceTable(),
+				heaterTable(), surfaceTable(),
 			},
-			NotBuilt: []string{
-				"exchanger", "heater", "surface",
-				"node.lump.melts",
-				"resistance.radiation", "resistance.fins", "resistance.spreading", "resistance.at_rise", "resistance.exponent",
-				"resistance.points",
-				"resistance.film.natural", "resistance.film.forced", "resistance.film.height", "resistance.film.length",
-				"resistance.film.diameter", "resistance.film.gap", "resistance.film.speed", "resistance.film.fluid",
-				"wall.exact",
-				"source.doubles_every", "source.points",
-			},
-			Check: check,
+			NotBuilt: []string{"wall.exact"},
+			Check:    check,
 		},
 		{
-			Tables: []casefile.Table{materialTable()},
-			NotBuilt: []string{"air", "material.emissivity",
-				"material.density.points", "material.specific_heat.points", "material.conductivity.points"},
+			Tables:   []casefile.Table{materialTable()},
+			NotBuilt: []string{"material.density.points"},
 		},
+		airVocabulary(),
 	}
 }
 
 // check looks at what only values can show: radii that do not enclose each
 // other, and streams that leave a node without having entered it.
 func check(c *casefile.Case, v casefile.Values) []casefile.Diagnostic {
-	return append(checkShells(c, v), checkStreams(c, v)...)
+	var faults []casefile.Diagnostic
+	for _, look := range []func(*casefile.Case, casefile.Values) []casefile.Diagnostic{checkShells, checkRadiation, checkConvection, checkCatalogue, checkHeaters, checkStreams} {
+		faults = append(faults, look(c, v)...)
+	}
+	return faults
 }

@@ -2,6 +2,7 @@ package thermal
 
 import (
 	"fmt"
+	"slices"
 
 	"lagbook/network"
 	"lagbook/network/casefile"
@@ -25,9 +26,9 @@ func wallTable() casefile.Table {
 				Help: "in order from the first-named node",
 				Fields: []casefile.Field{
 					materialName("an own material or one of the handbook"),
-					casefile.Positive("conductivity", conductivity, "k, with density and specific_heat in place of a material"),
+					againstTemperature(casefile.Positive("conductivity", conductivity, "k, with density and specific_heat in place of a material")),
 					casefile.Positive("density", density, "ρ"),
-					casefile.Positive("specific_heat", specificHeat, "c"),
+					againstTemperature(casefile.Positive("specific_heat", specificHeat, "c")),
 					required(casefile.Positive("thickness", length, "t")),
 					casefile.Positive("area", area, "A of this layer, where it differs"),
 				}},
@@ -68,6 +69,10 @@ func buildWall(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 	if faults != nil {
 		return nil, faults
 	}
+	if slices.ContainsFunc(layers, wallLayer.varies) {
+		w := &varyingWall{layers, n, append(append([]network.NodeID{from}, inner...), to)}
+		return casefile.Together(append(w.build(e, b), startsOf(e, inner)...)...), nil
+	}
 	capacities := make([]network.CapacityID, total)
 	for i, node := range inner {
 		capacities[i] = b.Capacity(node, e.Ref)
@@ -87,13 +92,19 @@ func buildWall(e *casefile.Element, c *casefile.Case, b *network.Builder) (casef
 		p.G[resistances[total]] = 1 / before
 		return nil
 	}}
-	if e.Has("start") {
-		slot := e.Num("start")
-		for _, node := range inner {
-			setters = append(setters, casefile.SetStart(node, slot))
-		}
+	return casefile.Together(append(setters, startsOf(e, inner)...)...), nil
+}
+
+// startsOf gives every lump of a wall the temperature at which it starts, where that is stated.
+func startsOf(e *casefile.Element, inner []network.NodeID) (setters []casefile.Setter) {
+	if !e.Has("start") {
+		return nil
 	}
-	return casefile.Together(setters...), nil
+	slot := e.Num("start")
+	for _, node := range inner {
+		setters = append(setters, casefile.SetStart(node, slot))
+	}
+	return setters
 }
 
 // wallLayers reads the layers.
@@ -146,9 +157,9 @@ func layerOfMaterial(e *casefile.Element, c *casefile.Case, prefix string) (l wa
 		return l, append(faults, unknown...)
 	}
 	var missing [3][]casefile.Diagnostic
-	l.k, missing[0] = s.property(e, path, "conductivity", conductivity)
+	l.k, missing[0] = s.against(e, path, "conductivity", conductivity)
 	l.rho, missing[1] = s.property(e, path, "density", density)
-	l.c, missing[2] = s.property(e, path, "specific_heat", specificHeat)
+	l.c, missing[2] = s.against(e, path, "specific_heat", specificHeat)
 	for _, m := range missing {
 		faults = append(faults, m...)
 	}

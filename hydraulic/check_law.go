@@ -15,6 +15,11 @@ type checkLaw struct {
 	cracking float64 // Pa
 }
 
+// seeping is the share of its law that an open check valve lets back below the drop at
+// which it opens: enough for the levels beside it to be determined until it shuts, and too
+// little for a small volume behind it to follow the pressure back.
+const seeping = 1e-6
+
 // Eval implements network.Law. While it is open its law goes on below the drop at which
 // it shuts, so that the instant can be found.
 func (l *checkLaw) Eval(s *network.Stamp) {
@@ -22,6 +27,9 @@ func (l *checkLaw) Eval(s *network.Stamp) {
 		return
 	}
 	q, dq := l.pass.across(drop(s.X[0], s.X[1]) - l.cracking)
+	if q < 0 {
+		q, dq = seeping*q, seeping*dq
+	}
 	oneWay(s, q, dq)
 }
 

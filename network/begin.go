@@ -232,8 +232,8 @@ func (b *beginning) close(x []float64) error {
 	for k, shut := range b.p.Shut {
 		if shut && b.p.HasStartFlow[k] && b.p.StartFlow[k] != 0 {
 			w := &e.g.inertances[k]
-			faults = append(faults, Fault{StartConflict, []NodeID{w.from}, []Ref{w.ref}, "inertance " + strconv.Quote(w.name) +
-				": start is " + number(b.p.StartFlow[k]) + ", and it is shut just before t = 0"})
+			text, figure := e.g.figured(w.from, "inertance "+strconv.Quote(w.name)+": start is ", b.p.StartFlow[k], ", and it is shut just before t = 0")
+			faults = append(faults, Fault{Code: StartConflict, Nodes: []NodeID{w.from}, Refs: []Ref{w.ref}, Text: text, Figure: figure})
 		}
 	}
 	if faults = append(faults, b.conflicts(x)...); len(faults) > 0 {
@@ -258,8 +258,8 @@ func (b *beginning) conflicts(x []float64) (faults []Fault) {
 			}
 		}
 		if miss, size := e.arriving(m); stated > 0 && math.Abs(miss) > followTolerance*(size+stated) {
-			faults = append(faults, Fault{StartConflict, m.nodes, append(refs, e.g.refsOf(m.nodes)...), e.g.named(m.nodes) +
-				": the flows stated to start with do not fit one another: " + number(miss) + " flows in and nowhere out"})
+			text, figure := e.g.figured(m.nodes[0], e.g.named(m.nodes)+": the flows stated to start with do not fit one another: ", miss, " flows in and nowhere out")
+			faults = append(faults, Fault{Code: StartConflict, Nodes: m.nodes, Refs: append(refs, e.g.refsOf(m.nodes)...), Text: text, Figure: figure})
 		}
 	}
 	return faults

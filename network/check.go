@@ -10,21 +10,21 @@ func (g *graph) check(heldTwice []input) []Fault {
 	}
 	var faults []Fault
 	for _, in := range heldTwice {
-		faults = append(faults, Fault{HeldTwice, []NodeID{in.node}, []Ref{in.ref, g.nodes[in.node].ref},
-			g.named([]NodeID{in.node}) + ": is held twice"})
+		faults = append(faults, Fault{Code: HeldTwice, Nodes: []NodeID{in.node}, Refs: []Ref{in.ref, g.nodes[in.node].ref},
+			Text: g.named([]NodeID{in.node}) + ": is held twice"})
 	}
 	faults = append(faults, g.selfLoops()...)
 	alone := g.unconnected()
 	for id, yes := range alone {
 		if yes {
 			n := NodeID(id)
-			faults = append(faults, Fault{Unconnected, []NodeID{n}, []Ref{g.nodes[n].ref},
-				g.named([]NodeID{n}) + ": nothing connects to it"})
+			faults = append(faults, Fault{Code: Unconnected, Nodes: []NodeID{n}, Refs: []Ref{g.nodes[n].ref},
+				Text: g.named([]NodeID{n}) + ": nothing connects to it"})
 		}
 	}
 	faults = append(faults, g.mixed(alone)...)
 	for _, group := range g.undetermined(alone) {
-		faults = append(faults, Fault{Undetermined, group, g.refsOf(group), g.named(group) +
+		faults = append(faults, Fault{Code: Undetermined, Nodes: group, Refs: g.refsOf(group), Text: g.named(group) +
 			": " + plural(group, "has", "have") + " no capacity and no path from a held node or a store, so that nothing determines the level"})
 	}
 	return faults
@@ -53,14 +53,14 @@ func (g *graph) selfLoops() []Fault {
 		}
 		for _, b := range list {
 			if b.from == b.to {
-				faults = append(faults, Fault{SelfLoop, []NodeID{b.from}, []Ref{b.ref},
-					BranchKind(kind).String() + " " + strconv.Quote(b.name) + ": begins and ends at " + g.named([]NodeID{b.from})})
+				faults = append(faults, Fault{Code: SelfLoop, Nodes: []NodeID{b.from}, Refs: []Ref{b.ref},
+					Text: BranchKind(kind).String() + " " + strconv.Quote(b.name) + ": begins and ends at " + g.named([]NodeID{b.from})})
 			}
 		}
 	}
 	for i := range g.elements {
 		if e := &g.elements[i]; e.Joins && len(e.Ports) == 2 && e.Ports[0] == e.Ports[1] {
-			faults = append(faults, Fault{SelfLoop, e.Ports[:1], []Ref{e.ref}, strconv.Quote(e.Name) + ": begins and ends at " + g.named(e.Ports[:1])})
+			faults = append(faults, Fault{Code: SelfLoop, Nodes: e.Ports[:1], Refs: []Ref{e.ref}, Text: strconv.Quote(e.Name) + ": begins and ends at " + g.named(e.Ports[:1])})
 		}
 	}
 	return faults
@@ -225,20 +225,20 @@ func (g *graph) remarks() []Fault {
 	for i := range g.nodes {
 		n := NodeID(i)
 		if g.isHeld(n) && len(g.nodes[i].capacities) > 0 {
-			list = append(list, Fault{HeldCapacity, []NodeID{n}, []Ref{g.capacities[g.nodes[i].capacities[0]].ref, g.nodes[i].ref},
-				g.named([]NodeID{n}) + ": is held, so that its capacity counts only in what its driver delivers"})
+			list = append(list, Fault{Code: HeldCapacity, Nodes: []NodeID{n}, Refs: []Ref{g.capacities[g.nodes[i].capacities[0]].ref, g.nodes[i].ref},
+				Text: g.named([]NodeID{n}) + ": is held, so that its capacity counts only in what its driver delivers"})
 		}
 	}
 	for _, in := range g.inputs {
 		if !in.held && g.isHeld(in.node) {
-			list = append(list, Fault{NoEffect, []NodeID{in.node}, []Ref{in.ref},
-				"source " + strconv.Quote(in.name) + ": leads into the held " + g.named([]NodeID{in.node}) + " and changes nothing"})
+			list = append(list, Fault{Code: NoEffect, Nodes: []NodeID{in.node}, Refs: []Ref{in.ref},
+				Text: "source " + strconv.Quote(in.name) + ": leads into the held " + g.named([]NodeID{in.node}) + " and changes nothing"})
 		}
 	}
 	for _, f := range g.feedbacks {
 		if g.isHeld(f.to) {
-			list = append(list, Fault{NoEffect, []NodeID{f.to}, []Ref{f.ref},
-				"feedback " + strconv.Quote(f.name) + ": leads into the held " + g.named([]NodeID{f.to}) + " and changes nothing"})
+			list = append(list, Fault{Code: NoEffect, Nodes: []NodeID{f.to}, Refs: []Ref{f.ref},
+				Text: "feedback " + strconv.Quote(f.name) + ": leads into the held " + g.named([]NodeID{f.to}) + " and changes nothing"})
 		}
 	}
 	return list

@@ -55,11 +55,11 @@ func (e *equations) projectKeeping(t float64, x []float64, stated []bool) error 
 func (e *equations) undetermined(column int) Fault {
 	if n, ok := e.nodeAt(column); ok {
 		id := []NodeID{n}
-		return Fault{Undetermined, id, append(e.refsAt(n), e.g.refsOf(id)...), e.g.named(id) + ": has no capacity, and " +
+		return Fault{Code: Undetermined, Nodes: id, Refs: append(e.refsAt(n), e.g.refsOf(id)...), Text: e.g.named(id) + ": has no capacity, and " +
 			"as its parts stand nothing determines its level"}
 	}
 	name, refs := e.unknownAt(column)
-	return Fault{Undetermined, nil, refs, name + ": nothing determines it"}
+	return Fault{Code: Undetermined, Nodes: nil, Refs: refs, Text: name + ": nothing determines it"}
 }
 
 // unsolved is the fault of algebraic rows without a solution, about the row that is
@@ -181,12 +181,12 @@ func (e *equations) pressing(m *meeting, t float64, x []float64) Fault {
 	if len(names) > 1 {
 		verb = " bring "
 	}
-	what := number(net) + ", and nothing is open to take it away"
+	what := ", and nothing is open to take it away"
 	if net < 0 {
-		verb, what = strings.Replace(verb, "bring", "take", 1), number(-net)+", and nothing is open to bring it"
+		verb, what = strings.Replace(verb, "bring", "take", 1), ", and nothing is open to bring it"
 	}
-	return Fault{Undetermined, slices.Clone(m.whole), append(refs, e.g.refsOf(m.whole)...), e.g.named(m.whole) + ": " + listed(names) + verb +
-		what + e.shutNamed(m.whole) + "; open a way, give a relief or a capacity"}
+	text, figure := e.g.figured(m.whole[0], e.g.named(m.whole)+": "+listed(names)+verb, math.Abs(net), what+e.shutNamed(m.whole))
+	return Fault{Code: NoWayOut, Nodes: slices.Clone(m.whole), Refs: append(refs, e.g.refsOf(m.whole)...), Text: text, Figure: figure}
 }
 
 // listed writes "a, b and c".

@@ -53,6 +53,8 @@ func (e *equations) flowValue(f *FlowTerm, t float64, x, rate []float64) float64
 	case ResistanceFlow:
 		b := &e.g.resistances[f.Resistance]
 		return e.now.G[f.Resistance] * (e.levelAt(b.from, t, x) - e.levelAt(b.to, t, x))
+	case FeedbackFlow:
+		return e.now.K[f.Feedback] * (e.levelAt(e.g.feedbacks[f.Feedback].from, t, x) - e.now.About[f.Feedback])
 	case InertanceFlow:
 		return x[e.l.flow[f.Inertance]]
 	case SourceFlow:

@@ -24,12 +24,13 @@ const (
 	StartConflict                     // start flows that do not fit one another at a joint
 	HeldCapacity                      // remark: a held node that stores
 	NoEffect                          // remark: a source, stream or feedback into a held node
+	NoWayOut                          // something flows into what is shut all round, or out of it
 )
 
 func (c FaultCode) String() string {
 	return [...]string{
 		"empty", "unconnected", "self loop", "held twice", "undetermined", "bad number", "unbalanced",
-		"singular massless", "flipped massless", "out of range", "start of no store", "start conflict", "held capacity", "no effect",
+		"singular massless", "flipped massless", "out of range", "start of no store", "start conflict", "held capacity", "no effect", "no way out",
 	}[c]
 }
 
@@ -41,6 +42,7 @@ type Fault struct {
 	Nodes []NodeID
 	Refs  []Ref // of the parts at fault first, then of the nodes
 	Text  string
+	Figure
 }
 
 // Faults is the error of Build: everything wrong with the structure.
@@ -65,6 +67,7 @@ type SteadyFault struct {
 	Reason SteadyReason
 	Net    float64 // what flows into the group and finds no way out, where that is the reason
 	Text   string
+	Figure
 }
 
 // SteadyReason tells why there is no one steady state.
@@ -76,6 +79,7 @@ const (
 	FeedbackExact                     // feedback balances the losses exactly
 	Unsolved                          // no levels were found at which all balances close
 	Cycling                           // modes of elements follow one another for ever
+	Enclosed                          // something flows into what is shut all round, or out of it
 )
 
 // Nonlinear is the error of what is answered for linear networks alone.

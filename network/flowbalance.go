@@ -136,15 +136,15 @@ func (c *flowStart) name() {
 // misfit is the fault of a stated flow that the others do not allow.
 func (c *flowStart) misfit(b InertanceID, follows float64) error {
 	v := c.n.g.inertances[b]
-	return &ParamFault{List: []Fault{{StartConflict, []NodeID{v.from, v.to}, []Ref{v.ref}, "inertance " + strconv.Quote(v.name) +
+	return &ParamFault{List: []Fault{{Code: StartConflict, Nodes: []NodeID{v.from, v.to}, Refs: []Ref{v.ref}, Text: "inertance " + strconv.Quote(v.name) +
 		": start is " + number(c.p.StartFlow[b]) + ", and the flows stated at its joint make it " + number(follows)}}}
 }
 
 // notShut is the fault of a stated flow through what is shut.
 func (c *flowStart) notShut(b InertanceID) error {
 	v := c.n.g.inertances[b]
-	return &ParamFault{List: []Fault{{StartConflict, []NodeID{v.from}, []Ref{v.ref}, "inertance " + strconv.Quote(v.name) +
-		": start is " + number(c.p.StartFlow[b]) + ", and it is shut just before t = 0"}}}
+	text, figure := c.n.g.figured(v.from, "inertance "+strconv.Quote(v.name)+": start is ", c.p.StartFlow[b], ", and it is shut just before t = 0")
+	return &ParamFault{List: []Fault{{Code: StartConflict, Nodes: []NodeID{v.from}, Refs: []Ref{v.ref}, Text: text, Figure: figure}}}
 }
 
 // unattained fills Unattained where feedbacks could make the network unstable. A

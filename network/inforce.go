@@ -35,7 +35,7 @@ func (n *Network) inForce(p *Params) (*Network, error) {
 	none := make([]bool, len(g.nodes))
 	var faults []Fault
 	for _, nodes := range g.undetermined(none) {
-		faults = append(faults, Fault{Undetermined, nodes, g.refsOf(nodes), g.named(nodes) + ": " + plural(nodes, "has", "have") +
+		faults = append(faults, Fault{Code: Undetermined, Nodes: nodes, Refs: g.refsOf(nodes), Text: g.named(nodes) + ": " + plural(nodes, "has", "have") +
 			" no capacity, and " + atRest(p) + " nothing determines the level"})
 	}
 	if len(faults) == 0 {
@@ -63,7 +63,7 @@ func (n *Network) fed(g *graph) (faults []Fault) {
 	}
 	for _, in := range g.inputs {
 		if id := []NodeID{in.node}; !in.held && member[in.node] {
-			faults = append(faults, Fault{Undetermined, id, append([]Ref{in.ref}, g.refsOf(id)...), g.named(id) +
+			faults = append(faults, Fault{Code: Undetermined, Nodes: id, Refs: append([]Ref{in.ref}, g.refsOf(id)...), Text: g.named(id) +
 				": while something is shut only inertances are left to take what a source brings here, so that its flow would have to set theirs at once; give a capacity"})
 		}
 	}

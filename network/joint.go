@@ -76,7 +76,7 @@ func (g *graph) mixed(skip []bool) []Fault {
 			}
 		}
 		if len(refs) > 0 {
-			faults = append(faults, Fault{Undetermined, nodes, append(refs, g.refsOf(nodes)...), g.named(nodes) +
+			faults = append(faults, Fault{Code: Undetermined, Nodes: nodes, Refs: append(refs, g.refsOf(nodes)...), Text: g.named(nodes) +
 				": inertances meet here without a capacity or a resistance to the rest, and a stream or a feedback ends here, so that nothing determines the level; give a capacity"})
 		}
 	}

@@ -97,8 +97,8 @@ type Readable interface {
 }
 
 // Cautious is a law that knows where it stops being right. Caution returns a code and a
-// sentence, "" where all is well; a march asks after each step and keeps the first of
-// each code.
+// sentence, "" where all is well; a march asks where it starts, at each bend of a wave and
+// after each step, and keeps the first of each code.
 type Cautious interface {
 	Law
 	Caution(s *Stamp) (code, text string)

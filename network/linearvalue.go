@@ -52,6 +52,8 @@ func (l *Linear) output(o *Output) Output {
 		d.Terms = o.Terms
 	case o.Flow.Kind == PortFlow:
 		d.Terms = l.portFlow(o.Flow)
+	case o.Flow.Kind == FeedbackFlow:
+		d.Terms = []Term{{l.of.g.feedbacks[o.Flow.Feedback].from, o.Flow.Sign * l.from.K[o.Flow.Feedback]}}
 	case o.Flow.Kind == ResistanceFlow && l.resistance[o.Flow.Resistance] < 0:
 		// shut: nothing flows
 	default:

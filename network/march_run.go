@@ -129,6 +129,7 @@ func (m *marching) stretch(s stretch, entered bool) error {
 	if err := m.settle(s); err != nil || m.ended {
 		return err
 	}
+	m.e.cautions(m.t, m.x, m.warn)
 	if s.t1 <= s.t0 {
 		m.rest()
 		return nil

@@ -189,15 +189,15 @@ func (n *Network) checkPivot(p *Params, m int, pivot, size float64) *Fault {
 	ids, refs, names := n.feedbacksInto(p, pl.group[m])
 	if len(ids) == 0 {
 		id := []NodeID{pl.order[m]}
-		return &Fault{Undetermined, id, n.g.refsOf(id), n.g.named(id) +
+		return &Fault{Code: Undetermined, Nodes: id, Refs: n.g.refsOf(id), Text: n.g.named(id) +
 			": has no capacity, and " + atRest(p) + " nothing determines its level"}
 	}
 	refs = append(refs, n.g.refsOf(ids)...)
 	if math.Abs(pivot) <= pivotTol*terms*size {
-		return &Fault{SingularMassless, ids, refs, n.g.named(ids) + ": has no capacity, and feedback " + names +
+		return &Fault{Code: SingularMassless, Nodes: ids, Refs: refs, Text: n.g.named(ids) + ": has no capacity, and feedback " + names +
 			" cancels exactly what determines its level"}
 	}
-	return &Fault{FlippedMassless, ids, refs, n.g.named(ids) + ": has no capacity, and feedback " + names +
+	return &Fault{Code: FlippedMassless, Nodes: ids, Refs: refs, Text: n.g.named(ids) + ": has no capacity, and feedback " + names +
 		" outweighs what determines its level, so that with any capacity, however small, it would run away; give it its capacity"}
 }
 

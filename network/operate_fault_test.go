@@ -119,6 +119,7 @@ func TestDeadHeaded(t *testing.T) {
 	says(t, err, `node "a"`, `"feed pump" brings 0.25`, "nothing is open", `shut: "v1"`)
 	_, err = n.Begin(p)
 	says(t, err, `"feed pump" brings 0.25`)
+	hasFigure(t, err, 0.25)
 
 	r = newRig()
 	end = r.held("drain", 0)
@@ -153,7 +154,7 @@ func TestOpenIslandWords(t *testing.T) {
 	r.source("heat", a, 2)
 	n, p = r.build(t)
 	_, err = n.Begin(p)
-	says(t, err, "take in 2 before t = 0, so that the level never settles")
+	says(t, err, `take in 2 from "heat" before t = 0, so that the level never settles`)
 }
 
 // bounded is a flow that cannot exceed 1.

@@ -178,14 +178,19 @@ func (r *resting) decides(nodes []NodeID) bool {
 func (r *resting) openFault(nodes []NodeID) SteadyFault {
 	e := r.e
 	net, size := 0.0, 0.0
-	add := func(v float64) { net, size = net+v, size+math.Abs(v) }
+	var names []string
+	add := func(v float64, name string) {
+		if net, size = net+v, size+math.Abs(v); v != 0 && !slices.Contains(names, strconv.Quote(name)) {
+			names = append(names, strconv.Quote(name))
+		}
+	}
 	for _, n := range nodes {
 		for _, k := range e.tied.sources[n] {
-			add(e.g.inputs[k].sign * e.z[e.l.source[k]])
+			add(e.g.inputs[k].sign*e.z[e.l.source[k]], e.g.inputs[k].name)
 		}
 		for _, p := range e.tied.pushes[n] {
 			if s := &e.law[p.element]; !s.shut {
-				add(s.s.F[p.port])
+				add(s.s.F[p.port], e.g.elements[p.element].Name)
 			}
 		}
 	}
@@ -193,8 +198,9 @@ func (r *resting) openFault(nodes []NodeID) SteadyFault {
 		plural(nodes, "has", "have") + " no path to a held node, so that any level is steady; a start must be given"}
 	if math.Abs(net) > 1e-12*size {
 		f.Reason, f.Net = Integrating, net
-		f.Text = e.g.named(nodes) + ": " + plural(nodes, "has", "have") + " no path to a held node and " + plural(nodes, "takes", "take") + " in " +
-			number(net) + " before t = 0, so that the level never settles; a start must be given"
+		f.Text, f.Figure = e.g.figured(nodes[0], e.g.named(nodes)+": "+plural(nodes, "has", "have")+" no path to a held node and "+
+			plural(nodes, "takes", "take")+" in ", net, " from "+listed(few(names))+" before t = 0"+e.shutNamed(nodes)+
+			", so that the level never settles; a start must be given")
 	}
 	return f
 }
@@ -222,7 +228,7 @@ func (r *resting) unbalanced(x []float64) (faults []SteadyFault) {
 	if err := e.pressed(x); err != nil {
 		if p, ok := err.(*ParamFault); ok {
 			for _, f := range p.List {
-				faults = append(faults, SteadyFault{Nodes: f.Nodes, Refs: f.Refs, Reason: Unsolved, Text: f.Text})
+				faults = append(faults, SteadyFault{Nodes: f.Nodes, Refs: f.Refs, Reason: Enclosed, Text: f.Text, Figure: f.Figure})
 			}
 			return faults
 		}
@@ -240,13 +246,7 @@ func (r *resting) unbalanced(x []float64) (faults []SteadyFault) {
 		}
 	}
 	if n, ok := e.nodeAt(worst); ok {
-		ids, net := []NodeID{n}, s.f[worst]
-		if math.IsNaN(net) || math.IsInf(net, 0) {
-			net = 0
-		}
-		return []SteadyFault{{Nodes: ids, Refs: append(e.refsAt(n), e.g.refsOf(ids)...), Reason: Unsolved, Net: net, Text: e.g.named(ids) +
-			": no steady state was found; what flows in exceeds what flows out by " + number(s.f[worst]) + " at the levels nearest to one" + e.partsNamed(n) +
-			"; a start must be given"}}
+		return []SteadyFault{r.excess(n, s.f[worst])}
 	}
 	name, refs := e.unknownAt(worst)
 	return []SteadyFault{{Refs: refs, Reason: Unsolved, Text: name + ": no steady state was found; it is furthest from one; a start must be given"}}
@@ -262,12 +262,12 @@ func (e *equations) refsAt(n NodeID) (refs []Ref) {
 func (e *equations) partsNamed(n NodeID) string {
 	var names []string
 	e.partsAt(n, func(name string, _ Ref, shut bool) {
-		if shut {
-			name = strconv.Quote(name) + ", shut"
-		} else {
-			name = strconv.Quote(name)
+		if name = strconv.Quote(name); shut {
+			name += ", shut"
 		}
-		names = append(names, name)
+		if !slices.Contains(names, name) { // a part may be made of several
+			names = append(names, name)
+		}
 	})
 	return withNames(" (joined to it: ", names)
 }
@@ -289,10 +289,15 @@ func withNames(before string, names []string) string {
 	if len(names) == 0 {
 		return ""
 	}
-	if len(names) > maxNamed {
-		names = append(names[:maxNamed:maxNamed], strconv.Itoa(len(names)-maxNamed)+" more")
+	return before + listed(few(names)) + ")"
+}
+
+// few cuts a long list of names short.
+func few(names []string) []string {
+	if len(names) <= maxNamed {
+		return names
 	}
-	return before + listed(names) + ")"
+	return append(names[:maxNamed:maxNamed], strconv.Itoa(len(names)-maxNamed)+" more")
 }
 
 // partsAt visits the branches, elements and sources at a node.

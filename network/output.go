@@ -15,6 +15,7 @@ const (
 	SupplyFlow              // what the driver of a held node delivers into it
 	SourceFlow              // what a source delivers: its own waveform
 	PortFlow                // what an element brings into one of its ports
+	FeedbackFlow            // what a feedback brings into its node, K·(x_on − About)
 )
 
 // A FlowTerm is a flow times Sign: G·(x_from − x_to) of a resistance, the flow of
@@ -31,6 +32,7 @@ type FlowTerm struct {
 	Input      InputID // a source
 	Element    ElementID
 	Port       int // place in Shape.Ports
+	Feedback   FeedbackID
 	Sign       float64
 }
 
@@ -122,6 +124,8 @@ func (g *graph) checkFlow(f *FlowTerm) {
 		panic("network: output names an inertance of another network")
 	case f.Kind == SupplyFlow && (f.Node < 0 || int(f.Node) >= len(g.nodes) || !g.isHeld(f.Node)):
 		panic("network: output names the supply of a node that is not held")
+	case f.Kind == FeedbackFlow && (f.Feedback < 0 || int(f.Feedback) >= len(g.feedbacks)):
+		panic("network: output names a feedback of another network")
 	case f.Kind == PortFlow && (f.Element < 0 || int(f.Element) >= len(g.elements) || f.Port < 0 || f.Port >= len(g.elements[f.Element].Ports)):
 		panic("network: output names a port of another network")
 	case f.Kind == SourceFlow && (f.Input < 0 || int(f.Input) >= len(g.inputs) || g.inputs[f.Input].held):

@@ -113,8 +113,8 @@ func (n *Network) checkStores(p *Params, faults []Fault) []Fault {
 	for i, c := range p.C {
 		if why := wrong(c, true); why != "" {
 			at := n.g.capacities[i].at
-			faults = append(faults, Fault{BadNumber, []NodeID{at}, []Ref{n.g.capacities[i].ref, n.g.nodes[at].ref},
-				n.g.named([]NodeID{at}) + ": capacity is " + number(c) + why})
+			faults = append(faults, Fault{Code: BadNumber, Nodes: []NodeID{at}, Refs: []Ref{n.g.capacities[i].ref, n.g.nodes[at].ref},
+				Text: n.g.named([]NodeID{at}) + ": capacity is " + number(c) + why})
 		}
 	}
 	return faults
@@ -123,8 +123,8 @@ func (n *Network) checkStores(p *Params, faults []Fault) []Fault {
 func (n *Network) checkBranches(p *Params, faults []Fault) []Fault {
 	report := func(b *branch, kind BranchKind, what string, v float64, why string) {
 		if why != "" {
-			faults = append(faults, Fault{BadNumber, []NodeID{b.from, b.to}, []Ref{b.ref},
-				kind.String() + " " + strconv.Quote(b.name) + ": " + what + " is " + number(v) + why})
+			faults = append(faults, Fault{Code: BadNumber, Nodes: []NodeID{b.from, b.to}, Refs: []Ref{b.ref},
+				Text: kind.String() + " " + strconv.Quote(b.name) + ": " + what + " is " + number(v) + why})
 		}
 	}
 	for i, v := range p.G {
@@ -158,8 +158,8 @@ func (n *Network) checkLevels(p *Params, faults []Fault) []Fault {
 	for i := range p.Wave {
 		if why := wrong(p.Wave[i].Before, false); why != "" {
 			in := &n.g.inputs[i]
-			faults = append(faults, Fault{BadNumber, []NodeID{in.node}, []Ref{in.ref},
-				"input " + strconv.Quote(in.name) + ": value before the start is " + number(p.Wave[i].Before) + why})
+			faults = append(faults, Fault{Code: BadNumber, Nodes: []NodeID{in.node}, Refs: []Ref{in.ref},
+				Text: "input " + strconv.Quote(in.name) + ": value before the start is " + number(p.Wave[i].Before) + why})
 		}
 	}
 	for i, has := range p.HasStart {
@@ -168,15 +168,15 @@ func (n *Network) checkLevels(p *Params, faults []Fault) []Fault {
 		}
 		id := []NodeID{NodeID(i)}
 		if why := wrong(p.Start[i], false); why != "" {
-			faults = append(faults, Fault{BadNumber, id, n.g.refsOf(id), n.g.named(id) + ": start is " + number(p.Start[i]) + why})
+			faults = append(faults, Fault{Code: BadNumber, Nodes: id, Refs: n.g.refsOf(id), Text: n.g.named(id) + ": start is " + number(p.Start[i]) + why})
 		}
 		if n.g.isHeld(id[0]) || n.g.isMassless(id[0]) {
-			faults = append(faults, Fault{StartOfNoStore, id, n.g.refsOf(id),
-				n.g.named(id) + ": has a start and stores nothing, so that its level follows from the others"})
+			faults = append(faults, Fault{Code: StartOfNoStore, Nodes: id, Refs: n.g.refsOf(id),
+				Text: n.g.named(id) + ": has a start and stores nothing, so that its level follows from the others"})
 		}
 	}
 	if why := wrong(p.AllStart, false); p.HasAllStart && why != "" {
-		faults = append(faults, Fault{BadNumber, nil, nil, "start of all nodes is " + number(p.AllStart) + why})
+		faults = append(faults, Fault{Code: BadNumber, Nodes: nil, Refs: nil, Text: "start of all nodes is " + number(p.AllStart) + why})
 	}
 	return faults
 }
@@ -190,8 +190,8 @@ func (n *Network) checkWaves(p *Params) []Fault {
 				continue
 			}
 			in := &n.g.inputs[i]
-			faults = append(faults, Fault{BadNumber, []NodeID{in.node}, []Ref{in.ref},
-				"input " + strconv.Quote(in.name) + ": its waveform holds a value that is not finite"})
+			faults = append(faults, Fault{Code: BadNumber, Nodes: []NodeID{in.node}, Refs: []Ref{in.ref},
+				Text: "input " + strconv.Quote(in.name) + ": its waveform holds a value that is not finite"})
 			break
 		}
 	}
@@ -231,8 +231,8 @@ func (n *Network) checkStreams(p *Params, faults []Fault) []Fault {
 				refs = append(refs, b.ref)
 			}
 		}
-		faults = append(faults, Fault{Unbalanced, []NodeID{id}, append(refs, n.g.nodes[i].ref),
-			n.g.named([]NodeID{id}) + ": streams bring " + number(brought[i]) + " and take " + number(taken[i])})
+		faults = append(faults, Fault{Code: Unbalanced, Nodes: []NodeID{id}, Refs: append(refs, n.g.nodes[i].ref),
+			Text: n.g.named([]NodeID{id}) + ": streams bring " + number(brought[i]) + " and take " + number(taken[i])})
 	}
 	return faults
 }

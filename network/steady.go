@@ -228,8 +228,8 @@ func (st *static) fault(pt *point, k int) SteadyFault {
 		plural(ids, "has", "have") + " no path to a held node, so that any level is steady; a start must be given"}
 	if net := f[is.open]; math.Abs(net) > 1e-12*size[is.open] {
 		fault.Reason, fault.Net = Integrating, net
-		fault.Text = n.g.named(ids) + ": " + plural(ids, "has", "have") + " no path to a held node and " +
-			plural(ids, "takes", "take") + " in " + number(net) + " before t = 0, so that the level never settles; a start must be given"
+		fault.Text, fault.Figure = n.g.figured(ids[0], n.g.named(ids)+": "+plural(ids, "has", "have")+" no path to a held node and "+
+			plural(ids, "takes", "take")+" in ", net, " before t = 0, so that the level never settles; a start must be given")
 	}
 	return fault
 }

@@ -33,6 +33,10 @@ func (n *Network) ownWeights(e *exchange, p *Params, o *Output) weights {
 		w = e.weightsOf(n.plan, &n.g, p, o)
 	case o.Flow.Kind == PortFlow:
 		w = n.noWeights() // of a passive element
+	case o.Flow.Kind == FeedbackFlow:
+		K := o.Flow.Sign * p.K[o.Flow.Feedback]
+		w = e.weightsOf(n.plan, &n.g, p, &Output{Terms: []Term{{n.g.feedbacks[o.Flow.Feedback].from, K}}})
+		w.constant = -K * p.About[o.Flow.Feedback]
 	case o.Flow.Kind == InertanceFlow:
 		w = n.noWeights()
 		w.carry(n, o.Flow.Inertance, o.Flow.Sign)

@@ -76,7 +76,7 @@ func (n *Network) checkSwitches(p *Params, faults []Fault) []Fault {
 	for i, w := range p.Switch {
 		if laplace.NotStairs([]laplace.Waveform{w}) >= 0 {
 			s := n.g.switches[i]
-			faults = append(faults, Fault{BadNumber, nil, []Ref{s.ref}, strconv.Quote(s.name) +
+			faults = append(faults, Fault{Code: BadNumber, Nodes: nil, Refs: []Ref{s.ref}, Text: strconv.Quote(s.name) +
 				": changes otherwise than in steps, and between steps only is the network linear"})
 		}
 	}

@@ -136,7 +136,7 @@ func (e *equations) misplaced(of []int32) (faults []Fault) {
 				continue
 			}
 			id := []NodeID{b.to}
-			faults = append(faults, Fault{Undetermined, id, append([]Ref{b.ref}, e.g.refsOf(id)...), e.g.named(id) +
+			faults = append(faults, Fault{Code: Undetermined, Nodes: id, Refs: append([]Ref{b.ref}, e.g.refsOf(id)...), Text: e.g.named(id) +
 				": with what is shut only inertances or nothing lead on from here, and a stream or a feedback ends here, so that nothing determines the level; give a capacity"})
 		}
 	}

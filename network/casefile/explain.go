@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"lagbook/network"
+	"lagbook/network/quantity"
 )
 
 // Explain turns an error of network, or of a setter, into diagnostics with
@@ -34,9 +35,7 @@ func (c *Case) Explain(err error) []Diagnostic {
 	case errors.As(err, &one):
 		return []Diagnostic{one}
 	case errors.As(err, &march):
-		d := c.fault(network.Fault{Refs: march.Refs, Text: march.Text})
-		d.Code, d.Hint = "not-marched", ""
-		return []Diagnostic{d}
+		return []Diagnostic{c.marchFault(march)}
 	case errors.As(err, &bent):
 		return []Diagnostic{{File: c.File, Code: "not-linear", Text: strings.TrimPrefix(bent.Error(), "network: ")}}
 	case errors.As(err, &faults):
@@ -49,10 +48,7 @@ func (c *Case) Explain(err error) []Diagnostic {
 		}
 	case errors.As(err, &steady):
 		for _, f := range steady.List {
-			g := network.Fault{Refs: f.Refs, Text: f.Text}
-			d := c.fault(g)
-			d.Code, d.Hint = "no-steady-state", `state where it starts with [run] start, or start at the nodes`
-			list = append(list, d)
+			list = append(list, c.steadyFault(f))
 		}
 	case errors.As(err, &cycle):
 		d := c.fault(network.Fault{Refs: cycle.Refs, Text: "there is no steady cycle: " + cycle.Text})
@@ -79,6 +75,7 @@ var faultWords = map[network.FaultCode]struct{ code, hint string }{
 	network.StartOfNoStore:   {"start-of-no-store", "only a node with a capacitance has a start of its own"},
 	network.HeldCapacity:     {"held-capacity", ""},
 	network.NoEffect:         {"no-effect", ""},
+	network.NoWayOut:         {"undetermined", "open a way for it, as a relief is one, or give one of them a capacitance"},
 }
 
 // fault turns a fault of the network into a diagnostic with a place.
@@ -97,9 +94,48 @@ func (c *Case) fault(f network.Fault) Diagnostic {
 	if f.Code == network.Empty {
 		w.hint += c.likeNode()
 	}
-	d := c.Diagnose(ref, w.code, f.Text, c.inWords(ref, w.hint))
+	d := c.Diagnose(ref, w.code, c.figured(f.Text, f.Figure), c.inWords(ref, w.hint))
 	d.Thing = c.inPart(ref) // the text names the parts
 	return d
+}
+
+// steadyFault is the diagnostic of a group of nodes without a steady state.
+func (c *Case) steadyFault(f network.SteadyFault) Diagnostic {
+	g := network.Fault{Refs: f.Refs, Text: strings.TrimSuffix(f.Text, "; a start must be given"), Figure: f.Figure}
+	if f.Reason == network.Enclosed {
+		g.Code = network.NoWayOut // a start is no help
+	}
+	d := c.fault(g)
+	if d.Code = "no-steady-state"; f.Reason != network.Enclosed {
+		d.Hint = `state where it starts with [run] start, or start at the nodes`
+	}
+	return d
+}
+
+// marchFault is the diagnostic of a march that cannot go on.
+func (c *Case) marchFault(m *network.MarchFault) Diagnostic {
+	f, hint := network.Fault{Refs: m.Refs, Text: m.Text}, ""
+	var why *network.ParamFault
+	if errors.As(m.Err, &why) {
+		for _, g := range why.List {
+			f.Text = strings.Replace(f.Text, g.Text, c.figured(g.Text, g.Figure), 1)
+			if f.Refs = append(f.Refs, g.Refs...); g.Code == network.NoWayOut {
+				hint = c.fault(g).Hint
+			}
+		}
+	}
+	d := c.fault(f)
+	d.Code, d.Hint = "not-marched", hint
+	return d
+}
+
+// figured writes the flow that stands in a text in the unit of its node.
+func (c *Case) figured(text string, f network.Figure) string {
+	if f.Ref < 0 || int(f.Ref) >= len(c.refs) || c.refs[f.Ref].e == nil {
+		return text
+	}
+	dim := c.Measures(c.refs[f.Ref].e.domain).Flow
+	return f.In(text, c.Questions.Print[PrintWord(dim, quantity.Plain)].Format(f.Flow, dim, quantity.Plain))
 }
 
 // likeNode shows how a node is written.

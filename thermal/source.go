@@ -74,6 +74,7 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 	}
 	if e.Has("slope") {
 		fb := b.Feedback(e.FullName(), node, on, e.Ref)
+		showsWhole(e, in, fb, sign)
 		slope, about := e.Num("slope"), e.Num("about")
 		setters = append(setters, func(v casefile.Values, p *network.Params) error {
 			p.K[fb], p.About[fb] = sign*v.Num[slope], v.Num[about]
@@ -82,7 +83,7 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 	}
 	switch {
 	case e.Has("per_kelvin") && casefile.NotInSteps(e, c, "drive", "") == nil:
-		setters = append(setters, perKelvinOf(e, b, node, on, sign))
+		setters = append(setters, perKelvinOf(e, b, in, node, on, sign))
 	case e.Has("per_kelvin"), e.Has("doubles_every"), e.Has("points"):
 		setters = append(setters, lossOf(e, b, node, on, sign))
 	}
@@ -91,14 +92,22 @@ func buildSource(e *casefile.Element, c *casefile.Case, b *network.Builder) (cas
 
 // perKelvinOf builds drive·(1 + α·(T − at)) as a feedback α·drive beside the drive: one
 // that switches with it, where it changes in steps.
-func perKelvinOf(e *casefile.Element, b *network.Builder, node, on network.NodeID, sign float64) casefile.Setter {
+func perKelvinOf(e *casefile.Element, b *network.Builder, in network.InputID, node, on network.NodeID, sign float64) casefile.Setter {
 	fb, id := b.Feedback(e.FullName()+" per kelvin", node, on, e.Ref), b.Switch(e.FullName(), e.Ref)
+	showsWhole(e, in, fb, sign)
 	drive, alpha, at := e.Wave("drive"), e.Num("per_kelvin"), e.Num("at")
 	return func(v casefile.Values, p *network.Params) error {
 		p.Switch[id] = v.Wave[drive]
 		p.K[fb], p.About[fb] = sign*v.Num[alpha]*p.Now[id], v.Num[at]
 		return nil
 	}
+}
+
+// showsWhole makes "flow of" the drive and what the feedback adds to it.
+func showsWhole(e *casefile.Element, in network.InputID, fb network.FeedbackID, sign float64) {
+	drive := network.Output{Flow: &network.FlowTerm{Kind: network.SourceFlow, Input: in, Sign: 1}}
+	more := network.Output{Flow: &network.FlowTerm{Kind: network.FeedbackFlow, Feedback: fb, Sign: 1}}
+	e.Shows("flow", network.Output{Parts: []network.Part{{Coef: 1, Output: drive}, {Coef: sign, Output: more}}})
 }
 
 // intoHeld warns of heat that changes nothing.

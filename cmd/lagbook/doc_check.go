@@ -14,11 +14,29 @@ func checkDoc(m *study.Model, a *study.Check) present.Doc {
 	var notes sourceNotes
 	d.Parts = doubts(a.Evidence)
 	d.Parts = append(d.Parts, nodesParts(p, &notes, a.Nodes)...)
-	d.Parts = append(d.Parts, branchesPart(p, &notes, a.Branches), inputsPart(a.Inputs))
+	d.Parts = append(d.Parts, branchesPart(p, &notes, a.Branches))
+	if len(a.State) > 0 {
+		d.Parts = append(d.Parts, statePart(p, a.State))
+	}
+	d.Parts = append(d.Parts, inputsPart(a.Inputs))
+	d.Parts = append(d.Parts, flowsParts(p, a.Flows)...)
 	if len(a.Given) > 0 {
 		d.Parts = append(d.Parts, givenPart(p, &notes, a.Given))
 	}
-	d.Parts = append(d.Parts, present.List{Items: a.Notes})
+	if len(a.Profiles) > 0 {
+		d.Parts = append(d.Parts, profilesPart(p, &notes, a.Profiles))
+	}
+	if len(a.Uses) > 0 {
+		d.Parts = append(d.Parts, usesPart(p, &notes, a.Uses))
+	}
+	if len(a.Scenarios) > 0 {
+		d.Parts = append(d.Parts, scenariosPart(p, &notes, a.Scenarios))
+	}
+	notesOf := a.Notes
+	if len(a.Nonlinear) > 0 {
+		notesOf = append([]string{"not linear: " + list(a.Nonlinear)}, notesOf...)
+	}
+	d.Parts = append(d.Parts, present.List{Items: notesOf})
 	if len(a.LeavesOut) > 0 {
 		d.Parts = append(d.Parts, present.Heading{Level: 1, Text: "Left out"}, present.List{Items: a.LeavesOut})
 	}
@@ -89,29 +107,59 @@ func bracketed(unit string) string {
 // first alone, and the two numbers of a rung of a ladder are one line.
 func branchesPart(p study.Printer, notes *sourceNotes, branches []study.CheckBranch) present.Table {
 	t := present.Table{
-		Caption:  "Parts (flow is positive along the arrow)",
-		Columns:  []present.Column{{Head: "part"}, {Head: "name"}, {Head: "from → to"}, {Head: "quantity"}, {Head: "value"}, {Head: "how, and source"}},
-		FullHead: []string{"part", "name", "from", "to", "quantity", "value", "unit", "formula", "numbers", "source"},
+		Caption: "Parts (flow is positive along the arrow; it is that just before t = 0)",
+		Columns: []present.Column{{Head: "part"}, {Head: "name"}, {Head: "from → to"}, {Head: "flow", Align: present.Right}, {Head: "quantity"}, {Head: "value"},
+			{Head: "how, and source"}},
+		FullHead: []string{"part", "name", "from", "to", "flow", "flow unit", "quantity", "value", "unit", "formula", "numbers", "source"},
 	}
 	for _, b := range branches {
-		t.Full = append(t.Full, []string{b.Part, b.Name, b.From, b.To, b.Quantity, full(b.Value), b.Unit, b.Formula, b.Numbers, b.Source})
+		t.Full = append(t.Full, []string{b.Part, b.Name, b.From, b.To, fullOf(b.Flow), b.FlowUnit, b.Quantity, full(b.Value), b.Unit, b.Formula, b.Numbers, b.Source})
 	}
 	for i := 0; i < len(branches); i++ {
 		b := branches[i]
-		row := []string{b.Part, b.Name, arrow(b.From, b.To), quantityOf(b), p.Value(b.Value, b.Unit, b.Kind), notes.behind(b.How(), b.Source)}
+		row := []string{b.Part, b.Name, arrow(b.From, b.To), flowWords(p, b), quantityOf(b), p.Value(b.Value, b.Unit, b.Kind), notes.behind(b.How(), b.Source)}
 		first := i == 0 || branches[i-1].Name != b.Name || branches[i-1].Part != b.Part
 		if !first {
 			row[0], row[1], row[2] = "", "", ""
 			if before := branches[i-1]; before.How() == b.How() && before.Source == b.Source {
-				row[5] = ""
+				row[6] = ""
 			}
+		}
+		if b.Quantity == "flow" {
+			row[4], row[5] = "", "" // it stands before
 		}
 		if i+1 < len(branches) && sameRung(b, branches[i+1]) {
 			i++
-			row[3] += ", " + quantityOf(branches[i])
-			row[4] += ", " + p.Value(branches[i].Value, branches[i].Unit, branches[i].Kind)
+			row[4] += ", " + quantityOf(branches[i])
+			row[5] += ", " + p.Value(branches[i].Value, branches[i].Unit, branches[i].Kind)
 		}
 		t.Rows = append(t.Rows, row)
+	}
+	return t
+}
+
+// flowWords prints what a part carries along its arrow just before t = 0.
+func flowWords(p study.Printer, b study.CheckBranch) string {
+	if b.Flow == nil {
+		return ""
+	}
+	return p.Value(*b.Flow, b.FlowUnit, "")
+}
+
+// statePart lists what else is known of t = 0: what can be read off parts, what is shut.
+func statePart(p study.Printer, state []study.CheckValue) present.Table {
+	t := present.Table{
+		Caption:  "State just before t = 0",
+		Columns:  []present.Column{{Head: "of"}, {Head: "value"}},
+		FullHead: []string{"of", "value", "unit", "kind", "state"},
+	}
+	for _, v := range state {
+		value := v.State
+		if v.Value != nil {
+			value = p.Value(*v.Value, v.Unit, v.Kind)
+		}
+		t.Rows = append(t.Rows, []string{v.Name, value})
+		t.Full = append(t.Full, []string{v.Name, fullOf(v.Value), v.Unit, v.Kind, v.State})
 	}
 	return t
 }

@@ -6,6 +6,7 @@ import (
 
 	"lagbook/cmd/lagbook/internal/present"
 	"lagbook/network/casefile"
+	"lagbook/network/quantity"
 	"lagbook/network/study"
 )
 
@@ -33,6 +34,9 @@ func closing(c *casefile.Case, e study.Evidence) []present.Part {
 // where the data come from.
 func supposed(c *casefile.Case, e study.Evidence) []string {
 	items := []string{"start: " + e.Start, e.Linear}
+	if e.Marched != nil {
+		items = append(items, "what came in, less what went out and what is stored more, is "+quantity.Number(e.Balance.Error, 1)+" of what passed in the march")
+	}
 	if words := dataWords(c); words != "" {
 		items = append(items, words)
 	}

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"lagbook/cmd/lagbook/internal/present"
 	"lagbook/network/quantity"
@@ -12,13 +13,26 @@ import (
 // cycleDoc is the page of the verb cycle.
 func cycleDoc(m *study.Model, a *study.Cycles) present.Doc {
 	d := newDoc(m.Case)
-	if len(a.Cycles) > 0 {
-		d.Parts = append(d.Parts, present.Facts{List: cycleFacts(m.Show, a.Cycles)})
+	facts := func(x *study.Cycles) []present.Part {
+		if len(x.Cycles) == 0 {
+			return nil
+		}
+		list := scenarioFact(m.Case, scenariosOf(x.Cycles, func(c study.Cycle) string { return c.Scenario }))
+		return []present.Part{present.Facts{List: append(append(list, cycleFacts(m.Show, x.Cycles)...), marchedFact(x)...)}}
+	}
+	if len(a.Each) == 0 {
+		d.Parts = facts(a)
 	}
 	d.Parts = append(d.Parts, doubts(a.Evidence)...)
-	if len(a.Cycles) > 0 {
+	for _, x := range a.Each {
+		if d.Parts = append(d.Parts, facts(x)...); len(x.Cycles) > 0 {
+			d.Parts = append(d.Parts, cyclePart(m, x.Cycles))
+		}
+	}
+	if len(a.Cycles) > 0 && len(a.Each) == 0 {
 		d.Parts = append(d.Parts, cyclePart(m, a.Cycles))
 	}
+	d.Parts = append(d.Parts, eventsParts(m.Show, a.Evidence)...)
 	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
@@ -32,6 +46,9 @@ func cycleFacts(p study.Printer, list []study.Cycle) []present.Fact {
 			last = i
 		}
 	}
+	if last < 0 && moves(list) {
+		return facts // a rhythm of its own, which no start is counted from
+	}
 	if last < 0 {
 		return append(facts, present.Fact{Name: "Answer", Value: "nothing that is shown moves with the loads"})
 	}
@@ -41,6 +58,19 @@ func cycleFacts(p study.Printer, list []study.Cycle) []present.Fact {
 		value = fmt.Sprintf("everything shown is within 2 %% of its swing of the steady cycle after %s, %s last", periods(p, *c.Cycles), c.Output)
 	}
 	return append(facts, present.Fact{Name: "Answer", Value: value})
+}
+
+// moves reports whether anything shown moves.
+func moves(list []study.Cycle) bool {
+	return slices.ContainsFunc(list, func(c study.Cycle) bool { return c.Max > c.Min })
+}
+
+// marchedFact says how many periods were marched to find the cycle.
+func marchedFact(a *study.Cycles) []present.Fact {
+	if a.Periods == 0 {
+		return nil
+	}
+	return []present.Fact{{Name: "Marched", Value: fmt.Sprintf("%d periods from the start", a.Periods)}}
 }
 
 func periods(p study.Printer, n float64) string {
@@ -57,7 +87,7 @@ func cyclePart(m *study.Model, list []study.Cycle) present.Table {
 	t := present.Table{
 		Caption:  "The steady cycle (times count from t = 0 of the run)",
 		Columns:  []present.Column{{Head: "of"}, right("highest"), right("at"), right("lowest"), right("at"), right("swing"), right("mean"), right("periods to 2 %")},
-		FullHead: []string{"of", "unit", "kind", "period / s", "highest", "at / s", "lowest", "at / s", "mean", "periods to 2 %"},
+		FullHead: []string{"of", "scenario", "unit", "kind", "period / s", "highest", "at / s", "lowest", "at / s", "mean", "periods to 2 %"},
 	}
 	for _, c := range list {
 		swing := c.Kind
@@ -70,7 +100,10 @@ func cyclePart(m *study.Model, list []study.Cycle) present.Table {
 		}
 		t.Rows = append(t.Rows, []string{c.Output, p.Value(c.Max, c.Unit, c.Kind), cycleTime(m, c.MaxAt), p.Value(c.Min, c.Unit, c.Kind), cycleTime(m, c.MinAt),
 			p.Value(c.Max-c.Min, c.Unit, swing), p.Value(c.Mean, c.Unit, c.Kind), after})
-		t.Full = append(t.Full, []string{c.Output, c.Unit, c.Kind, full(c.Period), full(c.Max), full(c.MaxAt), full(c.Min), full(c.MinAt), full(c.Mean), fullOf(c.Cycles)})
+		t.Full = append(t.Full, []string{c.Output, c.Scenario, c.Unit, c.Kind, full(c.Period), full(c.Max), full(c.MaxAt), full(c.Min), full(c.MinAt), full(c.Mean), fullOf(c.Cycles)})
+	}
+	if len(list) == 0 || list[0].Scenario == "" {
+		dropFull(&t, "scenario")
 	}
 	return t
 }

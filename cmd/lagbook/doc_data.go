@@ -33,8 +33,8 @@ func newDoc(c *casefile.Case) present.Doc {
 	return d
 }
 
-// stated lists, for each recognised word, the given values and parts whose
-// source it is, in file order.
+// stated lists, for each recognised word, the given values, profiles, uses, logs and
+// parts whose source it is, in file order.
 func stated(c *casefile.Case) map[string][]string {
 	of := map[string][]string{}
 	note := func(word, name string) {
@@ -44,6 +44,15 @@ func stated(c *casefile.Case) map[string][]string {
 	}
 	for _, g := range c.Given {
 		note(g.Source, g.Name)
+	}
+	for _, p := range c.Profiles() {
+		note(p.Source, p.Name)
+	}
+	for _, u := range c.Uses() {
+		note(u.Source, u.Name)
+	}
+	for _, q := range c.Questions.Measured {
+		note(q.Source, q.Name)
 	}
 	for _, e := range c.Elements {
 		note(e.Source(), e.FullName())

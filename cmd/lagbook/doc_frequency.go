@@ -13,14 +13,15 @@ import (
 // frequencyDoc is the page of the verb frequency.
 func frequencyDoc(m *study.Model, a *study.Frequency, q study.FrequencyQuestion) present.Doc {
 	p, d := m.Show, newDoc(m.Case)
-	d.Parts = doubts(a.Evidence)
+	names := scenariosOf(a.Transfers, func(t study.FrequencyTransfer) string { return t.Scenario })
+	d.Parts = append(scenarioOpening(m.Case, names), doubts(a.Evidence)...)
 	as := study.AsPeriod
 	if len(q.At) > 0 {
 		as = q.At[0].As
 	}
 	for _, t := range a.Transfers {
 		d.Parts = append(d.Parts,
-			present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About)},
+			present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About, m.Nonlinear()) + underWords(names, t.Scenario)},
 			present.Facts{List: frequencyFacts(p, t)},
 			pointsPart(p, t, as))
 	}

@@ -14,23 +14,30 @@ import (
 func limitsDoc(m *study.Model, a *study.Limits) present.Doc {
 	p, d := m.Show, newDoc(m.Case)
 	if len(a.Limits) > 0 {
-		d.Parts = append(d.Parts, present.Facts{List: append([]present.Fact{askedLimits(p, a.Limits)}, verdict(a.Limits)...)})
+		facts := append(scenarioFact(m.Case, limitScenarios(a.Limits)), askedLimits(p, a.Limits))
+		d.Parts = append(d.Parts, present.Facts{List: append(facts, verdict(a.Limits)...)})
 		d.Parts = append(d.Parts, doubts(a.Evidence)...)
 		d.Parts = append(d.Parts, limitsParts(p, a.Limits)...)
 	} else {
 		d.Parts = append(d.Parts, doubts(a.Evidence)...)
 	}
+	d.Parts = append(d.Parts, resultsParts(m.Show, a.Results)...)
+	d.Parts = append(d.Parts, findsParts(m.Show, a.Finds)...)
+	d.Parts = append(d.Parts, eventsParts(m.Show, a.Evidence)...)
 	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 
 // verdict is the answer in two lines: how many are met, and which governs.
 func verdict(limits []study.Limit) []present.Fact {
-	met := 0
+	met, open := 0, 0
 	var governs study.Limit
 	for _, l := range limits {
 		if l.Met {
 			met++
+		}
+		if l.NotJudged {
+			open++
 		}
 		if l.Governs {
 			governs = l
@@ -38,6 +45,12 @@ func verdict(limits []study.Limit) []present.Fact {
 	}
 	answer := fmt.Sprintf("%d of %d limits met", met, len(limits))
 	switch {
+	case open > 0 && len(limits) == 1:
+		answer = "the limit is not judged"
+	case open > 0 && met+open < len(limits):
+		answer += fmt.Sprintf(", %d NOT met, %d not judged", len(limits)-met-open, open)
+	case open > 0:
+		answer += fmt.Sprintf(", %d not judged", open)
 	case met == len(limits) && met == 1:
 		answer = "the limit is met"
 	case met == len(limits) && met == 2:
@@ -57,11 +70,19 @@ func verdict(limits []study.Limit) []present.Fact {
 
 // governing is the sentence on the limit that governs.
 func governing(l study.Limit) string {
-	s := l.Name + ": " + l.Text
+	s := limitName(l) + ": " + l.Text
 	if l.Met && l.Percent != nil {
 		s += " (" + way(l) + " of the way left)"
 	}
 	return s
+}
+
+// limitName names a verdict: "cores under climb".
+func limitName(l study.Limit) string {
+	if l.Scenario == "" {
+		return l.Name
+	}
+	return l.Name + " under " + l.Scenario
 }
 
 // briefly is how many limits the opening names.
@@ -69,13 +90,14 @@ const briefly = 4
 
 // askedLimits is what was asked, in one line.
 func askedLimits(p study.Printer, limits []study.Limit) present.Fact {
-	var words []string
-	for i, l := range limits {
-		if i == briefly && len(limits) > briefly+1 {
-			words = append(words, fmt.Sprintf("%d more", len(limits)-i))
-			break
+	var words, names []string
+	for _, l := range limits { // of several under scenarios the first
+		if !slices.Contains(names, l.Name) {
+			names, words = append(names, l.Name), append(words, l.Of+" "+brief(p, l))
 		}
-		words = append(words, l.Of+" "+brief(p, l))
+	}
+	if n := len(words) - briefly; n > 1 {
+		words = append(words[:briefly], fmt.Sprintf("%d more", n))
 	}
 	return present.Fact{Name: "Asked", Value: list(words)}
 }
@@ -88,8 +110,11 @@ func brief(p study.Printer, l study.Limit) string {
 		return "< " + level
 	case "stay_above":
 		return "> " + level
-	case "overshoot_below":
-		return "overshoots < " + level
+	case "reach", "settle":
+	case "time_above":
+		return "above " + level + " for < " + allowedTime(p, l)
+	default:
+		return briefWords[l.Demand] + " < " + level
 	}
 	s := "at " + level
 	if l.Demand == "settle" {
@@ -101,6 +126,23 @@ func brief(p study.Printer, l study.Limit) string {
 	return s
 }
 
+// briefWords name what is to stay below a level of its own.
+var briefWords = map[string]string{
+	"overshoot_below": "overshoots", "swing_below": "swings", "rate_below": "changes", "rise_rate_below": "rises", "fall_rate_below": "falls",
+}
+
+// allowedTime is how long something may be above a level: "2 h a day".
+func allowedTime(p study.Printer, l study.Limit) string {
+	if l.LessThan == nil {
+		return ""
+	}
+	s := p.Time(*l.LessThan)
+	if l.PerDay {
+		s += " a day"
+	}
+	return s
+}
+
 // levelWords prints the level, or the band, in its own unit.
 func levelWords(p study.Printer, l study.Limit) string {
 	switch {
@@ -108,42 +150,62 @@ func levelWords(p study.Printer, l study.Limit) string {
 		return ""
 	case l.Percentage:
 		return p.Percent(*l.Level)
-	case l.Demand == "settle" || l.Demand == "overshoot_below":
+	case rates(l):
+		return rateWords(p, l, *l.Level)
+	case l.Demand == "settle" || l.Demand == "overshoot_below" || l.Demand == "swing_below":
 		return p.Value(*l.Level, l.LevelUnit, "difference")
 	}
 	return p.Value(*l.Level, l.LevelUnit, l.Kind)
 }
 
 // wayWords explain a column.
-const wayWords = "Way left: the margin as a share of the way from the start to the level; below zero, the level is passed by so much of that way."
+const (
+	allowedWords = " Of a swing, a rate or a time it is the share of what is allowed."
+
+	wayWords = "Way left: the margin as a share of the way from the start to the level; below zero, the level is passed by so much of that way."
+)
 
 // limitsParts are the table of verdicts and, below it, what more there is to say
 // about some of them.
 func limitsParts(p study.Printer, limits []study.Limit) []present.Part {
 	t := present.Table{
 		Caption: "Verdicts",
-		Columns: []present.Column{{Head: "limit"}, {Head: "asked"}, {Head: "came out", Align: present.Right}, {Head: "at", Align: present.Right},
+		Columns: []present.Column{{Head: "limit"}, {Head: "scenario"}, {Head: "asked"}, {Head: "came out", Align: present.Right}, {Head: "at", Align: present.Right},
 			{Head: "margin", Align: present.Right}, {Head: "way left", Align: present.Right}, {Head: "met"}},
-		FullHead: []string{"limit", "of", "demand", "level", "level unit", "met", "value", "at / s", "margin", "unit", "percent", "governs",
-			"first outside / s"},
+		FullHead: []string{"limit", "scenario", "of", "demand", "level", "level unit", "met", "value", "at / s", "margin", "unit", "percent", "governs",
+			"worst", "first outside / s"},
 	}
 	var more []string
 	for _, l := range limits {
-		t.Rows = append(t.Rows, []string{l.Name, l.Of + " " + demand(p, l), cameOut(p, l), atWords(p, l), margin(p, l), way(l), yes(l.Met)})
+		t.Rows = append(t.Rows, []string{l.Name, l.Scenario, l.Of + " " + demand(p, l), cameOut(p, l), atWords(p, l), margin(p, l), way(l), metWords(l)})
 		mark := ""
-		if l.Governs {
+		switch {
+		case l.Governs:
 			mark = "governs"
+		case l.Worst:
+			mark = "worst"
 		}
 		t.Marks = append(t.Marks, mark)
-		t.Full = append(t.Full, []string{l.Name, l.Of, l.Demand, fullOf(l.Level), l.LevelUnit, lower(l.Met), fullOf(l.Value), fullOf(l.At),
-			fullOf(l.Margin), l.Unit, fullOf(l.Percent), lower(l.Governs), fullOf(l.FirstOutside)})
+		t.Full = append(t.Full, []string{l.Name, l.Scenario, l.Of, l.Demand, fullOf(l.Level), l.LevelUnit, strings.ToLower(metWords(l)), fullOf(l.Value), fullOf(l.At),
+			fullOf(l.Margin), l.Unit, fullOf(l.Percent), lower(l.Governs), lower(l.Worst), fullOf(l.FirstOutside)})
 		if !l.Met || strings.Contains(l.Text, ";") {
-			more = append(more, l.Name+": "+l.Text)
+			more = append(more, limitName(l)+": "+l.Text)
 		}
+	}
+	if names := limitScenarios(limits); !severalScenarios(names) {
+		dropColumn(&t, 1)
+	}
+	if !slices.ContainsFunc(limits, func(l study.Limit) bool { return l.Scenario != "" }) {
+		dropFull(&t, "scenario")
+		dropFull(&t, "worst")
 	}
 	parts := []present.Part{t}
 	if slices.ContainsFunc(limits, func(l study.Limit) bool { return l.Percent != nil }) {
-		parts = append(parts, present.Paragraph{Text: wayWords})
+		words := wayWords
+		if slices.ContainsFunc(limits, func(l study.Limit) bool { return l.Demand == "time_above" || briefWords[l.Demand] != "" }) {
+			words += allowedWords
+		}
+		parts = append(parts, present.Paragraph{Text: words})
 	}
 	if more != nil {
 		parts = append(parts, present.List{Items: more})
@@ -155,12 +217,16 @@ func limitsParts(p study.Printer, limits []study.Limit) []present.Part {
 // where the question is when.
 func cameOut(p study.Printer, l study.Limit) string {
 	switch {
+	case l.Demand == "time_above" && l.Value != nil:
+		return p.Time(*l.Value)
 	case l.Unit == "s" && l.At != nil:
 		return map[string]string{"reach": "reached", "settle": "settled"}[l.Demand]
 	case l.Unit == "s" && l.Value == nil:
 		return "not in the run"
 	case l.Value == nil:
 		return "–"
+	case rates(l):
+		return rateWords(p, l, *l.Value)
 	case l.Unit == "1":
 		return p.Percent(*l.Value)
 	}
@@ -176,6 +242,14 @@ func atWords(p study.Printer, l study.Limit) string {
 
 // lower is a verdict for machines, yes one for readers.
 func lower(b bool) string { return strings.ToLower(yes(b)) }
+
+// metWords say whether a limit is met; one that is not judged is neither.
+func metWords(l study.Limit) string {
+	if l.NotJudged {
+		return "not judged"
+	}
+	return yes(l.Met)
+}
 
 func yes(b bool) string {
 	if b {
@@ -194,6 +268,9 @@ func margin(p study.Printer, l study.Limit) string {
 
 // amount prints a margin, which is a difference, in the limit's unit.
 func amount(p study.Printer, l study.Limit, v float64) string {
+	if rates(l) {
+		return rateWords(p, l, v)
+	}
 	switch l.Unit {
 	case "1":
 		return p.Percent(v)
@@ -212,12 +289,22 @@ func way(l study.Limit) string {
 	return quantity.Number(*l.Percent, 3) + " %"
 }
 
+// demandWords are what is asked, before the level.
+var demandWords = map[string]string{
+	"stay_below": "stays below ", "stay_above": "stays above ", "reach": "reaches ", "settle": "settles to ± ", "overshoot_below": "overshoots less than ",
+	"swing_below": "swings less than ", "rate_below": "changes slower than ", "rise_rate_below": "rises slower than ", "fall_rate_below": "falls slower than ",
+	"time_above": "is above ",
+}
+
 // demand puts what is asked in words: "stays below 135 °C until 72 h".
 func demand(p study.Printer, l study.Limit) string {
-	s := map[string]string{
-		"stay_below": "stays below ", "stay_above": "stays above ", "reach": "reaches ", "settle": "settles to ± ", "overshoot_below": "overshoots less than ",
-	}[l.Demand]
-	s += levelWords(p, l)
+	s := demandWords[l.Demand] + levelWords(p, l)
+	if l.LessThan != nil {
+		s += " for less than " + allowedTime(p, l)
+	}
+	if l.In != "" {
+		s += " in the " + l.In
+	}
 	if l.Within != nil {
 		s += " within " + p.Time(*l.Within)
 	}

@@ -15,6 +15,9 @@ func materialsDoc(a *handbookAnswer) present.Doc {
 	if len(a.Materials) > 0 {
 		d.Parts = append(d.Parts, substances(&notes, a.Materials))
 	}
+	if len(a.Fluids) > 0 {
+		d.Parts = append(d.Parts, liquids(&notes, a.Fluids))
+	}
 	if len(a.Joints) > 0 {
 		d.Parts = append(d.Parts, ranges(&notes, "Joints: resistance of an area", "joint", "R·A / (m²·K/W)", a.Joints))
 	}

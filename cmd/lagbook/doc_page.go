@@ -18,17 +18,27 @@ func pageDoc(m *study.Model, a *study.Page) present.Doc {
 	d := newDoc(m.Case)
 	add := func(parts ...present.Part) { d.Parts = append(d.Parts, parts...) }
 
-	add(present.Facts{List: opening(p, a)})
+	names := tableScenarios(a.Tables)
+	add(present.Facts{List: append(scenarioFact(m.Case, names), opening(p, a)...)})
 	add(doubts(a.Evidence)...)
 	add(present.Heading{Level: 1, Text: "The network"})
 	add(networkParts(p, &a.Understood)...)
 	add(present.Heading{Level: 1, Text: "How slow"})
-	add(modesPart(p, a.Modes, a.Transfers[:min(shareColumns, len(a.Transfers))]))
-	add(gainsParts(p, a.Transfers)...)
+	if len(a.Each) == 0 {
+		add(slownessParts(p, a.About, a.Modes, a.Transfers, a.Range)...)
+	}
+	for _, x := range a.Each {
+		add(present.Heading{Level: 2, Text: "Under " + scenarioTitle(m.Case, polesScenario(x))})
+		add(slownessParts(p, x.About, x.Modes, x.Transfers, x.Range)...)
+	}
 	add(present.Heading{Level: 1, Text: "Against time"})
 	for _, t := range a.Tables {
-		add(tablePart(p, t))
+		add(tablePart(p, titled(m.Case, t, severalScenarios(names))))
 	}
+	add(resultsParts(p, a.Results)...)
+	add(findsParts(p, a.Finds)...)
+	add(measuredParts(m.Case, p, a.Measured)...)
+	add(eventsParts(p, a.Evidence)...)
 	if len(a.Limits) > 0 {
 		add(present.Heading{Level: 1, Text: "Limits"})
 		add(limitsParts(p, a.Limits)...)
@@ -41,6 +51,12 @@ func pageDoc(m *study.Model, a *study.Page) present.Doc {
 	}
 	add(present.Heading{Level: 1, Text: "Assumed"}, present.List{Items: assumed(m, a)}, present.Caution{Text: a.Caution})
 	return d
+}
+
+// slownessParts are the time constants and the transfer functions in short.
+func slownessParts(p study.Printer, about string, modes []study.Mode, transfers []study.Transfer, r *study.Range) []present.Part {
+	parts := append([]present.Part{modesAbout(p, about, modes, transfers[:min(shareColumns, len(transfers))])}, rangeParts(r)...)
+	return append(parts, gainsParts(p, transfers)...)
 }
 
 // opening is the answer in three lines: what was asked, what came out, which
@@ -96,6 +112,7 @@ func networkParts(p study.Printer, c *study.Understood) []present.Part {
 			facts = append(facts, present.Fact{Name: "Load " + in.Name, Value: in.What + ": " + in.Wave})
 		}
 	}
+	facts = append(facts, scenarioFacts(p, c.Scenarios)...)
 	t := present.Table{
 		Columns:  []present.Column{{Head: "part"}, {Head: "from → to"}, {Head: "value"}, {Head: "how"}},
 		FullHead: []string{"part", "from", "to", "value", "unit", "how"},

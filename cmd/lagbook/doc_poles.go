@@ -17,15 +17,48 @@ const longList = 24
 // polesDoc is the page of the verb poles.
 func polesDoc(m *study.Model, a *study.Poles) present.Doc {
 	p, d := m.Show, newDoc(m.Case)
-	d.Parts = doubts(a.Evidence)
-	if len(a.Modes) > 0 {
-		d.Parts = append(d.Parts, modesPart(p, a.Modes, nil))
+	d.Parts = append(scenarioOpening(m.Case, scenariosOf(a.Transfers, func(t study.Transfer) string { return t.Scenario })), doubts(a.Evidence)...)
+	if len(a.Each) == 0 {
+		d.Parts = append(d.Parts, networkPoles(p, a, m.Nonlinear())...)
 	}
-	for _, t := range a.Transfers {
-		d.Parts = append(d.Parts, transferParts(p, t)...)
+	for _, x := range a.Each {
+		d.Parts = append(d.Parts, underHeading(m.Case, polesScenario(x)))
+		d.Parts = append(d.Parts, networkPoles(p, x, m.Nonlinear())...)
 	}
 	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
+}
+
+// networkPoles are the time constants and transfer functions of one network.
+func networkPoles(p study.Printer, a *study.Poles, nonlinear bool) (parts []present.Part) {
+	if len(a.Modes) > 0 {
+		parts = append(parts, modesAbout(p, a.About, a.Modes, nil))
+	}
+	parts = append(parts, rangeParts(a.Range)...)
+	for _, t := range a.Transfers {
+		parts = append(parts, transferParts(p, t, nonlinear)...)
+	}
+	return parts
+}
+
+// polesScenario is the scenario that an answer holds under.
+func polesScenario(a *study.Poles) string {
+	switch {
+	case len(a.Transfers) > 0:
+		return a.Transfers[0].Scenario
+	case len(a.Modes) > 0:
+		return a.Modes[0].Scenario
+	}
+	return ""
+}
+
+// modesAbout is modesPart, saying of a nonlinear case which state the modes belong to.
+func modesAbout(p study.Printer, about string, modes []study.Mode, of []study.Transfer) present.Table {
+	t := modesPart(p, modes, of)
+	if about != "" {
+		t.Caption += ", of the linear network about " + aboutState(about)
+	}
+	return t
 }
 
 // modesPart lists the modes of the network: how slow, and what moves together.
@@ -65,17 +98,6 @@ func modesPart(p study.Printer, modes []study.Mode, of []study.Transfer) present
 		t.Caption += fmt.Sprintf(" (%d faster ones are in csv and json)", n)
 	}
 	return t
-}
-
-// dropLast takes the last column from what is read; CSV keeps it.
-func dropLast(t *present.Table) { dropColumn(t, len(t.Columns)-1) }
-
-// dropColumn takes a column from what is read; CSV keeps it.
-func dropColumn(t *present.Table, k int) {
-	t.Columns = slices.Delete(t.Columns, k, k+1)
-	for i := range t.Rows {
-		t.Rows[i] = slices.Delete(t.Rows[i], k, k+1)
-	}
 }
 
 // sharePercent prints a share; what does not show in three digits is said so.
@@ -187,9 +209,9 @@ func movesWords(p study.Printer, moves []study.Move) string {
 }
 
 // transferParts shows one transfer function.
-func transferParts(p study.Printer, t study.Transfer) []present.Part {
+func transferParts(p study.Printer, t study.Transfer, nonlinear bool) []present.Part {
 	parts := []present.Part{
-		present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About)},
+		present.Heading{Level: 1, Text: t.Input + " → " + t.Output + aboutWords(t.About, nonlinear)},
 		present.Facts{List: transferFacts(p, t)},
 	}
 	if len(t.Poles) > 0 {
@@ -312,46 +334,23 @@ func peakWords(p study.Printer, unit string, s *study.Step) string {
 	return strings.Join(words, ", ")
 }
 
-// polynomial writes ascending coefficients, highest power first.
-func polynomial(p study.Printer, c []float64) string {
-	var words []string
-	for k := len(c) - 1; k >= 0; k-- {
-		if c[k] == 0 {
-			continue
-		}
-		power := map[bool]string{true: "s"}[k > 0]
-		if k > 1 {
-			power += raised(k)
-		}
-		sign, size := " + ", c[k]
-		if size < 0 {
-			sign, size = " − ", -size
-		}
-		word := p.Number(size)
-		switch {
-		case k > 0 && size == 1:
-			word = power
-		case k > 0:
-			word += "·" + power
-		}
-		words = append(words, sign, word)
+// aboutState names the state that a linear network is about.
+func aboutState(about string) string {
+	if about == "start" {
+		return "the start"
 	}
-	if len(words) == 0 {
-		return "0"
-	}
-	words[0] = strings.TrimPrefix(strings.TrimSpace(words[0]), "+")
-	return strings.Join(words, "")
+	return "the state at " + about
 }
 
-// raised writes an exponent, which has one digit here.
-func raised(k int) string { return string([]rune("⁰¹²³⁴⁵⁶⁷⁸⁹")[k]) }
-
-// aboutWords says of a network that switches when it is as described.
-func aboutWords(about string) string {
-	switch about {
-	case "":
+// aboutWords says of a network that switches when it is as described, and of one that
+// is not linear about which state it is taken so.
+func aboutWords(about string, nonlinear bool) string {
+	switch {
+	case about == "":
 		return ""
-	case "start":
+	case nonlinear:
+		return " (about " + aboutState(about) + ")"
+	case about == "start":
 		return " (just before t = 0)"
 	}
 	return " (from " + about + " on)"

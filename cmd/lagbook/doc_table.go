@@ -10,17 +10,22 @@ import (
 // tablesDoc is the page of the verb table.
 func tablesDoc(m *study.Model, a *study.Tables) present.Doc {
 	d := newDoc(m.Case)
-	d.Parts = doubts(a.Evidence)
+	names := tableScenarios(a.Tables)
+	d.Parts = append(scenarioOpening(m.Case, names), doubts(a.Evidence)...)
 	for _, t := range a.Tables {
-		d.Parts = append(d.Parts, tablePart(m.Show, t))
+		d.Parts = append(d.Parts, tablePart(m.Show, titled(m.Case, t, severalScenarios(names))))
 	}
+	d.Parts = append(d.Parts, resultsParts(m.Show, a.Results)...)
+	d.Parts = append(d.Parts, findsParts(m.Show, a.Finds)...)
+	d.Parts = append(d.Parts, measuredParts(m.Case, m.Show, a.Measured)...)
+	d.Parts = append(d.Parts, eventsParts(m.Show, a.Evidence)...)
 	d.Parts = append(d.Parts, closing(m.Case, a.Evidence)...)
 	return d
 }
 
 // tablePart shows one table against time.
 func tablePart(p study.Printer, t study.Table) present.Table {
-	out := present.Table{Caption: t.Title, Marks: make([]string, len(t.Rows))}
+	out := present.Table{Caption: captionOf(p, t), Marks: make([]string, len(t.Rows))}
 	times := make([]float64, len(t.Rows))
 	for i, r := range t.Rows {
 		times[i] = r[0]

@@ -18,7 +18,8 @@ type frequencyFlags struct {
 // frequency prints gain and phase against frequency or period.
 func (a *app) frequency() *cobra.Command {
 	var f frequencyFlags
-	c := &cobra.Command{
+	var s scenes
+	c := s.flags(&cobra.Command{
 		Use:   "frequency [CASE.toml]",
 		Short: "gain and phase against frequency or period",
 		Long: "frequency says how a steady swing at the input of each [[transfer]] arrives at its\n" +
@@ -37,17 +38,21 @@ func (a *app) frequency() *cobra.Command {
 			if err != nil {
 				return err
 			}
-			m, err := a.modelOr(demo.Swing, args)
+			m, err := a.modelOr(s.example(demo.Swing), args)
 			if err != nil {
 				return err
 			}
-			ans, err := m.Frequency(q)
+			list, err := s.of(m)
+			if err != nil {
+				return err
+			}
+			ans, err := m.FrequencyUnder(list, q)
 			if err != nil {
 				return a.failed(m, err)
 			}
 			return a.answer(ans, func() present.Doc { return frequencyDoc(m, ans, q) })
 		},
-	}
+	})
 	c.Flags().StringArrayVar(&f.at, "at", nil, "`FREQUENCY`, period or range of them to answer at; may be repeated")
 	c.Flags().IntVar(&f.perDecade, "per-decade", 10, "`N` points in each factor of ten of a range")
 	c.Flags().StringVar(&f.ripple, "ripple", "", "`AMPLITUDE` of a swing at the input, such as \"5 W\"; with --below")

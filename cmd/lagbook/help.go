@@ -43,7 +43,7 @@ func (a *app) helpVerb() *cobra.Command {
 }
 
 // verbs are the verbs in the order in which a user meets them.
-var verbs = []string{"demo", "check", "poles", "table", "limits", "cycle", "frequency", "plot", "materials", "completion", "help"}
+var verbs = []string{"demo", "check", "poles", "table", "limits", "size", "cycle", "frequency", "plot", "compare", "materials", "completion", "help"}
 
 func writeHelp(w io.Writer, c *cobra.Command) {
 	fmt.Fprintf(w, "%s\n\nUsage:\n  %s\n", firstOf(c.Long, c.Short), useLine(c))

@@ -7,6 +7,7 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"lagbook/hydraulic"
@@ -44,11 +45,21 @@ func (a *app) modelOr(example string, args []string) (*study.Model, error) {
 	}
 	m, more := study.New(c)
 	ds = append(ds, more...)
-	a.diagnose(ds)
 	if casefile.Failed(ds) {
+		a.diagnose(ds)
 		return nil, &fault{code: exitCase}
 	}
+	a.diagnose(unanswered(m, ds))
 	return m, nil
+}
+
+// unanswered leaves out what every answer says itself.
+func unanswered(m *study.Model, ds []casefile.Diagnostic) []casefile.Diagnostic {
+	answered := map[string]bool{}
+	for _, d := range m.Remarks() {
+		answered[d.Error()] = true
+	}
+	return slices.DeleteFunc(ds, func(d casefile.Diagnostic) bool { return answered[d.Error()] })
 }
 
 // vocabulary is what a case may be made of.
@@ -155,7 +166,15 @@ func (a *app) failed(m *study.Model, err error) error {
 	if err == nil {
 		return nil
 	}
+	var refused *study.Refusal
+	if errors.As(err, &refused) {
+		a.diagnose(refused.Diagnostics)
+		return &fault{code: exitCase}
+	}
 	if ds := m.Case.Explain(err); len(ds) > 0 {
+		if in := (*study.Under)(nil); errors.As(err, &in) {
+			ds = under(in.Scenario, ds)
+		}
 		a.diagnose(ds)
 		return &fault{code: exitCase}
 	}

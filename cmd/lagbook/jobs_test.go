@@ -13,8 +13,9 @@ import (
 	"testing"
 )
 
-// A figure of a whole job, computed by an independent model: closed forms and
-// exact exponentials at 40 digits. Each tolerance is stated with its figure.
+// A figure of a whole job, computed by an independent model: closed forms, exact
+// exponentials at 40 digits, or two integrators at tight tolerances. Each tolerance is
+// stated with its figure.
 type figure struct {
 	Verb   string   `json:"verb"`
 	Path   string   `json:"path"`
@@ -88,8 +89,11 @@ func (f figure) compare(t *testing.T, got any) {
 }
 
 var (
-	rowPath   = regexp.MustCompile(`^tables\[(\d+)\]\.rows\[(t=|peak of )([^\]]+)\]\.(.+)$`)
-	namedPath = regexp.MustCompile(`^(\w+)\[(name|output)=([^\]]+)\]\.(\w+)$`)
+	rowPath   = regexp.MustCompile(`^tables\[(\d*)(?:,? ?scenario=(\w+))?\]\.rows\[(t=|peak of )([^\]]+)\]\.(.+)$`)
+	namedPath = regexp.MustCompile(`^(\w+)\[(name|output)=([^\],]+)(?:, ?scenario=(\w+))?\]\.(\w+)$`)
+	modePath  = regexp.MustCompile(`^poles of the network \[(\d+), slowest first\]\.(\w+)$`)
+	eventPath = regexp.MustCompile(`^events\[part=([^\]]+)\]\[(\d+)\]\.(\w+)$`)
+	countPath = regexp.MustCompile(`^transfers\[(\d+|input=[^\]]+)[^\]]*\]\.(poles|zeros)\.count$`)
 	polePath  = regexp.MustCompile(`^transfers\[(\d+|input=[^\]]+)[^\]]*\]\.(poles|zeros)\[([^\]]+)\]\.(\w+)$`)
 	transPath = regexp.MustCompile(`^transfers\[(\d+|input=[^\]]+)[^\]]*\]\.([\w.]+)$`)
 	doubling  = regexp.MustCompile(`doubles every ([0-9.]+) (s|min|h|d)\b`)
@@ -99,15 +103,28 @@ var (
 // "transfers[0: a to b].poles[unstable].re".
 func find(a map[string]any, path string) (any, error) {
 	if m := rowPath.FindStringSubmatch(path); m != nil {
-		return findRow(a, m[1], m[2] == "t=", m[3], m[4])
+		return findRow(a, m[1], m[2], m[3] == "t=", m[4], m[5])
 	}
 	if m := namedPath.FindStringSubmatch(path); m != nil {
 		for _, x := range items(a[m[1]]) {
-			if o := x.(map[string]any); o[m[2]] == m[3] {
-				return field(o, m[4])
+			if o := x.(map[string]any); o[m[2]] == m[3] && (m[4] == "" || o["scenario"] == m[4]) {
+				return field(o, m[5])
 			}
 		}
 		return nil, fmt.Errorf("no %s named %s", m[1], m[3])
+	}
+	if m := modePath.FindStringSubmatch(path); m != nil {
+		return findMode(items(a["modes"]), m[1], m[2])
+	}
+	if m := eventPath.FindStringSubmatch(path); m != nil {
+		return findEvent(items(a["events"]), m[1], m[2], m[3])
+	}
+	if m := countPath.FindStringSubmatch(path); m != nil {
+		return float64(len(items(transferAt(a, m[1])[m[2]]))), nil
+	}
+	if path == "balance.error" {
+		b, _ := a["balance"].(map[string]any)
+		return field(b, "error")
 	}
 	if m := polePath.FindStringSubmatch(path); m != nil {
 		roots := items(transferAt(a, m[1])[m[2]])
@@ -125,6 +142,22 @@ func find(a map[string]any, path string) (any, error) {
 		return findDoubling(a)
 	}
 	return nil, fmt.Errorf("no way to read this path")
+}
+
+// findEvent reads the k-th event of a part.
+func findEvent(events []any, part, k, key string) (any, error) {
+	left, _ := strconv.Atoi(k)
+	for _, x := range events {
+		o := x.(map[string]any)
+		if o["part"] != part {
+			continue
+		}
+		if left == 0 {
+			return field(o, key)
+		}
+		left--
+	}
+	return nil, fmt.Errorf("no event %s of %s", k, part)
 }
 
 func field(o map[string]any, key string) (any, error) {
@@ -154,10 +187,33 @@ func transferAt(a map[string]any, index string) map[string]any {
 	return nil
 }
 
+// findMode finds the k-th mode, one that is several at once counted as often.
+func findMode(modes []any, k, key string) (any, error) {
+	left, _ := strconv.Atoi(k)
+	for _, x := range modes {
+		o := x.(map[string]any)
+		n, _ := o["multiplicity"].(float64)
+		if left < int(n) {
+			return field(o, key)
+		}
+		left -= int(n)
+	}
+	return nil, fmt.Errorf("no mode %s", k)
+}
+
 // findRow finds a row by its time, or by its mark, and the cell of a column.
-func findRow(a map[string]any, index string, byTime bool, key, column string) (any, error) {
-	i, _ := strconv.Atoi(index)
-	tab := items(a["tables"])[i].(map[string]any)
+func findRow(a map[string]any, index, scenario string, byTime bool, key, column string) (any, error) {
+	i, _ := strconv.Atoi(index) // "": the first
+	var own []any
+	for _, x := range items(a["tables"]) {
+		if scenario == "" || x.(map[string]any)["scenario"] == scenario {
+			own = append(own, x)
+		}
+	}
+	if i >= len(own) {
+		return nil, fmt.Errorf("no table %d", i)
+	}
+	tab := own[i].(map[string]any)
 	col := -1
 	for k, c := range items(tab["columns"]) {
 		if c.(map[string]any)["name"] == column {
@@ -189,12 +245,26 @@ func findRow(a map[string]any, index string, byTime bool, key, column string) (a
 }
 
 // findRoot picks a pole or zero: by its place among the slowest, "slow", "fast",
-// "im>0", or "unstable" and "stable".
+// "im>0", "slowest pair" and "second pair", or "unstable" and "stable". Of a pair the
+// one with the positive imaginary part comes first.
 func findRoot(roots []any, sel, key string) (any, error) {
 	at := func(x any, k string) float64 { v, _ := x.(map[string]any)[k].(float64); return v }
 	sort.SliceStable(roots, func(i, j int) bool {
-		return math.Hypot(at(roots[i], "re"), at(roots[i], "im")) < math.Hypot(at(roots[j], "re"), at(roots[j], "im"))
+		a, b := math.Hypot(at(roots[i], "re"), at(roots[i], "im")), math.Hypot(at(roots[j], "re"), at(roots[j], "im"))
+		return a < b*(1-1e-12) || a <= b*(1+1e-12) && at(roots[i], "im") > at(roots[j], "im")
 	})
+	if which, ok := strings.CutSuffix(sel, " pair,im>0"); ok {
+		k := map[string]int{"slowest": 0, "second": 1}[which]
+		for _, r := range roots {
+			if at(r, "im") <= 0 {
+				continue
+			}
+			if k == 0 {
+				return field(r.(map[string]any), key)
+			}
+			k--
+		}
+	}
 	n, err := strconv.Atoi(strings.SplitN(sel, ",", 2)[0])
 	switch sel {
 	case "slow":

@@ -96,6 +96,13 @@ func TestSameBytes(t *testing.T) {
 			}
 		}
 	}
+	for _, args := range [][]string{{"table", "--both"}, {"limits"}, {"check", "--flows"}, {"poles"}} { // of a march
+		args = append(args, "../../testdata/jobs/press-accumulator.toml", "--format", "json")
+		_, first, _ := call(t, "", args...)
+		if _, again, _ := call(t, "", args...); again != first || first == "" {
+			t.Errorf("%v: two runs differ:\n%s", args, cmp.Diff(first, again))
+		}
+	}
 }
 
 // Every verb that help shows has an example, and the example runs.

@@ -16,12 +16,12 @@ func (a *app) materials() *cobra.Command {
 	return &cobra.Command{
 		Use:     "materials [WORD...]",
 		Short:   "the handbook data, with sources",
-		Long:    "materials lists the materials of the handbook, typical resistances of joints and\nemissivities of surfaces, each with its source; with words, those that match.\nThe key in the first column is what a case file names.",
+		Long:    "materials lists the materials of the handbook, the liquids of hydraulic networks,\ntypical resistances of joints and emissivities of surfaces, each with its source;\nwith words, those that match. The key in the first column is what a case file\nnames.",
 		Example: "  lagbook materials copper",
 		RunE: func(_ *cobra.Command, args []string) error {
 			words := strings.Join(args, " ")
 			ans := handbook(words)
-			if len(ans.Materials)+len(ans.Joints)+len(ans.Surfaces) == 0 {
+			if len(ans.Materials)+len(ans.Fluids)+len(ans.Joints)+len(ans.Surfaces) == 0 {
 				return &fault{exitCase, fmt.Sprintf("nothing in the handbook matches %q", words)}
 			}
 			return a.answer(ans, func() present.Doc { return materialsDoc(ans) })
@@ -34,6 +34,7 @@ func (a *app) materials() *cobra.Command {
 type handbookAnswer struct {
 	Title     string           `json:"title"`
 	Materials []materialAnswer `json:"materials"`
+	Fluids    []fluidAnswer    `json:"fluids"`
 	Joints    []rangeAnswer    `json:"joints"`   // m²·K/W
 	Surfaces  []rangeAnswer    `json:"surfaces"` // total hemispherical emissivity
 	Warnings  []study.Warning  `json:"warnings"`
@@ -71,7 +72,7 @@ type rangeAnswer struct {
 
 // handbook gathers what matches the words; all of it for none.
 func handbook(words string) *handbookAnswer {
-	a := &handbookAnswer{Title: "Handbook data", Materials: []materialAnswer{}, Joints: []rangeAnswer{}, Surfaces: []rangeAnswer{}, Warnings: []study.Warning{}, Caution: study.Caution}
+	a := &handbookAnswer{Title: "Handbook data", Materials: []materialAnswer{}, Fluids: fluids(words), Joints: []rangeAnswer{}, Surfaces: []rangeAnswer{}, Warnings: []study.Warning{}, Caution: study.Caution}
 	for _, m := range material.Search(words) {
 		x := materialAnswer{Key: m.Key, Name: m.Name, Phase: m.Phase.String(), Category: m.Category, Note: m.Note}
 		if m.Emissivity.High > 0 {

@@ -14,12 +14,10 @@ import (
 type unbuilt struct{ name, does string }
 
 var notBuilt = []unbuilt{
-	{"size", "the value that meets the limits"},
 	{"sweep", "a result over a range of values"},
 	{"tolerance", "sensitivity, worst case, Monte Carlo"},
 	{"fit", "a network from a measured curve"},
 	{"note", "the design note"},
-	{"compare", "two cases side by side"},
 	{"verify", "the published checks, run here"},
 	{"new", "a commented starter case"},
 }

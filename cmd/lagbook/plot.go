@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"lagbook/cmd/lagbook/internal/draw"
+	"lagbook/network/casefile"
 	"lagbook/network/quantity"
 	"lagbook/network/study"
 	"lagbook/testdata/demo"
@@ -21,7 +22,9 @@ var pictures = []string{"response", "frequency", "plane", "surface"}
 func (a *app) plot() *cobra.Command {
 	var what string
 	var number int
-	c := &cobra.Command{
+	var s scenes
+	var c *cobra.Command
+	c = s.flags(&cobra.Command{
 		Use:   "plot [CASE.toml]",
 		Short: "a picture: response, gain and phase, s-plane",
 		Long: "plot draws one picture, as SVG or, where -o ends in .png, as PNG:\n\n" +
@@ -30,7 +33,8 @@ func (a *app) plot() *cobra.Command {
 			"  plane      poles and zeros of one transfer function\n" +
 			"  surface    |H(s)| of one transfer function over the s-plane\n\n" +
 			"--number picks the table or the transfer function, in the order of the verbs table\n" +
-			"and poles. Units are those of [print]. With --format json, the data instead.",
+			"and poles. Units are those of [print]. A response is drawn\n" +
+			"under every scenario of the case in one picture; --scenario picks some. With --format json, the data instead.",
 		Example: "  lagbook plot --what response > response.svg\n" +
 			"  lagbook plot --what surface --number 1 > surface.svg",
 		Args: oneCase,
@@ -39,28 +43,47 @@ func (a *app) plot() *cobra.Command {
 			if err != nil {
 				return err
 			}
-			m, err := a.modelOr(demo.Swing, args)
+			m, err := a.modelOr(s.example(demo.Swing), args)
 			if err != nil {
 				return err
 			}
-			data, paint, err := picture(m, what, number)
+			list, err := s.of(m)
+			if err != nil {
+				return err
+			}
+			pick := number
+			if !c.Flags().Changed("number") && (what == "plane" || what == "surface") {
+				pick = 0 // the first with a pole
+			}
+			data, paint, err := a.picture(m, list, what, pick)
 			if err != nil {
 				return a.failed(m, err)
 			}
-			if a.format == "json" {
-				return a.answer(data, nil)
+			if err := a.show(data, paint, format); err != nil {
+				return err
 			}
-			b, err := paint(format)
-			if err != nil {
-				return &fault{exitCase, err.Error()}
+			if c, ok := data.(*study.Curves); ok {
+				return stopped(c.Evidence)
 			}
-			return a.publish(b)
+			return nil
 		},
-	}
+	})
 	c.Flags().StringVar(&what, "what", "response", "`PICTURE` to draw: "+strings.Join(pictures, ", "))
 	c.Flags().IntVar(&number, "number", 1, "`N` of the table or transfer function to draw")
 	_ = c.RegisterFlagCompletionFunc("what", cobra.FixedCompletions(pictures, cobra.ShellCompDirectiveNoFileComp))
 	return c
+}
+
+// show prints a picture, or its data as JSON.
+func (a *app) show(data any, paint func(draw.Format) ([]byte, error), format draw.Format) error {
+	if a.format == "json" {
+		return a.answer(data, nil)
+	}
+	b, err := paint(format)
+	if err != nil {
+		return &fault{exitCase, err.Error()}
+	}
+	return a.publish(b)
 }
 
 // pictureFormat settles what to draw and how before the case is read.
@@ -88,12 +111,20 @@ func (a *app) pictureFormat(what string) (draw.Format, error) {
 }
 
 // picture asks the study for the data of a picture and says how to paint it.
-func picture(m *study.Model, what string, number int) (data any, paint func(draw.Format) ([]byte, error), err error) {
-	switch what {
-	case "response":
-		c, err := m.Curves(number)
+func (a *app) picture(m *study.Model, list []*casefile.Scenario, what string, number int) (data any, paint func(draw.Format) ([]byte, error), err error) {
+	if what == "response" {
+		c, err := m.CurvesUnder(list, number)
 		return c, func(f draw.Format) ([]byte, error) { return draw.Response(f, c, m.Show) }, err
-	case "frequency":
+	}
+	if list[0] != nil {
+		if ds := m.Use(list[0]); casefile.Failed(ds) {
+			return nil, nil, &study.Refusal{Diagnostics: ds}
+		}
+		if len(list) > 1 {
+			a.note("the picture is that under scenario %q: --scenario picks another", list[0].Name)
+		}
+	}
+	if what == "frequency" {
 		c, err := m.FrequencyCurves(number)
 		return c, func(f draw.Format) ([]byte, error) { return draw.Gain(f, c, m.Show) }, err
 	}

@@ -55,7 +55,7 @@ func (a *app) root() *cobra.Command {
 	f.BoolVar(&a.version, "version", false, "print the version and stop")
 	_ = root.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formats(), cobra.ShellCompDirectiveNoFileComp))
 
-	root.AddCommand(a.demo(), a.check(), a.poles(), a.table(), a.limits(), a.cycle(), a.frequency(), a.plot(), a.materials(), a.man())
+	root.AddCommand(a.demo(), a.check(), a.poles(), a.table(), a.limits(), a.size(), a.cycle(), a.frequency(), a.plot(), a.compare(), a.materials(), a.man())
 	for _, n := range notBuilt {
 		root.AddCommand(n.command())
 	}

@@ -15,20 +15,26 @@ type Warning struct {
 type Evidence struct {
 	Warnings []Warning `json:"warnings"`
 	Start    string    `json:"start"`
-	Linear   string    `json:"-"` // what does not change, in the words of the page
+	Linear   string    `json:"-"` // what the answer rests on, in the words of the page
+	*Marched           // nil where nothing was marched
 	Caution  string    `json:"caution"`
 }
 
 // Poles answers the verb poles: transfer functions, and the modes of the whole network.
 type Poles struct {
 	Title     string     `json:"title"`
+	About     string     `json:"about,omitempty"` // the state that the modes of a nonlinear case belong to
 	Transfers []Transfer `json:"transfers"`
 	Modes     []Mode     `json:"modes"`
+	Range     *Range     `json:"linear_range,omitempty"` // of a nonlinear case, about the start: over what change of the loads it holds
+
+	Each []*Poles `json:"-"` // under each scenario, where several change the network
 	Evidence
 }
 
 // A Mode is one pole of the whole network and the nodes that move together in it.
 type Mode struct {
+	Scenario string `json:"scenario,omitempty"` // where scenarios change the network
 	Pole
 	Moves  []Move  `json:"moves"`  // largest first, relative to the largest; below 0.1 left out
 	Shares []Share `json:"shares"` // of the rise of each transfer function above
@@ -76,7 +82,8 @@ type Zero struct {
 type Transfer struct {
 	Input          string         `json:"input"`
 	Output         string         `json:"output"`
-	About          string         `json:"about,omitempty"` // of a network that switches: start, or a time
+	Scenario       string         `json:"scenario,omitempty"` // where scenarios change the network
+	About          string         `json:"about,omitempty"`    // of a network that switches or is not linear: start, or a time
 	Unit           string         `json:"unit"`
 	Gain           *float64       `json:"gain,omitempty"`
 	Form           string         `json:"form"`
@@ -107,17 +114,24 @@ type Step struct {
 
 // Tables answers the verb table.
 type Tables struct {
-	Title  string  `json:"title"`
-	Tables []Table `json:"tables"`
+	Title    string     `json:"title"`
+	Tables   []Table    `json:"tables"`
+	Measured []Measured `json:"measured,omitempty"`
+
+	Results []Result `json:"results,omitempty"`
+	Finds   []Find   `json:"finds,omitempty"`
 	Evidence
 }
 
 // A Table holds rows of [time, values...], in SI.
 type Table struct {
-	Title   string      `json:"title"`
-	Columns []Column    `json:"columns"`
-	Rows    [][]float64 `json:"rows"`
-	Marks   []Mark      `json:"marks"` // what happened by a row
+	Title    string      `json:"title"`
+	Scenario string      `json:"scenario,omitempty"`
+	Columns  []Column    `json:"columns"`
+	Rows     [][]float64 `json:"rows"`
+	Marks    []Mark      `json:"marks"` // what happened by a row
+
+	ValidUntil *float64 `json:"valid_until,omitempty"` // s; rows that were asked for after it do not exist
 }
 
 // A Column names what a column holds. Kind is level or difference where the unit alone does not say.
@@ -138,6 +152,9 @@ type Limits struct {
 	Title  string  `json:"title"`
 	Limits []Limit `json:"limits"`
 	Met    bool    `json:"met"` // all of them
+
+	Results []Result `json:"results,omitempty"`
+	Finds   []Find   `json:"finds,omitempty"`
 	Evidence
 }
 
@@ -145,6 +162,7 @@ type Limits struct {
 // At and FirstOutside in s.
 type Limit struct {
 	Name         string   `json:"name"`
+	Scenario     string   `json:"scenario,omitempty"`
 	Demand       string   `json:"demand"` // stay_below, stay_above, reach, settle, overshoot_below
 	Of           string   `json:"of"`
 	Kind         string   `json:"kind,omitempty"`
@@ -152,9 +170,14 @@ type Limit struct {
 	LevelUnit    string   `json:"level_unit,omitempty"`
 	Percentage   bool     `json:"level_of_change,omitempty"` // the level is a fraction of the final change
 	Within       *float64 `json:"within,omitempty"`
+	LessThan     *float64 `json:"less_than,omitempty"` // s: of time_above
+	PerDay       bool     `json:"per_day,omitempty"`   // that is meant of every day
+	In           string   `json:"in,omitempty"`        // cycle: of the periodic state, At within its period
+	Among        int      `json:"among,omitempty"`     // outputs that the limit is on: Of is the worst
 	After        *float64 `json:"after,omitempty"`
 	Until        *float64 `json:"until,omitempty"`
 	Met          bool     `json:"met"`
+	NotJudged    bool     `json:"not_judged,omitempty"` // neither met nor not met: the march had to stop before it could tell, or there is no cycle
 	Value        *float64 `json:"value,omitempty"`
 	At           *float64 `json:"at,omitempty"`
 	Margin       *float64 `json:"margin,omitempty"`
@@ -162,6 +185,7 @@ type Limit struct {
 	Percent      *float64 `json:"percent,omitempty"` // the margin as a share of the way from the start value to the level
 	Unit         string   `json:"unit"`
 	Governs      bool     `json:"governs"`
+	Worst        bool     `json:"worst,omitempty"` // of the scenarios that the limit is judged under
 	FirstOutside *float64 `json:"first_outside,omitempty"`
 	Text         string   `json:"text"` // the verdict in a sentence
 }
@@ -170,6 +194,7 @@ type Limit struct {
 type Check struct {
 	Title string `json:"title"`
 	Understood
+	Flows []Flows `json:"flows,omitempty"` // where they were asked for
 	Evidence
 }
 
@@ -177,10 +202,17 @@ type Check struct {
 type Understood struct {
 	Nodes     []CheckNode   `json:"nodes"`
 	Branches  []CheckBranch `json:"branches"`
+	State     []CheckValue  `json:"state"`               // what else is known of t = 0: "level of t1"
+	Nonlinear []string      `json:"nonlinear,omitempty"` // the parts whose laws are not linear
 	Inputs    []CheckInput  `json:"inputs"`
 	Given     []CheckGiven  `json:"given"`
-	Notes     []string      `json:"notes"`
-	LeavesOut []string      `json:"leaves_out"`
+
+	Profiles  []CheckProfile  `json:"profiles,omitempty"`
+	Uses      []CheckUse      `json:"uses,omitempty"`
+	Scenarios []CheckScenario `json:"scenarios,omitempty"`
+
+	Notes     []string `json:"notes"`
+	LeavesOut []string `json:"leaves_out"`
 }
 
 // A CheckNode is one node: held, stored or massless.
@@ -209,6 +241,19 @@ type CheckBranch struct {
 	Formula  string  `json:"formula,omitempty"`
 	Numbers  string  `json:"numbers,omitempty"`
 	Source   string  `json:"source,omitempty"`
+
+	Flow     *float64 `json:"flow,omitempty"` // just before t = 0; in the first line of a part
+	FlowUnit string   `json:"flow_unit,omitempty"`
+}
+
+// A CheckValue is something of a part just before t = 0: a reading, or in words that it
+// is shut.
+type CheckValue struct {
+	Name  string   `json:"name"` // "level of t1"
+	Value *float64 `json:"value,omitempty"`
+	Unit  string   `json:"unit,omitempty"`
+	Kind  string   `json:"kind,omitempty"`
+	State string   `json:"state,omitempty"` // "shut"
 }
 
 // A CheckInput is one driven quantity, its waveform in words.
@@ -245,12 +290,18 @@ type HandLine struct {
 // Page answers the verb demo: everything a design note opens with.
 type Page struct {
 	Title     string     `json:"title"`
+	About     string     `json:"about,omitempty"` // the state that the modes of a nonlinear case belong to
 	Limits    []Limit    `json:"limits"`
 	Met       bool       `json:"met"` // all limits
 	Transfers []Transfer `json:"transfers"`
 	Modes     []Mode     `json:"modes"`
+	Range     *Range     `json:"linear_range,omitempty"` // as of Poles
 	Tables    []Table    `json:"tables"`
+	Measured  []Measured `json:"measured,omitempty"`
+	Results   []Result   `json:"results,omitempty"`
+	Finds     []Find     `json:"finds,omitempty"`
 	Hand      []HandLine `json:"hand_check"`
+	Each      []*Poles   `json:"-"` // under each scenario, where several change the network
 	Understood
 	Evidence
 }

@@ -91,3 +91,30 @@ func vary(given []quantity.Value) {
 	given[1].SI *= 1 + 1e-9
 	given[1].Exact = nil
 }
+
+// A scenario of other loads costs its response: beside it a scenario that changes the
+// network, and so the analysis of it.
+func BenchmarkScenario(b *testing.B) {
+	const more = "\n[scenario.loads]\nset = { room = \"30 °C\" }\n[scenario.network]\nset = { hold = \"2 K/W\" }\n"
+	for _, n := range []int{10, 50, 200} {
+		m := readRow(b, append(rowOfBodies(n), more...))
+		all, err := m.Scenarios(nil)
+		if err != nil {
+			b.Fatal(err)
+		}
+		for _, s := range all {
+			b.Run(fmt.Sprintf("nodes=%d/%s", n, s.Name), func(b *testing.B) {
+				b.ReportAllocs()
+				use := []*casefile.Scenario{nil, s} // from the case as written and back
+				for k := 0; b.Loop(); k++ {
+					if ds := m.Use(use[k%2]); casefile.Failed(ds) {
+						b.Fatal(casefile.Listing(ds))
+					}
+					if _, err := m.Tables(); err != nil {
+						b.Fatal(err)
+					}
+				}
+			})
+		}
+	}
+}

@@ -2,6 +2,7 @@ package study
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"lagbook/network"
@@ -13,25 +14,55 @@ import (
 // follows, inputs in words, given values, and what is legal but worth a word.
 func (m *Model) Check() (*Check, error) {
 	c := m.Case
-	if _, err := m.startState(); err != nil { // whatever cannot be computed is said here, not first by table
+	start, err := m.startSnapshot() // whatever cannot be computed is said here, not first by table
+	if err != nil {
 		return nil, err
 	}
 	a := &Check{Title: c.Title, Understood: Understood{
-		Nodes: m.checkNodes(), Branches: []CheckBranch{}, Inputs: m.checkInputs(),
+		Nodes: m.checkNodes(start), Branches: []CheckBranch{}, Inputs: m.checkInputs(),
 		Given: m.checkGiven(), Notes: m.notes(), LeavesOut: append([]string{}, c.LeavesOut...),
 	}}
+	a.Profiles, a.Uses = m.checkProfiles(), m.checkUses()
+	if a.Scenarios, err = m.checkScenarios(); err != nil {
+		return nil, err
+	}
 	for _, e := range c.Elements {
-		if e.Table.Name != "node" && e.Table.Derive != nil {
-			a.Branches = append(a.Branches, m.checkBranches(e)...)
+		if e.Table.Name != "node" {
+			a.Branches = append(a.Branches, m.checkBranches(e, start)...)
 		}
 	}
-	a.Evidence = m.evidence(nil)
+	if a.State, err = m.checkState(start); err != nil {
+		return nil, err
+	}
+	var warn []Warning
+	if m.Nonlinear() {
+		a.Nonlinear = m.nonlinearParts()
+		if warn, err = m.unstableStart(); err != nil {
+			return nil, err
+		}
+		if text := m.runaway(); text != "" {
+			a.Notes = append(a.Notes, text)
+		}
+	}
+	a.Evidence = m.evidence(warn)
 	return a, nil
 }
 
+// unstableStart says in words which poles of the linear network about the start grow.
+func (m *Model) unstableStart() ([]Warning, error) {
+	red, err := m.reducedAbout(nil)
+	if err != nil {
+		return nil, err
+	}
+	warn := m.growing(red.System)
+	for i := range warn {
+		warn[i].Text += ", about the start"
+	}
+	return warn, nil
+}
+
 // checkNodes lists the nodes in file order.
-func (m *Model) checkNodes() []CheckNode {
-	levels := m.start.Levels
+func (m *Model) checkNodes(start *snapshot) []CheckNode {
 	list := []CheckNode{}
 	for _, e := range m.Case.Elements {
 		id, ok := m.Case.Node(e.FullName())
@@ -44,14 +75,14 @@ func (m *Model) checkNodes() []CheckNode {
 		switch {
 		case v.Held:
 			n.Kind = "held"
-		case v.Massless:
+		case !m.stores(id):
 			n.Kind = "massless"
 		}
-		if len(v.Capacities) > 0 {
-			c := m.Net.CapacityOf(m.par, id)
+		if c := start.capacity(id); c > 0 {
 			n.Capacitance = &c
 		}
-		n.Start = &levels[id]
+		level := start.shown(id)
+		n.Start = &level
 		if e.Table.Derive != nil {
 			for _, d := range e.Table.Derive(e, m.Case, m.val) {
 				n.From, n.Source = equation(d.Formula, d.Numbers), d.Source
@@ -77,17 +108,41 @@ func equation(formula, numbers string) string {
 }
 
 // checkBranches lists one part: a line for each number it derives.
-func (m *Model) checkBranches(e *casefile.Element) []CheckBranch {
+func (m *Model) checkBranches(e *casefile.Element, start *snapshot) []CheckBranch {
 	var list []CheckBranch
 	from, to := ends(e)
-	for _, d := range e.Table.Derive(e, m.Case, m.val) {
+	var derived []casefile.Derivation
+	if e.Table.Derive != nil {
+		derived = e.Table.Derive(e, m.Case, m.val)
+	}
+	for _, d := range derived {
 		list = append(list, CheckBranch{
 			Name: e.FullName(), Part: e.Table.Name, From: from, To: to,
 			Quantity: d.Quantity, Value: d.SI, Unit: unitOf(d.Dim), Kind: kindOf(d.Kind),
 			Formula: d.Formula, Numbers: d.Numbers, Source: d.Source,
 		})
 	}
+	out, ok := m.Case.Showing(e.FullName(), "flow")
+	if !ok {
+		return list
+	}
+	q, ok := start.flowShown(out)
+	if !ok {
+		return list
+	}
+	unit := m.physicsOf(e.Domain()).flow
+	if len(list) == 0 && !m.drives(e) { // nothing but its flow is to be said of it
+		list = append(list, CheckBranch{Name: e.FullName(), Part: e.Table.Name, From: from, To: to, Quantity: "flow", Value: q, Unit: unit, Source: e.Source()})
+	}
+	if len(list) > 0 {
+		list[0].Flow, list[0].FlowUnit = &q, unit
+	}
 	return list
+}
+
+// drives reports whether a part is an input, which is listed among those.
+func (m *Model) drives(e *casefile.Element) bool {
+	return slices.ContainsFunc(m.Net.Inputs(), func(in network.InputView) bool { return in.Name == e.FullName() })
 }
 
 // ends are the names an element stands between: its own "between", the first
@@ -102,6 +157,8 @@ func ends(e *casefile.Element) (from, to string) {
 			if n := e.Names(f.Name); len(n) > 0 {
 				return n[0], n[len(n)-1]
 			}
+		case "from":
+			return e.NameOf("from"), e.NameOf("to")
 		case "into":
 			return "", e.NameOf("into")
 		case "out_of":
@@ -148,7 +205,7 @@ func (m *Model) checkInputs() []CheckInput {
 		c.Wave = waveWords(m.par.Wave[in.ID], func(v float64) string { return m.inputValue(in, v) }, m.Show.Time)
 		list = append(list, c)
 	}
-	return append(list, m.checkSwitches()...)
+	return append(append(list, m.checkSwitches()...), m.checkDrives()...)
 }
 
 func (m *Model) checkGiven() []CheckGiven {
@@ -164,20 +221,28 @@ func (m *Model) checkGiven() []CheckGiven {
 // notes are what is legal and worth knowing.
 func (m *Model) notes() []string {
 	notes := []string{}
-	if ml := m.Net.Massless(); len(ml) > 0 {
-		var names []string
-		for _, id := range ml {
+	var names []string
+	for _, id := range m.Net.Massless() {
+		if !m.stores(id) {
 			names = append(names, m.Net.Name(id))
 		}
-		if len(names) > smallNetwork {
-			names = append(names[:smallNetwork], fmt.Sprintf("%d more", len(ml)-smallNetwork))
+	}
+	if n := len(names); n > 0 {
+		if n > smallNetwork {
+			names = append(names[:smallNetwork], fmt.Sprintf("%d more", n-smallNetwork))
 		}
-		notes = append(notes, "massless, eliminated exactly: "+strings.Join(names, ", "))
+		how := "massless, eliminated exactly: "
+		if m.Nonlinear() {
+			how = "massless, at the level that balances what flows: "
+		}
+		notes = append(notes, how+strings.Join(names, ", "))
 	}
 	for _, r := range m.Net.Remarks() {
 		notes = append(notes, r.Text)
 	}
-	notes = append(notes, m.islandNotes()...)
+	if !m.Nonlinear() {
+		notes = append(notes, m.islandNotes()...)
+	}
 	return append(append(notes, m.pressureNotes()...), m.orderNote())
 }
 
@@ -186,8 +251,8 @@ func (m *Model) notes() []string {
 func (m *Model) orderNote() string {
 	count, words := map[string]int{}, []string{}
 	for i := range m.Net.NodeCount() {
-		if n := m.Net.Node(network.NodeID(i)); !n.Held && !n.Massless {
-			count[m.at(n.ID).StoreWord]++
+		if id := network.NodeID(i); m.stores(id) {
+			count[m.at(id).StoreWord]++
 		}
 	}
 	for _, b := range m.Net.Branches() {
@@ -205,13 +270,16 @@ func (m *Model) orderNote() string {
 		}
 	}
 	order := m.Net.StoreCount()
-	if count[inertiaWord] > 0 {
-		if red, err := m.reduction(); err == nil {
-			order = red.System.Order()
+	if count[inertiaWord] > 0 || m.Nonlinear() {
+		if _, sys, _, err := m.modal(nil); err == nil {
+			order = sys.Order()
 		}
 	}
 	if len(words) == 0 {
 		return "order 0: nothing is stored"
+	}
+	if m.Nonlinear() {
+		return fmt.Sprintf("order %d of the linear network about the start: %s", order, join(words))
 	}
 	return fmt.Sprintf("order %d: %s, that many poles", order, join(words))
 }

@@ -72,7 +72,7 @@ func (m *Model) Curves(pick int) (*Curves, error) {
 		}
 		cols = append(cols, w)
 	}
-	for _, l := range m.Case.Questions.Limits {
+	for _, l := range m.limitAsks() {
 		for _, s := range l.Of {
 			if _, err := m.want(s, l.Above); err != nil {
 				return nil, err
@@ -86,6 +86,9 @@ func (m *Model) Curves(pick int) (*Curves, error) {
 	times, err := m.times(ask)
 	if err != nil {
 		return nil, err
+	}
+	if m.cut() {
+		times = endingAt(times, m.reach())
 	}
 	var warn []Warning
 	if len(cols) > mostLines {
@@ -109,7 +112,7 @@ func (m *Model) Curves(pick int) (*Curves, error) {
 			a.Changes = append(a.Changes, CurveChange{c.at, c.text})
 		}
 	}
-	a.Evidence = m.evidence(append(warn, m.growing(m.red.System)...))
+	a.Evidence = m.evidence(append(warn, m.grows()...))
 	return a, nil
 }
 
@@ -141,7 +144,7 @@ func (m *Model) samples(a *Curves) (grid, jumps []float64) {
 }
 
 // sample takes one curve.
-func sample(resp *laplace.Response, c shown, grid, jumps []float64) Curve {
+func sample(resp answers, c shown, grid, jumps []float64) Curve {
 	y := make([][]float64, c.out+1)
 	y[c.out] = make([]float64, len(grid))
 	resp.Table(grid, y)
@@ -165,7 +168,7 @@ func sample(resp *laplace.Response, c shown, grid, jumps []float64) Curve {
 // curveLimits are the limits on what the picture shows.
 func (m *Model) curveLimits(ask casefile.AskTable, cols []shown, a *Curves) []CurveLimit {
 	list := []CurveLimit{}
-	for _, l := range m.Case.Questions.Limits {
+	for _, l := range m.limitAsks() {
 		for _, s := range l.Of {
 			w, err := m.want(s, l.Above)
 			drawn := slices.ContainsFunc(cols, func(c shown) bool { return c.out == w.out })

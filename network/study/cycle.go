@@ -15,6 +15,11 @@ const nearCycle = 0.02
 type Cycles struct {
 	Title  string  `json:"title"`
 	Cycles []Cycle `json:"cycles"`
+	// Periods counts the whole periods that were marched from the start, 0 where the
+	// answer is the closed form.
+	Periods int `json:"periods_marched,omitempty"`
+
+	Each []*Cycles `json:"-"` // under each scenario, where there are several
 	Evidence
 }
 
@@ -24,16 +29,17 @@ type Cycles struct {
 // run stays within 2 % of the swing of the steady cycle for good: absent where the
 // output does not move.
 type Cycle struct {
-	Output string   `json:"output"`
-	Unit   string   `json:"unit"`
-	Kind   string   `json:"kind,omitempty"`
-	Period float64  `json:"period"`
-	Max    float64  `json:"max"`
-	MaxAt  float64  `json:"t_max"`
-	Min    float64  `json:"min"`
-	MinAt  float64  `json:"t_min"`
-	Mean   float64  `json:"mean"`
-	Cycles *float64 `json:"cycles_to_2pct,omitempty"`
+	Output   string   `json:"output"`
+	Scenario string   `json:"scenario,omitempty"`
+	Unit     string   `json:"unit"`
+	Kind     string   `json:"kind,omitempty"`
+	Period   float64  `json:"period"`
+	Max      float64  `json:"max"`
+	MaxAt    float64  `json:"t_max"`
+	Min      float64  `json:"min"`
+	MinAt    float64  `json:"t_min"`
+	Mean     float64  `json:"mean"`
+	Cycles   *float64 `json:"cycles_to_2pct,omitempty"`
 }
 
 // Cycle answers for each thing that tables and limits name or, without any, for
@@ -42,6 +48,9 @@ func (m *Model) Cycle() (*Cycles, error) {
 	outs, err := m.cycled()
 	if err != nil {
 		return nil, err
+	}
+	if m.Nonlinear() {
+		return m.marchCycle(outs)
 	}
 	red, err := m.reduction()
 	if err != nil {
@@ -108,6 +117,9 @@ func (m *Model) cycled() ([]shown, error) {
 
 // cycle reads the steady cycle of one output.
 func (m *Model) cycle(c *laplace.Cycle, approach *laplace.Approach, w shown) (Cycle, []Warning, error) {
+	if w.derived() {
+		return m.resultCycle(c.Response(), w, c.Period)
+	}
 	hi, lo := c.Max(w.out), c.Min(w.out)
 	y := Cycle{Output: w.name, Unit: w.unit, Kind: w.kind, Period: c.Period,
 		Max: hi.Y, MaxAt: hi.T, Min: lo.Y, MinAt: lo.T, Mean: c.Mean(w.out)}
@@ -140,5 +152,10 @@ func (m *Model) cycle(c *laplace.Cycle, approach *laplace.Approach, w shown) (Cy
 // repeats reports whether any load or scale repeats for ever.
 func (m *Model) repeats() bool {
 	repeats := func(w laplace.Waveform) bool { return w.Repeats() }
+	for _, drives := range m.par.Drive {
+		if slices.ContainsFunc(drives, repeats) {
+			return true
+		}
+	}
 	return slices.ContainsFunc(m.par.Wave, repeats) || slices.ContainsFunc(m.par.Switch, repeats)
 }

@@ -33,7 +33,8 @@ type Frequency struct {
 type FrequencyTransfer struct {
 	Input    string           `json:"input"`
 	Output   string           `json:"output"`
-	About    string           `json:"about,omitempty"` // of a network that switches: start, or a time
+	Scenario string           `json:"scenario,omitempty"` // where scenarios change the network
+	About    string           `json:"about,omitempty"`    // of a network that switches or is not linear: start, or a time
 	Unit     string           `json:"unit"`
 	AtRest   *float64         `json:"gain_at_rest,omitempty"` // H(0), signed
 	Points   []FrequencyPoint `json:"points"`
@@ -95,21 +96,17 @@ func (m *Model) Frequency(q FrequencyQuestion) (*Frequency, error) {
 	if err := q.check(); err != nil {
 		return nil, err
 	}
-	pairs, warn, err := m.pairs()
+	pairs, found, warn, err := m.transfers()
 	if err != nil {
 		return nil, err
 	}
-	red, err := m.reduction()
+	_, sys, _, err := m.modal(pairs)
 	if err != nil {
 		return nil, err
 	}
 	a := &Frequency{Title: m.Case.Title, Transfers: []FrequencyTransfer{}}
-	for _, p := range pairs {
-		h, err := m.transferOf(red, p)
-		if err != nil {
-			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
-		}
-		t, more, err := q.answer(p, h)
+	for i, p := range pairs {
+		t, more, err := q.answer(p, found[i])
 		if err != nil {
 			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
 		}
@@ -119,8 +116,8 @@ func (m *Model) Frequency(q FrequencyQuestion) (*Frequency, error) {
 	if q.Ripple > 0 && !a.ripples() {
 		return nil, fmt.Errorf("no transfer function leads from something in %s to something in %s: a ripple is an amplitude at a source or held node, the level one at what is shown", q.RippleUnit, q.BelowUnit)
 	}
-	warn = append(warn, m.switching(pairs)...)
-	a.Evidence = m.evidence(append(warn, m.growing(red.System)...))
+	warn = append(append(warn, m.switching(pairs)...), m.aboutWarnings(pairs)...)
+	a.Evidence = m.evidence(append(warn, m.growing(sys)...))
 	return a, nil
 }
 

@@ -28,6 +28,9 @@ const handTerms = 5
 func (m *Model) Hand() ([]HandLine, error) {
 	subject, ok := m.subject()
 	h := []HandLine{}
+	if ok && m.Nonlinear() {
+		return m.handPoint(subject), nil
+	}
 	if !ok || m.turns() { // what is done by hand knows one set of numbers
 		return h, nil
 	}
@@ -136,9 +139,13 @@ func (m *Model) handLevel(p *paths, subject network.NodeID, final float64) HandL
 		}
 		i = e.to
 	}
-	root, _ := m.par.Wave[m.Net.Node(i).Input].Final()
+	held, _ := m.par.Wave[m.Net.Node(i).Input].Final()
+	root := held - m.par.Datum[subject]
 	level += root
-	terms = append([]string{m.levelAt(i, root) + " (" + m.Net.Name(i) + ")"}, reversed(terms)...)
+	terms = append([]string{m.levelAt(i, held) + " (" + m.Net.Name(i) + ")"}, reversed(terms)...)
+	if h := m.par.Datum[i] - m.par.Datum[subject]; h != 0 {
+		terms = append(terms, m.Show.Value(h, units.level, kindDifference)+" (height)")
+	}
 	l := HandLine{
 		What:    m.Net.Name(subject) + " for ever, by series resistances",
 		Numbers: strings.Join(terms, " + "), Hand: level, Computed: &final, Unit: units.level,

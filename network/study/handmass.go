@@ -40,7 +40,7 @@ func (m *Model) handMass(island int) (HandLine, bool) {
 	l.What, l.Hand = "slowest time constant, all as one "+u.Lump+", by ΣC/ΣG", store/net
 	l.Numbers = fmt.Sprintf("%s / (%s)", c, g)
 	if gain != 0 {
-		l.Numbers = fmt.Sprintf("%s / (%s − %s)", c, g, m.Show.Value(gain, u.conductance, ""))
+		l.Numbers = fmt.Sprintf("%s / (%s %s)", c, g, less(gain, func(v float64) string { return m.Show.Value(v, u.conductance, "") }))
 	}
 	l.Remark = "at least that"
 	if m.hasStream() {
@@ -54,6 +54,14 @@ func (m *Model) handMass(island int) (HandLine, bool) {
 		}
 	}
 	return l, true
+}
+
+// less writes what is taken away: "− 2 W/K", or "+ 2 W/K" where that is negative.
+func less(v float64, words func(float64) string) string {
+	if v < 0 {
+		return "+ " + words(-v)
+	}
+	return "− " + words(v)
 }
 
 // islandUnits are the units and words of an island.
@@ -148,6 +156,7 @@ func (m *Model) starOf(island int) (*star, bool) {
 func (s *star) add(p *network.Params, b network.BranchView) bool {
 	i, j := s.place[b.From], s.place[b.To]
 	switch {
+	case b.Kind == network.FeedbackBranch && i == 1: // a held level, whatever the stores do
 	case b.Kind == network.FeedbackBranch:
 		if i != 0 || b.From != b.To {
 			return false

@@ -9,9 +9,15 @@ import (
 
 // impulsesIn returns the impulses of an output in [t0, t1], those of one instant
 // together. A response, which was found, has no more jumps than it may: that is the
-// only error there is.
-func impulsesIn(resp *laplace.Response, out int, t0, t1 float64) []laplace.Impulse {
-	all, _ := resp.Impulses(out)
+// only error there is. A march has none.
+func impulsesIn(resp answers, out int, t0, t1 float64) []laplace.Impulse {
+	closed, ok := resp.(interface {
+		Impulses(out int) ([]laplace.Impulse, error)
+	})
+	if !ok {
+		return nil
+	}
+	all, _ := closed.Impulses(out)
 	return gathered(all, t0, t1)
 }
 

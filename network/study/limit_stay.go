@@ -33,7 +33,7 @@ func (t *trial) stay(v *Limit) []Warning {
 	default:
 		v.Text += ", " + t.gap(*v.Margin) + " from " + t.value(t.level)
 	}
-	if e.T >= t.run && t.t1 >= t.run {
+	if e.T >= t.run && t.t1 >= t.run && t.cycle == 0 {
 		if f, ok := t.resp.Final(out); ok && sign*(f-e.Y) > 0 && t.apart(f) != t.apart(e.Y) {
 			v.Text += "; still on its way to " + t.apart(f)
 			if sign*(f-t.level) > 0 {

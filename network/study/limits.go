@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 
 	"lagbook/laplace"
 	"lagbook/network/casefile"
@@ -13,13 +14,17 @@ import (
 type trial struct {
 	ask          casefile.AskLimit
 	show         shown
-	resp         *laplace.Response
+	resp         answers
 	t0, t1       float64 // the window
-	run          float64 // end of the run
+	run          float64 // end of the run, or of what is known of it
+	stopped      string  // why a march had to stop before the end of the run, "" where it did not
+	cycle        float64 // the period of the periodic state that is judged, 0 for the run
+	midnight     float64 // s, the first at or after t = 0
 	begin        float64 // the value at the start of the run
 	level        float64
 	after, until *float64 // as asked
 	allowed      float64  // within, s
+	lessThan     float64  // of time_above, s
 	margin       float64  // asked for, in the limit's unit
 	slack        float64  // rounding error of the response
 	print        Printer
@@ -28,13 +33,9 @@ type trial struct {
 // Limits judges each [limit]. Roots and extremes are those of the closed form,
 // never samples.
 func (m *Model) Limits() (*Limits, error) {
-	asks := m.Case.Questions.Limits
-	for _, l := range asks {
-		for _, s := range l.Of {
-			if _, err := m.want(s, l.Above); err != nil {
-				return nil, err
-			}
-		}
+	asks := m.limitAsks()
+	if err := m.wantLimits(); err != nil {
+		return nil, err
 	}
 	a := &Limits{Title: m.Case.Title, Limits: []Limit{}, Met: true}
 	var warn []Warning
@@ -43,12 +44,16 @@ func (m *Model) Limits() (*Limits, error) {
 		a.Evidence = m.evidence(warn)
 		return a, nil
 	}
+	if err := m.wantNamed(); err != nil {
+		return nil, err
+	}
 	resp, err := m.response()
 	if err != nil {
 		return nil, err
 	}
+	cycle := &periodic{m: m}
 	for _, l := range asks {
-		v, w, err := m.limit(resp, l)
+		v, w, err := m.limit(resp, cycle, l)
 		if err != nil {
 			return nil, err
 		}
@@ -57,34 +62,51 @@ func (m *Model) Limits() (*Limits, error) {
 		warn = append(warn, w...)
 	}
 	govern(a.Limits)
-	warn = append(warn, m.grows()...)
+	more, err := m.named(&a.Results, &a.Finds)
+	if err != nil {
+		return nil, err
+	}
+	warn = append(append(warn, more...), m.grows()...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
 }
 
 // limit judges one limit; of several outputs the worst decides.
-func (m *Model) limit(resp *laplace.Response, ask casefile.AskLimit) (Limit, []Warning, error) {
+func (m *Model) limit(resp answers, cycle *periodic, ask casefile.AskLimit) (Limit, []Warning, error) {
 	var worst Limit
 	var warn []Warning
+	if ask.InCycle {
+		var err error
+		if resp, warn, err = cycle.answers(); err != nil {
+			return m.unjudgedInCycle(ask, err)
+		}
+	}
 	for i, s := range ask.Of {
 		w, err := m.want(s, ask.Above)
 		if err != nil {
 			return worst, nil, err
 		}
 		t := m.trial(resp, ask, w)
+		if ask.InCycle {
+			t.inCycle(cycle)
+		}
 		v, more := t.judge()
 		warn = append(warn, more...)
 		if i == 0 || worse(v, worst) {
 			worst = v
 		}
 	}
+	if n := len(ask.Of); n > 1 {
+		worst.Among = n
+		worst.Text = worst.Of + ", the worst of " + strconv.Itoa(n) + ": " + worst.Text
+	}
 	return worst, warn, nil
 }
 
 // trial gathers what a limit on one output needs.
-func (m *Model) trial(resp *laplace.Response, ask casefile.AskLimit, w shown) *trial {
+func (m *Model) trial(resp answers, ask casefile.AskLimit, w shown) *trial {
 	num := m.val.Num
-	t := &trial{ask: ask, show: w, resp: resp, run: m.until, t1: m.until, begin: m.beginning(w), level: num[ask.Level], slack: resp.Rounding(w.out), print: m.Show}
+	t := &trial{ask: ask, show: w, resp: resp, run: m.reach(), t1: m.until, begin: m.beginning(w), level: num[ask.Level], slack: resp.Rounding(w.out), print: m.Show}
 	if ask.HasAfter {
 		t.t0 = num[ask.After]
 		after := t.t0
@@ -98,8 +120,17 @@ func (m *Model) trial(resp *laplace.Response, ask casefile.AskLimit, w shown) *t
 	if ask.HasWithin {
 		t.allowed = num[ask.Within]
 	}
+	if ask.Kind == casefile.TimeAbove {
+		t.lessThan = num[ask.LessThan]
+	}
 	if ask.HasMargin {
-		t.margin = num[ask.Margin]
+		t.margin = num[ask.Margin] * t.marginOf()
+	}
+	if q := &m.Case.Questions; q.HasClock {
+		t.midnight = math.Mod(day-math.Mod(q.Clock, day), day)
+	}
+	if a := m.marchedEvidence(); a != nil {
+		t.stopped = a.Stopped
 	}
 	return t
 }
@@ -107,19 +138,26 @@ func (m *Model) trial(resp *laplace.Response, ask casefile.AskLimit, w shown) *t
 // judge gives the verdict, and warns where the window does not lie in the run or
 // nothing happens in it.
 func (t *trial) judge() (Limit, []Warning) {
-	v := Limit{Name: t.ask.Name, Of: t.show.name, Unit: t.show.unit, Kind: t.show.kind, After: t.after, Until: t.until, Percentage: t.ask.Percent, Demand: demands[t.ask.Kind]}
+	v := Limit{Name: t.ask.Name, Of: t.show.name, Unit: t.show.unit, Kind: t.show.kind, After: t.after, Until: t.until, Percentage: t.ask.Percent, Demand: t.ask.Kind.String()}
 	if t.ask.Above != "" {
 		v.Of += " above " + t.ask.Above
 	}
 	level := t.level
 	v.Level, v.LevelUnit = &level, t.show.unit
 	var warn []Warning
-	if t.t1 > t.run*(1+1e-12) {
+	asked := t.t1
+	switch {
+	case t.stopped != "":
+		t.t1 = min(t.t1, t.run)
+	case t.t1 > t.run*(1+1e-12):
 		warn = append(warn, t.warning("beyond-the-run", fmt.Sprintf("its window ends at %s, the run at %s: judged as far as the run goes", t.print.Time(t.t1), t.print.Time(t.run))))
 		t.t1 = t.run
 	}
 	if t.t0 >= t.t1 {
 		v.Text = "cannot be judged: its window lies beyond the run"
+		if t.stopped != "" {
+			v.Text, v.NotJudged = "cannot be judged: "+t.stopped, true
+		}
 		return v, append(warn, t.warning("beyond-the-run", v.Text))
 	}
 	if p := t.impulses(); len(p) > 0 {
@@ -135,11 +173,44 @@ func (t *trial) judge() (Limit, []Warning) {
 		warn = append(warn, t.settle(&v)...)
 	case casefile.OvershootBelow:
 		warn = append(warn, t.overshoot(&v)...)
+	case casefile.SwingBelow:
+		warn = append(warn, t.swing(&v)...)
+	case casefile.RateBelow, casefile.RiseRateBelow, casefile.FallRateBelow:
+		warn = append(warn, t.rate(&v)...)
+	case casefile.TimeAbove:
+		warn = append(warn, t.timeAbove(&v)...)
+	}
+	if t.cycle > 0 {
+		v.In = "cycle"
+		v.Text = "in the cycle of " + t.print.Time(t.cycle) + ": " + v.Text
+	}
+	if t.stopped != "" && asked > t.run {
+		t.unjudged(&v)
+		return v, warn
 	}
 	if !slices.ContainsFunc(warn, func(w Warning) bool { return w.Code == nothingChanges || w.Code == "true-at-start" }) && t.still() {
 		warn = append(warn, t.warning(nothingChanges, t.show.name+" does not change in the window: does its load reach its value before the run begins?"))
 	}
 	return v, warn
+}
+
+// unjudged takes back what a march that had to stop does not show: a limit that was
+// failed before stays failed, a level that was reached stays reached, all else is open.
+func (t *trial) unjudged(v *Limit) {
+	switch {
+	case v.FirstOutside != nil:
+		return
+	case t.ask.Kind == casefile.Reach && v.At != nil:
+		return
+	case t.ask.Kind >= casefile.SwingBelow && v.Margin != nil && *v.Margin < 0:
+		return // what goes on makes a swing, a rate or a time no smaller
+	}
+	so := ""
+	if v.Text != "" {
+		so = "; so far: " + v.Text
+	}
+	v.Text = "cannot be judged: " + t.stopped + so
+	v.Met, v.Margin, v.Percent, v.NotJudged = false, nil, nil, true
 }
 
 // impulses are those in the window that leave nothing to judge: of what is to stay on
@@ -159,12 +230,6 @@ const (
 	noLimits       = "no-limits"       // there is nothing to judge
 	nothingChanges = "nothing-changes" // in a table, or in the window of a limit
 )
-
-// demands are the words of the case file.
-var demands = map[casefile.LimitKind]string{
-	casefile.StayBelow: "stay_below", casefile.StayAbove: "stay_above", casefile.Reach: "reach",
-	casefile.Settle: "settle", casefile.OvershootBelow: "overshoot_below",
-}
 
 func (t *trial) warning(code, text string) Warning {
 	return Warning{code, fmt.Sprintf("limit %q: %s", t.ask.Name, text)}
@@ -202,62 +267,14 @@ func (t *trial) gap(v float64) string {
 	return t.value(v)
 }
 
-// judgeMargin fills in the margin and whether it suffices; way is what the
-// margin is a share of, 0 where nothing sensible is.
-func (t *trial) judgeMargin(v *Limit, margin, way float64, asked float64) {
-	v.Margin = &margin
-	if t.ask.HasMargin {
-		v.MarginAsked = &asked
-	}
-	v.Met = margin >= asked
-	if way > 0 {
-		p := 100 * margin / way
-		v.Percent = &p
-	}
-}
-
-// worse orders verdicts of one limit: the one not met, then the smaller share left.
-func worse(a, b Limit) bool {
-	if a.Met != b.Met {
-		return !a.Met
-	}
-	return share(a) < share(b)
-}
-
-// share is the part of the way that is left; a limit that has none governs where
-// it is not met and never where it is.
-func share(v Limit) float64 {
-	switch {
-	case v.Percent != nil && (v.Met || v.MarginAsked != nil || *v.Percent <= 0):
-		return *v.Percent
-	case v.Met:
-		return math.Inf(1)
-	}
-	return math.Inf(-1)
-}
-
-// govern marks the limit with the least margin as a share of the way.
-func govern(list []Limit) {
-	if len(list) == 0 {
-		return
-	}
-	g := 0
-	for i := range list {
-		if worse(list[i], list[g]) {
-			g = i
-		}
-	}
-	list[g].Governs = true
-}
-
 // beginning is the value of an output just before t = 0, where the start is a
 // steady state; else the value the run begins with.
 func (m *Model) beginning(w shown) float64 {
-	if w.kind == kindLevel || w.kind == kindDifference {
+	if o := &m.outs[w.out]; len(o.Terms) > 0 {
 		if s, err := m.startLevels(); err == nil {
-			sum := 0.0
-			for _, term := range m.outs[w.out].Terms {
-				sum += term.Coef * s[term.Node]
+			sum := o.Constant
+			for _, term := range o.Terms {
+				sum += term.Coef * (s[term.Node] - m.par.Datum[term.Node])
 			}
 			return sum
 		}
@@ -265,8 +282,15 @@ func (m *Model) beginning(w shown) float64 {
 	return m.resp.At(w.out, 0)
 }
 
-// startLevels are the levels at the start by NodeID.
+// startLevels are the levels at the start by NodeID, those of the network.
 func (m *Model) startLevels() ([]float64, error) {
+	if m.Nonlinear() {
+		s, err := m.begin()
+		if err != nil {
+			return nil, err
+		}
+		return s.Levels, nil
+	}
 	s, err := m.startState()
 	if err != nil {
 		return nil, err

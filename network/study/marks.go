@@ -8,15 +8,16 @@ import (
 	"lagbook/network"
 )
 
-// A change is a jump of one input.
+// A change is a jump of one input, or what happened to a part.
 type change struct {
-	at   float64
-	name string
-	text string // "light 75 W"
+	at    float64
+	name  string
+	text  string // "light 75 W", "relief opens"
+	event bool
 }
 
-// changes lists the jumps of all inputs in [t0, t1] in order of time, at most
-// so many; cut is true where there are more.
+// changes lists the jumps of all inputs and what happened to parts in [t0, t1] in order
+// of time, at most so many; cut is true where there are more.
 func (m *Model) changes(t0, t1 float64, most int) (list []change, cut bool) {
 	for _, in := range m.Net.Inputs() {
 		w := m.par.Wave[in.ID]
@@ -25,14 +26,36 @@ func (m *Model) changes(t0, t1 float64, most int) (list []change, cut bool) {
 			cut = true
 		}
 		for _, t := range times {
-			list = append(list, change{t, in.Name, in.Name + " " + m.inputValue(in, w.At(t))})
+			list = append(list, change{at: t, name: in.Name, text: in.Name + " " + m.inputValue(in, w.At(t))})
 		}
 	}
 	turned, more := m.switched(t0, t1, most)
 	list, cut = append(list, turned...), cut || more
+	driven, more := m.driven(t0, t1, most)
+	list, cut = append(list, driven...), cut || more
+	for _, e := range m.events() {
+		if e.At >= t0 && e.At <= t1 {
+			list = append(list, change{at: e.At, name: e.Part, text: e.Part + " " + e.What, event: true})
+		}
+	}
 	sort.SliceStable(list, func(i, j int) bool { return list[i].at < list[j].at })
 	if len(list) > most {
 		return list[:most], true
+	}
+	return list, cut
+}
+
+// driven lists the jumps of what drives elements.
+func (m *Model) driven(t0, t1 float64, most int) (list []change, cut bool) {
+	for _, e := range m.elements() {
+		for _, k := range ownDrives(e) {
+			w := m.par.Drive[e.ID][k]
+			times, err := w.JumpTimes(t0, t1, most)
+			cut = cut || err != nil
+			for _, t := range times {
+				list = append(list, change{at: t, name: e.Drives[k], text: m.driveMoves(e.Drives[k], w.At(t))})
+			}
+		}
 	}
 	return list, cut
 }
@@ -101,7 +124,11 @@ func (m *Model) changeWords(list []change, row float64) []string {
 	var words []string
 	for _, c := range list {
 		if near := sameTime * (1e-6*m.until + row); row-c.at > near {
-			words = append(words, c.text+" from "+m.Show.Time(c.at))
+			since := " from "
+			if c.event {
+				since = " at "
+			}
+			words = append(words, c.text+since+m.Show.Time(c.at))
 			continue
 		}
 		words = append(words, c.text)

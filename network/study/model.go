@@ -2,8 +2,6 @@ package study
 
 import (
 	"fmt"
-	"math"
-	"math/cmplx"
 
 	"lagbook/laplace"
 	"lagbook/network"
@@ -18,10 +16,18 @@ type Model struct {
 	Net  *network.Network
 	Show Printer
 
-	parts map[network.Ref]*casefile.Element
-	set   []casefile.Setter
-	val   casefile.Values
-	par   *network.Params
+	parts    map[network.Ref]*casefile.Element
+	views    []network.ElementView
+	set      []casefile.Setter
+	val      casefile.Values
+	par      *network.Params
+	spare    *network.Params       // written by the next change of values, so that it can be compared with par
+	prev     *network.Params       // the numbers before par
+	borrowed bool                  // par is that of another model
+	under    *casefile.Scenario    // in force; nil: the case as written
+	given    []quantity.Value      // in force before what a scenario sets; nil: as written
+	doubt    []casefile.Diagnostic // what the domains say of the values, once it was asked
+	doubted  bool                  // that they were
 
 	outs  []network.Output
 	shows []shown        // parallel to outs
@@ -29,10 +35,14 @@ type Model struct {
 
 	ownStart, ownFlow []bool // which starts the parts state themselves, by NodeID and InertanceID
 
-	start *network.StartState
-	red   *network.Reduction
-	resp  *laplace.Response
-	until float64
+	start  *network.StartState
+	red    *network.Reduction
+	resp   answers
+	closed *laplace.Response // resp, where that is the closed form of the network itself
+	until  float64
+
+	linearly bool // answer a nonlinear case by its linear network about the start
+	march    marched
 }
 
 // shown is one output of the reduced system.
@@ -40,6 +50,8 @@ type shown struct {
 	out        int
 	name       string
 	unit, kind string
+	domain     string
+	from       *derivation // what it is worked out of; nil: an output of the network
 }
 
 // New builds the network of a case and sets the values as written. The
@@ -51,7 +63,7 @@ func New(c *casefile.Case) (*Model, []casefile.Diagnostic) {
 	}
 	m := &Model{
 		Case: c, Net: net, Show: NewPrinter(c), parts: map[network.Ref]*casefile.Element{},
-		set: set, par: net.NewParams(), index: map[string]int{},
+		set: set, index: map[string]int{},
 	}
 	for _, e := range c.Elements {
 		m.parts[e.Ref] = e
@@ -64,30 +76,55 @@ func New(c *casefile.Case) (*Model, []casefile.Diagnostic) {
 	return m, ds
 }
 
-// At sets other given values; nil: as written.
-func (m *Model) At(given []quantity.Value) []casefile.Diagnostic {
-	v, ds := m.Case.Eval(given)
+// At sets other given values, under the scenario in force; nil: as written.
+func (m *Model) At(given []quantity.Value) []casefile.Diagnostic { return m.put(m.under, given) }
+
+// put sets the values of the case under a scenario. Where they leave the network itself as
+// it is, what was worked out of it stays: the next answer costs its response.
+func (m *Model) put(s *casefile.Scenario, given []quantity.Value) []casefile.Diagnostic {
+	v, ds := m.Case.Under(s, given)
 	if casefile.Failed(ds) {
 		return ds
 	}
-	m.val, m.red, m.resp, m.start = v, nil, nil, nil
+	par := m.spare
+	if par == nil {
+		par = m.Net.NewParams()
+	}
+	before, red := m.par, m.red
+	m.par, m.spare, m.prev = par, before, before
+	if m.borrowed { // another model reads them
+		m.spare, m.borrowed = nil, false
+	}
+	m.under, m.given, m.val, m.start, m.march = s, given, v, nil, marched{}
+	m.doubt, m.doubted = nil, false
+	m.forget()
 	for _, set := range m.set {
-		if err := set(v, m.par); err != nil {
+		if err := set(v, par); err != nil {
 			return append(ds, m.Case.Explain(err)...)
 		}
 	}
 	if err := m.turn(v); err != nil {
 		return append(ds, m.Case.Explain(err)...)
 	}
+	if same := m.weighResults(); same && red != nil && before != nil && sameNetwork(before, par) {
+		m.red = red
+	}
+	return append(ds, m.setStart(v)...)
+}
+
+// setStart states the start of the run.
+func (m *Model) setStart(v casefile.Values) []casefile.Diagnostic {
 	q := &m.Case.Questions
 	m.par.StartCycle = q.Start == casefile.StartCycle
-	if q.Start == casefile.StartLevel {
+	switch {
+	case m.par.StartCycle && m.Nonlinear():
+		return []casefile.Diagnostic{m.noCycleStart()}
+	case q.Start == casefile.StartLevel:
 		m.startAt(v.Num[q.StartAt], q.StartDomain)
+	case q.Start == casefile.StartAtRest:
+		return m.startAtRest()
 	}
-	if q.Start == casefile.StartAtRest {
-		ds = append(ds, m.startAtRest()...)
-	}
-	return ds
+	return nil
 }
 
 // partOf is the name of the part that a reference stands for, "" for none.
@@ -105,29 +142,34 @@ func (m *Model) want(s casefile.Shown, above string) (shown, error) {
 	if k, ok := m.index[key]; ok {
 		return m.shows[k], nil
 	}
-	out, unit, kind, err := m.output(s, above)
+	out, w, err := m.output(s, above)
 	if err != nil {
 		return shown{}, err
 	}
-	w := shown{out: len(m.outs), name: s.Text, unit: unit, kind: kind}
-	m.outs, m.shows, m.red, m.resp = append(m.outs, out), append(m.shows, w), nil, nil
+	w.out, w.name = len(m.outs), s.Text
+	m.outs, m.shows = append(m.outs, out), append(m.shows, w)
+	m.forget()
 	m.index[key] = w.out
 	return w, nil
 }
+
+// forget drops what was worked out for other outputs or numbers.
+func (m *Model) forget() { m.red, m.resp, m.closed, m.march.run = nil, nil, nil, nil }
 
 // wantNode makes sure that the level of a node is among the outputs.
 func (m *Model) wantNode(name string) (shown, error) {
 	return m.want(casefile.Shown{Text: name, Node: name}, "")
 }
 
-// output states what is shown as a sum of levels or a flow.
-func (m *Model) output(s casefile.Shown, above string) (network.Output, string, string, error) {
-	if s.FlowOf != "" {
-		f, domain, err := m.flowOf(s.FlowOf)
-		return network.Output{Name: s.Text, Flow: f}, m.physicsOf(domain).flow, "", err
+// output states what is shown as a sum of levels, a flow or a reading.
+func (m *Model) output(s casefile.Shown, above string) (network.Output, shown, error) {
+	if s.Result != "" {
+		return m.resultOutput(s)
 	}
-	o := network.Output{Name: s.Text}
-	unit, kind := "", kindLevel
+	if s.Word != "" {
+		return m.reading(s)
+	}
+	o, w := network.Output{Name: s.Text}, shown{kind: kindLevel}
 	for _, t := range []struct {
 		name string
 		coef float64
@@ -137,15 +179,16 @@ func (m *Model) output(s casefile.Shown, above string) (network.Output, string, 
 		}
 		id, ok := m.Case.Node(t.name)
 		if !ok {
-			return o, "", "", fmt.Errorf("node %q is not defined", t.name)
+			return o, w, fmt.Errorf("node %q is not defined", t.name)
 		}
 		o.Terms = append(o.Terms, network.Term{Node: id, Coef: t.coef})
-		unit = m.at(id).level
+		u := m.at(id)
+		w.unit, w.domain = u.level, u.domain
 		if t.coef < 0 {
-			kind = kindDifference
+			w.kind = kindDifference
 		}
 	}
-	return o, unit, kind, nil
+	return o, w, nil
 }
 
 // reduction returns the reduced system with every output wanted so far.
@@ -155,112 +198,85 @@ func (m *Model) reduction() (*network.Reduction, error) {
 		if err != nil {
 			return nil, err
 		}
-		m.red, m.resp = r, nil
+		m.red, m.resp, m.closed = r, nil, nil
 	}
 	return m.red, nil
 }
 
 // startState returns the state at t = 0.
-func (m *Model) startState() (*network.StartState, error) {
-	if m.start == nil {
-		s, err := m.Net.Start(m.par)
-		if err != nil {
-			return nil, err
-		}
+func (m *Model) startState() (s *network.StartState, err error) {
+	if m.start != nil {
+		return m.start, nil
+	}
+	if m.red != nil {
+		s, err = m.red.Start(m.par)
+	} else {
+		s, err = m.Net.Start(m.par)
+	}
+	if err == nil {
 		m.start = s
 	}
-	return m.start, nil
+	return s, err
 }
 
-// response returns the response of every output, over the run.
-func (m *Model) response() (*laplace.Response, error) {
-	red, err := m.reduction()
-	if err != nil {
-		return nil, err
+// response returns the answer of every output, over the run: the closed form of a
+// linear network, else a march or, where the case is to be answered so, the linear
+// network about the start.
+func (m *Model) response() (answers, error) {
+	if m.resp != nil {
+		return m.resp, nil
 	}
-	if m.resp == nil {
-		m.until = m.runEnd(red.System)
-		if m.resp, err = red.Respond(m.par, m.until); err != nil {
-			return nil, err
-		}
+	var err error
+	switch {
+	case !m.Nonlinear():
+		err = m.respond()
+	case m.linearly:
+		err = m.respondLinearly()
+	default:
+		err = m.marchOn()
+	}
+	if err == nil {
+		m.resp, err = m.withResults(m.resp, 0, m.reach())
+	}
+	if err != nil {
+		m.resp = nil
+		return nil, err
 	}
 	return m.resp, nil
 }
 
-// runEnd is the end of the run in s: [run] to where it is said, else the latest
-// time any question names, else five of the slowest time constants.
-func (m *Model) runEnd(sys *laplace.System) float64 {
-	q, num := &m.Case.Questions, m.val.Num
-	if q.HasTo {
-		return num[q.To]
+// respond finds the closed form.
+func (m *Model) respond() error {
+	red, err := m.reduction()
+	if err != nil {
+		return err
 	}
-	end := 0.0
-	for _, t := range q.Tables {
-		for _, s := range t.Times {
-			end = math.Max(end, num[s])
-		}
-		if t.HasTo {
-			end = math.Max(end, num[t.To])
-		}
+	end, ok := m.askedEnd()
+	if !ok {
+		end = settled(red.System)
 	}
-	for _, l := range q.Limits {
-		after := 0.0
-		if l.HasAfter {
-			after = num[l.After]
-		}
-		if l.HasUntil {
-			end = math.Max(end, num[l.Until])
-		}
-		if l.HasWithin {
-			end = math.Max(end, after+num[l.Within])
-		}
+	m.until = end
+	r, err := red.Respond(m.par, m.until)
+	if err != nil {
+		return err
 	}
-	if end > 0 {
-		return end
-	}
-	return settled(sys)
+	m.resp, m.closed = r, r
+	return nil
 }
 
-// settled is five of the slowest time constants, three doublings of the slowest
-// growth or, where there is neither, five swings of the slowest undamped pair or 1 s.
-func settled(sys *laplace.System) float64 {
-	end := 1.0
-	for _, p := range sys.Poles() {
-		switch re := real(p.P); {
-		case math.Abs(re) <= p.Radius: // at 0 or on the axis: no time constant
-			if w := cmplx.Abs(p.P); w > p.Radius && end == 1 {
-				end = 5 * 2 * math.Pi / w
-			}
-		case re < 0:
-			return 5 / -re
-		case re > 0:
-			return 3 * math.Ln2 / re
-		}
+// reading is what is shown by a word of a part: "flow of main", "level of t1".
+func (m *Model) reading(s casefile.Shown) (network.Output, shown, error) {
+	out, ok := m.Case.Showing(s.Part, s.Word)
+	if !ok {
+		return out, shown{}, fmt.Errorf("%q has no %s of its own to show", s.Part, s.Word)
 	}
-	return end
-}
-
-// flowOf is the flow of a part from its first end, what a held node is supplied
-// with, or what a source delivers. A part of several branches, such as a wall, is read at its first.
-func (m *Model) flowOf(part string) (f *network.FlowTerm, domain string, err error) {
-	for _, b := range m.Net.Branches() {
-		if m.partOf(b.Ref) != part {
-			continue
-		}
-		switch b.Kind {
-		case network.ResistanceBranch:
-			return &network.FlowTerm{Kind: network.ResistanceFlow, Resistance: network.ResistanceID(b.Index), Sign: 1}, m.domainOf(b.Ref), nil
-		case network.InertanceBranch:
-			return &network.FlowTerm{Kind: network.InertanceFlow, Inertance: network.InertanceID(b.Index), Sign: 1}, m.domainOf(b.Ref), nil
-		}
+	out.Name = s.Text
+	w := shown{unit: unitOf(s.Dim), kind: kindOf(s.Kind)}
+	if s.Dim == dims["1/s"] {
+		w.unit = turning
 	}
-	if id, ok := m.Case.Node(part); ok && m.Net.Node(id).Held {
-		return &network.FlowTerm{Kind: network.SupplyFlow, Node: id, Sign: 1}, m.at(id).domain, nil
+	if e, ok := m.Case.Part(s.Part); ok {
+		w.domain = e.Domain()
 	}
-	for _, in := range m.Net.Inputs() {
-		if !in.Held && in.Name == part {
-			return &network.FlowTerm{Kind: network.SourceFlow, Input: in.ID, Sign: 1}, m.at(in.Node).domain, nil
-		}
-	}
-	return nil, "", fmt.Errorf("%q has no flow of its own to show", part)
+	return out, w, nil
 }

@@ -109,10 +109,10 @@ func (m *Model) growing(sys *laplace.System) []Warning {
 }
 
 // shares notes by each mode what it carries of each rise.
-func shares(a *Poles) {
+func shares(a *Poles, of string) {
 	for _, t := range a.Transfers {
-		if t.About != "" && t.About != aboutStart {
-			continue // the modes are those of the start
+		if t.About != of {
+			continue // the modes belong to another state
 		}
 		for _, p := range t.Poles {
 			if p.Share == nil {

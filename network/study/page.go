@@ -27,18 +27,10 @@ func (m *Model) Page() (*Page, error) {
 		return nil, err
 	}
 	a := &Page{
-		Title: m.Case.Title, Limits: limits.Limits, Met: limits.Met, Transfers: poles.Transfers, Modes: poles.Modes,
-		Tables: tables.Tables, Hand: hand, Understood: check.Understood,
+		Title: m.Case.Title, About: poles.About, Limits: limits.Limits, Met: limits.Met, Transfers: poles.Transfers, Modes: poles.Modes, Range: poles.Range,
+		Tables: tables.Tables, Measured: tables.Measured, Results: tables.Results, Finds: tables.Finds, Hand: hand, Understood: check.Understood,
 	}
-	var warn []Warning
-	for _, list := range [][]Warning{poles.Warnings, tables.Warnings, limits.Warnings} {
-		for _, w := range list {
-			if w.Code != noLimits { // on a page of everything that is no fault
-				warn = append(warn, w)
-			}
-		}
-	}
-	a.Evidence = m.evidence(warn)
+	a.Evidence = m.evidence(noted(poles.Warnings, tables.Warnings, limits.Warnings))
 	return a, nil
 }
 
@@ -57,12 +49,14 @@ func (m *Model) wantAll() error {
 			}
 		}
 	}
-	for _, l := range m.Case.Questions.Limits {
-		for _, s := range l.Of {
-			if _, err := m.want(s, l.Above); err != nil {
-				return err
-			}
-		}
+	if err := m.wantNamed(); err != nil {
+		return err
+	}
+	if err := m.wantTables(); err != nil {
+		return err
+	}
+	if err := m.wantLimits(); err != nil {
+		return err
 	}
 	if id, ok := m.subject(); ok {
 		_, err := m.wantNode(m.Net.Name(id))

@@ -47,9 +47,9 @@ func (m *Model) domainOf(r network.Ref) string {
 	return ""
 }
 
-// levelAt prints a level at a node.
+// levelAt prints a level of the network at a node, less what its height makes of it.
 func (m *Model) levelAt(id network.NodeID, v float64) string {
-	return m.Show.Value(v, m.at(id).level, kindLevel)
+	return m.Show.Value(v-m.par.Datum[id], m.at(id).level, kindLevel)
 }
 
 // swingUnit is the SI unit in which an input swings.
@@ -60,14 +60,18 @@ func (m *Model) swingUnit(in network.InputView) string {
 	return m.at(in.Node).flow
 }
 
-// speck is an amount of a unit below which nobody looks: a millionth of a kelvin
-// or a watt, of a bar, of a litre in ten seconds.
+// speck is an amount of a unit below which nobody looks: a millionth of a kelvin, a
+// watt or a metre, of a bar, of a litre in ten seconds or at all; a thousandth of a joule.
 func speck(unit string) float64 {
 	switch unit {
 	case "Pa":
 		return 0.1
 	case "m³/s":
 		return 1e-10
+	case "m³":
+		return 1e-9
+	case "J":
+		return 1e-3
 	}
 	return 1e-6
 }

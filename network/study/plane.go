@@ -39,24 +39,18 @@ type Plane struct {
 // pick returns the transfer functions and checks the number of the one asked for,
 // counted from 1.
 func (m *Model) pick(number int) ([]pair, []*laplace.Transfer, []Warning, error) {
-	pairs, warn, err := m.pairs()
+	pairs, list, warn, err := m.transfers()
 	if err != nil {
 		return nil, nil, nil, err
 	}
 	if number < 1 || number > len(pairs) {
 		return nil, nil, nil, fmt.Errorf("there is no transfer function %d: the case has %d", number, len(pairs))
 	}
-	red, err := m.reduction()
+	_, sys, _, err := m.modal(pairs)
 	if err != nil {
 		return nil, nil, nil, err
 	}
-	list := make([]*laplace.Transfer, len(pairs))
-	for i, p := range pairs {
-		if list[i], err = m.transferOf(red, p); err != nil {
-			return nil, nil, nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
-		}
-	}
-	return pairs, list, append(warn, m.growing(red.System)...), nil
+	return pairs, list, append(append(warn, m.aboutWarnings(pairs)...), m.growing(sys)...), nil
 }
 
 // mostBode is how many transfer functions share a picture.
@@ -120,11 +114,15 @@ func fine(h *laplace.Transfer, lo, hi float64) []float64 {
 	return slices.DeleteFunc(slices.Compact(grid), func(w float64) bool { return w < lo || w > hi })
 }
 
-// Plane returns transfer function number pick with its poles and zeros.
+// Plane returns transfer function number pick with its poles and zeros; 0 is the first
+// that has a pole.
 func (m *Model) Plane(number int) (*Plane, error) {
-	pairs, list, warn, err := m.pick(number)
+	pairs, list, warn, err := m.pick(max(number, 1))
 	if err != nil {
 		return nil, err
+	}
+	if number == 0 {
+		number = 1 + max(0, slices.IndexFunc(list, func(h *laplace.Transfer) bool { return len(h.Poles) > 0 }))
 	}
 	p, h := pairs[number-1], list[number-1]
 	if len(h.Poles) == 0 {

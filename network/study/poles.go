@@ -21,48 +21,52 @@ type pair struct {
 	show shown
 	from string // the SI unit in which the input swings
 
+	drive *drive   // of an element, in the place of an input of the network
 	about *float64 // s; the network just after that time; nil: just before t = 0
 }
 
 // Poles answers for each [[transfer]] or, without any, for each input and each
 // thing that tables and limits name.
 func (m *Model) Poles() (*Poles, error) {
-	pairs, warn, err := m.pairs()
-	if err != nil {
+	if _, _, err := m.pairs(); err != nil { // which makes outputs of them
 		return nil, err
 	}
 	if err := m.wantModes(); err != nil {
 		return nil, err
 	}
-	red, err := m.reduction()
+	pairs, found, warn, err := m.transfers()
 	if err != nil {
 		return nil, err
 	}
-	a := &Poles{Title: m.Case.Title, Transfers: []Transfer{}, Modes: m.modes(red.System)}
-	for _, p := range pairs {
-		h, err := m.transferOf(red, p)
-		if err != nil {
-			return nil, fmt.Errorf("transfer from %s to %s: %w", p.in.Name, p.show.name, err)
-		}
+	of, sys, about, err := m.modal(pairs)
+	if err != nil {
+		return nil, err
+	}
+	a := &Poles{Title: m.Case.Title, About: about, Transfers: []Transfer{}, Modes: of.modes(sys)}
+	for i, p := range pairs {
+		h := found[i]
 		t := m.transfer(p, h)
 		t.About = m.aboutWords(p)
 		switch s, err := h.Step(); {
 		case err != nil:
 			warn = append(warn, Warning{"no-step-measures", p.in.Name + " to " + p.show.name + ": " + err.Error()})
 		case s != nil:
-			t.Step = step(s)
 			if s.Capped {
-				warn = append(warn, Warning{"search-stopped", p.in.Name + " to " + p.show.name + ": a search among the swings of the step was given up, times are as far as it came"})
+				s = &laplace.Measures{Final: s.Final} // how far a search came is no measure
+				warn = append(warn, Warning{"search-stopped", p.in.Name + " to " + p.show.name + ": a search among the swings of the step was given up; rise, settling, overshoot and peak are left out"})
 			}
+			t.Step = step(s)
 		}
 		a.Transfers = append(a.Transfers, t)
 		for _, w := range h.Warnings {
 			warn = append(warn, Warning{w.Code, p.in.Name + " to " + p.show.name + ": " + w.Text})
 		}
 	}
-	shares(a)
+	shares(a, m.modesOf(about))
+	a.Range = m.rangeAboutStart(pairs)
 	warn = append(warn, m.switching(pairs)...)
-	warn = append(warn, m.growing(red.System)...)
+	warn = append(warn, m.aboutWarnings(pairs)...)
+	warn = append(warn, m.growing(sys)...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
 }
@@ -81,11 +85,15 @@ func (m *Model) pairs() ([]pair, []Warning, error) {
 			if err != nil {
 				return nil, nil, err
 			}
-			in, ok := byName[t.From]
-			if !ok {
-				return nil, nil, fmt.Errorf("transfer from %q: not a source or held node", t.From)
+			p := pair{show: w}
+			var ok bool
+			if p.in, ok = byName[t.From]; ok {
+				p.from = m.swingUnit(p.in)
+			} else if p.drive, ok = m.driveOf(t.From); ok {
+				p.in.Name, p.from = t.From, p.drive.unit
+			} else {
+				return nil, nil, fmt.Errorf("transfer from %q: not a source, a held node or what drives a part", t.From)
 			}
-			p := pair{in: in, show: w, from: m.swingUnit(in)}
 			if t.HasAbout {
 				p.about = &m.val.Num[t.About]
 			}
@@ -102,7 +110,7 @@ func (m *Model) pairs() ([]pair, []Warning, error) {
 			if len(list) == mostPairs {
 				return list, []Warning{{"transfers-left-out", fmt.Sprintf("only the first %d transfer functions are shown: name those wanted in [[transfer]]", mostPairs)}}, nil
 			}
-			if !(in.Held && w.name == in.Name) {
+			if !w.derived() && !(in.Held && w.name == in.Name) && m.at(in.Node).domain == w.domain {
 				list = append(list, pair{in: in, show: w, from: m.swingUnit(in)})
 			}
 		}

@@ -51,8 +51,8 @@ func dimOf(unit string) quantity.Dim {
 
 // A Printer turns SI numbers into words in the units the case asks for: unless
 // [print] says otherwise temperatures in °C, pressures in bar, those that are
-// levels in bar(g) or bar(a), flows in L/min; four significant digits, times in
-// the unit that suits each.
+// levels in bar(g) or bar(a), flows in L/min, volumes in L, energies in kJ, what turns
+// in rpm; four significant digits, times in the unit that suits each.
 type Printer struct {
 	asked     map[string]quantity.Print
 	pressures casefile.Pressures
@@ -93,10 +93,25 @@ func (p Printer) Unit(unit, kind string) string {
 			return "L/min"
 		}
 	}
+	if usual, ok := usualUnits[unit]; ok && u == "" {
+		if unit == "m³" && p.cubicMetres() {
+			return unit
+		}
+		return usual
+	}
 	if u == "" {
 		return unit
 	}
 	return u
+}
+
+// usualUnits are those in which people read what is not asked for in another.
+var usualUnits = map[string]string{"m³": "L", "J": "kJ", turning: "rpm"}
+
+// cubicMetres reports whether flows are asked for in m³ in some time: volumes are then
+// read in m³ too.
+func (p Printer) cubicMetres() bool {
+	return strings.HasPrefix(p.asked[casefile.PrintWord(dims["m³/s"], quantity.Plain)].Unit, "m³")
 }
 
 // unitAsked is the unit that [print] states for a quantity, "" for none. A

@@ -15,7 +15,7 @@ func (m *Model) startAt(level float64, domain string) {
 		m.par.HasAllStart, m.par.AllStart = true, level
 		return
 	}
-	m.fillStart(domain, func(network.NodeID) (float64, bool) { return level, true })
+	m.fillStart(domain, func(id network.NodeID) (float64, bool) { return level + m.par.Datum[id], true })
 }
 
 // fillStart gives every store of a domain ("": of all) that has no start of its
@@ -28,7 +28,7 @@ func (m *Model) fillStart(domain string, of func(network.NodeID) (float64, bool)
 	}
 	for i := range m.Net.NodeCount() {
 		v := m.Net.Node(network.NodeID(i))
-		if v.Held || v.Massless || m.ownStart[i] || domain != "" && m.at(v.ID).domain != domain {
+		if !m.stores(v.ID) || m.ownStart[i] || domain != "" && m.at(v.ID).domain != domain {
 			continue
 		}
 		if level, ok := of(v.ID); ok {
@@ -68,6 +68,12 @@ func (m *Model) startAtRest() []casefile.Diagnostic {
 	return nil
 }
 
+// noCycleStart refuses a start in the periodic state of a case that is marched.
+func (m *Model) noCycleStart() casefile.Diagnostic {
+	return m.Case.Diagnose(m.Case.Questions.StartRef, "not-built", `start = "cycle" is found in closed form, and the case is not linear: `+
+		join(firstNames(m.nonlinearParts()))+": this version does not build it", `start = "steady", and the verb cycle marches to the periodic state`)
+}
+
 // before is the level of a held node just before t = 0.
 func (m *Model) before(n network.NodeView) float64 { return m.par.Wave[n.Input].Before }
 
@@ -85,13 +91,17 @@ func (m *Model) restGroups() (group []int, holder map[int]network.NodeID, apart 
 		}
 		return i
 	}
+	tie := func(a, b network.NodeID) {
+		p, q := root(int(a)), root(int(b))
+		group[max(p, q)] = min(p, q)
+	}
 	for _, b := range m.Net.Branches() {
 		if b.Kind == network.ResistanceBranch && m.par.G[b.Index] == 0 || b.Kind == network.InertanceBranch && m.par.Shut[b.Index] {
 			continue // shut at the start
 		}
-		p, q := root(int(b.From)), root(int(b.To))
-		group[max(p, q)] = min(p, q)
+		tie(b.From, b.To)
 	}
+	m.tieElements(tie)
 	holder = map[int]network.NodeID{}
 	for i := range group {
 		group[i] = root(i)
@@ -108,6 +118,22 @@ func (m *Model) restGroups() (group []int, holder map[int]network.NodeID, apart 
 		}
 	}
 	return group, holder, apart
+}
+
+// tieElements joins the ends of elements that are open at the start. One that may shut
+// by itself, such as a check valve, may stand between two levels at rest.
+func (m *Model) tieElements(tie func(a, b network.NodeID)) {
+	for _, e := range m.elements() {
+		if _, shuts := m.par.Law[e.ID].(network.Switching); !e.Joins || shuts {
+			continue
+		}
+		if e.Gate > 0 && m.par.Drive[e.ID][e.Gate-1].Before == 0 {
+			continue
+		}
+		for _, p := range e.Ports[1:] {
+			tie(e.Ports[0], p)
+		}
+	}
 }
 
 // firstNames keeps a list of names short.

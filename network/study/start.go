@@ -12,7 +12,7 @@ import (
 func (m *Model) evidence(warn []Warning) Evidence {
 	all := []Warning{}
 	seen := map[Warning]bool{}
-	for _, list := range [][]Warning{warn, m.startWarnings(), m.surges(), m.dubious(), m.vacuum()} {
+	for _, list := range [][]Warning{warn, m.remarked(), m.marchWarnings(), m.linearWarnings(), m.startWarnings(), m.surges(), m.dubious(), m.vacuum()} {
 		for _, w := range list {
 			if !seen[w] {
 				seen[w] = true
@@ -20,11 +20,15 @@ func (m *Model) evidence(warn []Warning) Evidence {
 			}
 		}
 	}
-	return Evidence{Warnings: all, Start: m.startWords(), Linear: m.linear(), Caution: Caution}
+	return Evidence{Warnings: all, Start: m.startWords(), Linear: m.linear(), Marched: m.marchedEvidence(), Caution: Caution}
 }
 
-// linear is what every answer so far rests on.
+// linear is what an answer rests on: what does not change or, of a case that is not
+// linear, which parts do and how it was computed.
 func (m *Model) linear() string {
+	if m.Nonlinear() {
+		return m.nonlinear()
+	}
 	what, over := "resistances, capacitances and gains", []string{"temperature"}
 	if d := m.Case.Domains(); len(d) == 1 && m.physicsOf(d[0]).level == "Pa" {
 		what, over = "resistances, compliances and inertances", []string{"flow", "pressure"}
@@ -49,7 +53,7 @@ func either(words []string) string {
 // startWords says how the initial state is found.
 func (m *Model) startWords() string {
 	own := m.ownStarts()
-	if _, err := m.startState(); err != nil {
+	if _, err := m.startLevels(); err != nil {
 		return "none: " + strings.TrimPrefix(err.Error(), "network: ")
 	}
 	switch {
@@ -63,7 +67,7 @@ func (m *Model) startWords() string {
 		return m.allStart() + " everywhere but at " + join(own) + ", as stated there"
 	case len(own) == 0:
 		return "steady state of the values just before t = 0"
-	case len(own) < m.Net.StoreCount():
+	case len(own) < m.storeCount():
 		return "as stated at " + join(own) + "; the rest at the steady state of the values just before t = 0"
 	}
 	return "as stated at each node"
@@ -129,6 +133,9 @@ func (m *Model) startWarnings() []Warning {
 				"%s is %s from 0 s and says nothing about before: the case starts at the steady state of %s; give it before = … if the load begins at t = 0", in.Name, v, v)})
 		}
 	}
+	if m.Nonlinear() {
+		return warn
+	}
 	if s, err := m.startState(); err == nil && len(s.Unattained) > 0 {
 		warn = append(warn, Warning{"unstable-start", "the start is a steady state that the network would not come to by itself: the least excess grows away from it"})
 	}
@@ -138,7 +145,8 @@ func (m *Model) startWarnings() []Warning {
 // typedFromZero are the waveforms that hold their first value before t = 0.
 var typedFromZero = map[string]bool{"points": true, "stairs": true, "file": true, "decay": true}
 
-// dubious names outputs whose rounding error shows in the digits printed.
+// dubious names outputs whose rounding error, or of a march the error with which they are
+// read between its steps, shows in the digits printed.
 func (m *Model) dubious() []Warning {
 	if m.resp == nil {
 		return nil
@@ -149,9 +157,14 @@ func (m *Model) dubious() []Warning {
 		if slack < speck(w.unit) {
 			continue
 		}
-		span := m.resp.Max(w.out, 0, m.until).Y - m.resp.Min(w.out, 0, m.until).Y
+		span := m.resp.Max(w.out, 0, m.reach()).Y - m.resp.Min(w.out, 0, m.reach()).Y
 		if slack > doubtShare*span {
-			warn = append(warn, Warning{"rounding", fmt.Sprintf("%s: rounding may reach %s, which shows in the digits printed", w.name, m.Show.Value(slack, w.unit, kindDifference))})
+			size := m.Show.Value(slack, w.unit, kindDifference)
+			if m.marches() {
+				warn = append(warn, Warning{"between-steps", fmt.Sprintf("%s: between the steps of the march it is read to within %s, which shows in the digits printed", w.name, size)})
+				continue
+			}
+			warn = append(warn, Warning{"rounding", fmt.Sprintf("%s: rounding may reach %s, which shows in the digits printed", w.name, size)})
 		}
 	}
 	return warn

@@ -8,7 +8,11 @@
 // Warnings; an error means that there is no answer.
 //
 // Nothing here knows physics or text formats: elements come from a domain
-// through package casefile, equations from package network, poles, responses
-// and guaranteed roots from package laplace. Not here yet: anything that is not
-// linear between the steps of its numbers.
+// through package casefile, equations and marches from package network, poles,
+// responses and guaranteed roots from package laplace.
+//
+// A linear case is answered in closed form. One that is not is marched for tables,
+// limits and cycles, and linearised about a state for poles and frequencies; Linear
+// and the answers named Both show how far the one is from the other. A march and a
+// response answer the same questions: see answers.
 package study

@@ -78,7 +78,7 @@ also = ["peaks"]
 		t.Fatal(err)
 	}
 	rows := a.Tables[0].Rows
-	if len(rows) != 11 || rows[10][0] != 1 || rows[3][0] != 0.1*float64(len(rows)-8) {
+	if len(rows) != 11 || rows[10][0] != 1 || rows[3][0] != 0.3 {
 		t.Errorf("%d rows, the last at %v", len(rows), rows[len(rows)-1][0])
 	}
 	for _, r := range rows {

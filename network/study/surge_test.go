@@ -145,7 +145,7 @@ after = "6 s"
 	if err != nil {
 		t.Fatal(err)
 	}
-	if w := tab.Warnings[0]; w.Code != "impulse" || !strings.Contains(w.Text, "an impulse of 0.001 m³ at 5 s") {
+	if w := tab.Warnings[0]; w.Code != "impulse" || !strings.Contains(w.Text, "an impulse of 1 L at 5 s") {
 		t.Errorf("%+v", tab.Warnings)
 	}
 	for _, mark := range tab.Tables[0].Marks {
@@ -163,7 +163,7 @@ after = "6 s"
 			t.Errorf("%+v", lim.Limits[k])
 		}
 	}
-	if !strings.Contains(lim.Limits[0].Text, "cannot be judged: an impulse of 0.001 m³ at 5 s") {
+	if !strings.Contains(lim.Limits[0].Text, "cannot be judged: an impulse of 1 L at 5 s") {
 		t.Errorf("%q", lim.Limits[0].Text)
 	}
 	p, err := m.Poles()
@@ -190,7 +190,7 @@ after = "6 s"
 	if err != nil {
 		t.Fatal(err)
 	}
-	if w := c.Warnings[0]; w.Code != "impulse" || !strings.Contains(w.Text, "an impulse of 0.001 m³ at 0 s and 1 more") {
+	if w := c.Warnings[0]; w.Code != "impulse" || !strings.Contains(w.Text, "an impulse of 1 L at 0 s and 1 more") {
 		t.Errorf("%+v", c.Warnings)
 	}
 }

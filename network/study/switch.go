@@ -3,7 +3,6 @@ package study
 import (
 	"fmt"
 
-	"lagbook/laplace"
 	"lagbook/network"
 	"lagbook/network/casefile"
 )
@@ -46,35 +45,9 @@ func (m *Model) turn(v casefile.Values) error {
 // turns reports whether the network switches while it runs.
 func (m *Model) turns() bool { return m.par.Turns() }
 
-// transferOf returns the transfer function of a pair, of the network at the time it is
-// about; red is the network just before t = 0.
-func (m *Model) transferOf(red *network.Reduction, p pair) (*laplace.Transfer, error) {
-	if p.about != nil && m.turns() {
-		par, err := m.par.At(*p.about)
-		if err != nil {
-			return nil, err
-		}
-		if red, err = m.Net.Reduce(par, m.outs); err != nil {
-			return nil, err
-		}
-	}
-	return red.System.Transfer(int(p.in.ID), p.show.out)
-}
-
-// aboutWords says what a transfer function is about, "" where there is no choice.
-func (m *Model) aboutWords(p pair) string {
-	switch {
-	case p.about != nil:
-		return m.Show.Time(*p.about)
-	case m.turns():
-		return aboutStart
-	}
-	return ""
-}
-
 // switching warns that what is shown of poles is that of one phase.
 func (m *Model) switching(pairs []pair) []Warning {
-	if !m.turns() {
+	if !m.turns() || m.Nonlinear() {
 		return nil
 	}
 	var names []string
@@ -132,11 +105,20 @@ func (m *Model) scaledWord(s network.SwitchView) string {
 // grows says in words which poles grow, in any state that the network is switched to
 // in the run.
 func (m *Model) grows() []Warning {
-	if !m.turns() {
+	switch {
+	case m.marches():
+		return nil // what grows is seen in the numbers; poles and check name it
+	case m.Nonlinear():
+		red, err := m.reducedAbout(nil)
+		if err != nil {
+			return nil // whoever asked for the response has heard of it
+		}
+		return m.growing(red.System)
+	case !m.turns():
 		return m.growing(m.red.System)
 	}
 	var warn []Warning
-	for _, sys := range m.resp.Systems() {
+	for _, sys := range m.closed.Systems() {
 		for _, w := range m.growing(sys) {
 			w.Text += ", while the network is switched to one of its states"
 			warn = append(warn, w)
@@ -155,7 +137,7 @@ func (m *Model) switched(t0, t1 float64, most int) (list []change, cut bool) {
 		times, err := w.JumpTimes(t0, t1, most)
 		cut = cut || err != nil
 		for _, t := range times {
-			list = append(list, change{t, s.Name, s.Name + " " + m.switchValue(s, w.At(t))})
+			list = append(list, change{at: t, name: s.Name, text: s.Name + " " + m.switchValue(s, w.At(t))})
 		}
 	}
 	return list, cut

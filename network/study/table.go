@@ -3,7 +3,9 @@ package study
 import (
 	"fmt"
 	"math"
+	"slices"
 	"sort"
+	"strconv"
 	"strings"
 
 	"lagbook/laplace"
@@ -13,6 +15,7 @@ import (
 const (
 	defaultRows = 13        // of a table nobody asked for: thirteen instants
 	mostRows    = 1_000_000 // of one table
+	samePeak    = 1e-6      // peaks of a march closer than this share of the run share a row
 	sameTime    = 1e-9      // instants closer than this share of the run are one row
 	mostChanges = 3         // changes of a load that one mark spells out
 	mostJumps   = 10_000    // rows added for jumps
@@ -32,6 +35,12 @@ func (m *Model) Tables() (*Tables, error) {
 			cols[i] = append(cols[i], w)
 		}
 	}
+	if err := m.wantMeasured(); err != nil {
+		return nil, err
+	}
+	if err := m.wantNamed(); err != nil {
+		return nil, err
+	}
 	resp, err := m.response()
 	if err != nil {
 		return nil, err
@@ -49,15 +58,24 @@ func (m *Model) Tables() (*Tables, error) {
 		a.Tables = append(a.Tables, tab)
 		warn = append(warn, w...)
 	}
-	warn = append(warn, m.grows()...)
+	logged, more, err := m.measured(resp)
+	if err != nil {
+		return nil, err
+	}
+	a.Measured = logged
+	said, err := m.named(&a.Results, &a.Finds)
+	if err != nil {
+		return nil, err
+	}
+	warn = append(slices.Concat(warn, more, said), m.grows()...)
 	a.Evidence = m.evidence(warn)
 	return a, nil
 }
 
 // tables are the tables asked for, or the one shown without asking.
 func (m *Model) tables() []casefile.AskTable {
-	if asks := m.Case.Questions.Tables; len(asks) > 0 {
-		return asks
+	if len(m.Case.Questions.Tables) > 0 {
+		return m.tableAsks()
 	}
 	t := casefile.AskTable{Title: m.levelsTitle(), Peaks: true}
 	for _, n := range m.freeNames() {
@@ -76,7 +94,7 @@ func (m *Model) levelsTitle() string {
 }
 
 // table fills one table.
-func (m *Model) table(resp *laplace.Response, ask casefile.AskTable, cols []shown) (Table, []Warning, error) {
+func (m *Model) table(resp answers, ask casefile.AskTable, cols []shown) (Table, []Warning, error) {
 	t := Table{Title: ask.Title, Columns: []Column{{Name: "t", Unit: "s"}}, Rows: [][]float64{}, Marks: []Mark{}}
 	for _, c := range cols {
 		t.Columns = append(t.Columns, Column{c.name, c.unit, c.kind})
@@ -86,6 +104,9 @@ func (m *Model) table(resp *laplace.Response, ask casefile.AskTable, cols []show
 		return t, nil, err
 	}
 	var warn []Warning
+	if end := m.reach(); m.cut() && times[len(times)-1] > end {
+		times, t.ValidUntil = endingAt(times, end), &end
+	}
 	marks := map[float64][]string{}
 	kinds := map[float64]string{} // of the last mark at an instant
 	lo, hi := times[0], times[len(times)-1]
@@ -108,8 +129,13 @@ func (m *Model) table(resp *laplace.Response, ask casefile.AskTable, cols []show
 			if e.Capped {
 				warn = append(warn, Warning{"search-stopped", "the search for the extreme of " + c.name + " was given up: the loads change too often"})
 			}
-			times = merge(times, []float64{e.T}, m.until)
 			at := nearest(times, e.T)
+			if m.marches() && math.Abs(at-e.T) <= samePeak*m.until && len(marks[at]) > 0 {
+				e.AtLeft = false // the peak of another column, as far as a march tells
+			} else {
+				times = merge(times, []float64{e.T}, m.until)
+				at = nearest(times, e.T)
+			}
 			if n := len(marks[at]); n > 0 && kinds[at] == e.word && !e.AtLeft {
 				marks[at][n-1] += ", " + c.name // "peak of case, plate"
 				continue
@@ -176,6 +202,19 @@ func spaced(title string, from, to, every float64) ([]float64, error) {
 	return list, nil
 }
 
+// decimal returns the number of few digits that a sum or a product misses by rounding,
+// 0.3 for 3·0.1; any other as it is.
+func decimal(x float64) float64 {
+	short, err := strconv.ParseFloat(strconv.FormatFloat(x, 'e', fewDigits-1, 64), 64)
+	if err == nil && math.Abs(short-x) <= 4*0x1p-52*math.Abs(x) {
+		return short
+	}
+	return x
+}
+
+// fewDigits are those of a number that somebody typed, or a whole multiple of one.
+const fewDigits = 12
+
 func unique(sorted []float64) []float64 {
 	list := sorted[:0:0]
 	for i, t := range sorted {
@@ -211,7 +250,7 @@ func nearest(sorted []float64, t float64) float64 {
 }
 
 // rows evaluates the columns at the instants.
-func rows(resp *laplace.Response, times []float64, cols []shown) [][]float64 {
+func rows(resp answers, times []float64, cols []shown) [][]float64 {
 	outs := 0
 	for _, c := range cols {
 		outs = max(outs, c.out+1)
@@ -235,7 +274,7 @@ func rows(resp *laplace.Response, times []float64, cols []shown) [][]float64 {
 	table := make([][]float64, len(times))
 	for i, t := range times {
 		row := cells[i*(len(cols)+1) : (i+1)*(len(cols)+1)]
-		row[0] = t
+		row[0] = decimal(t) // the others are read at t itself: a rounding off a jump may be its other side
 		for k, c := range cols {
 			row[k+1] = y[c.out][i]
 		}
@@ -251,7 +290,7 @@ type peak struct {
 	word string
 }
 
-func (m *Model) extreme(resp *laplace.Response, out int, t0, t1 float64) peak {
+func (m *Model) extreme(resp answers, out int, t0, t1 float64) peak {
 	hi, lo := resp.Max(out, t0, t1), resp.Min(out, t0, t1)
 	begin := resp.At(out, t0)
 	if begin-lo.Y > hi.Y-begin {

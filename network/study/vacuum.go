@@ -20,7 +20,7 @@ func (m *Model) vacuum() []Warning {
 		if w.unit != "Pa" || w.kind != kindLevel {
 			continue
 		}
-		if r, ok := m.resp.FirstOutside(w.out, least, math.Inf(1), 0, m.until); ok {
+		if r, ok := m.resp.FirstOutside(w.out, least, math.Inf(1), 0, m.reach()); ok {
 			warn = append(warn, Warning{"below-vacuum", fmt.Sprintf("%s falls below vacuum at %s: liquid would boil there before, and nothing after that is meant", w.name, m.Show.Time(r.T))})
 		}
 	}

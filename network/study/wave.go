@@ -41,10 +41,19 @@ func pieces(w laplace.Waveform, value, time func(float64) string) string {
 		switch {
 		case len(s.Exp) > 0:
 			b, joined = append(b, exponentialWords(s, value, time)), math.NaN()
+		case len(s.Poly) > 0 && open:
+			b = append(b, "from "+value(s.A)+" at "+time(s.At)+" on along a curve")
+		case len(s.Poly) > 0:
+			to := w.Left(end)
+			b = append(b, "curved from "+value(s.A)+" at "+time(s.At)+" to "+value(to)+" at "+time(end))
+			joined, at = to, end
 		case s.B != 0 && open:
 			b = append(b, "from "+value(s.A)+" at "+time(s.At)+" straight on by "+value(s.B)+" a second")
 		case s.B != 0:
 			to := s.A + s.B*(end-s.At)
+			if math.Abs(to) < 1e-12*math.Abs(s.A) {
+				to = 0 // what it is, but for the rounding of the slope
+			}
 			if s.At != at || math.Abs(s.A-joined) > 1e-9*math.Abs(s.A) {
 				b = append(b, "straight from "+value(s.A)+" at "+time(s.At))
 			}

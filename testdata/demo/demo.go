@@ -5,16 +5,17 @@ package demo
 
 import "embed"
 
-// Cases are the files, each a case: servo-drive.toml, the one shown first,
-// curing-oven.toml, oven-door.toml, wash-tank.toml and wash-line.toml.
+// Cases are the files, each a case or a log that one is set against.
 //
-//go:embed *.toml
+//go:embed *.toml *.csv
 var Cases embed.FS
 
 // Names of cases: Main is shown first, in Round something repeats, in Swing something
-// swings.
+// swings, Duties has scenarios and Revised is a later state of it.
 const (
-	Main  = "servo-drive.toml"
-	Round = "oven-door.toml"
-	Swing = "wash-line.toml"
+	Main    = "servo-drive.toml"
+	Round   = "oven-door.toml"
+	Swing   = "wash-line.toml"
+	Duties  = "cell-row.toml"
+	Revised = "cell-row-revised.toml"
 )

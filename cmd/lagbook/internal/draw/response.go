@@ -132,10 +132,16 @@ func quantityWord(unit, kind string) string {
 		return "pressure difference"
 	case unit == "Pa":
 		return "pressure"
-	case unit == "m³/s":
-		return "flow"
+	}
+	if word, ok := quantities[unit]; ok {
+		return word
 	}
 	return "value"
+}
+
+// quantities are what other units measure.
+var quantities = map[string]string{
+	"m³/s": "flow", "m³": "volume", "J": "energy", "m": "length", "m/s": "velocity", "rev/s": "speed", "1": "share", "W/(m²·K)": "film coefficient",
 }
 
 // response fills a panel.

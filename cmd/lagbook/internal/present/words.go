@@ -85,10 +85,11 @@ func numberLength(s string) int {
 			end = n
 		}
 	}
-	if r, _ := utf8.DecodeRuneInString(s[end:]); end < len(s) && (unicode.IsLetter(r) || unicode.IsDigit(r) || r == '_') {
+	after := strings.TrimPrefix(s[end:], "i") // of an imaginary part
+	if r, _ := utf8.DecodeRuneInString(after); after != "" && (unicode.IsLetter(r) || unicode.IsDigit(r) || r == '_') {
 		return 0 // "5e-7b": a name
 	}
-	if after := s[end:]; len(after) > 1 && after[0] == '.' && '0' <= after[1] && after[1] <= '9' {
+	if after = s[end:]; len(after) > 1 && after[0] == '.' && '0' <= after[1] && after[1] <= '9' {
 		return 0 // "5e-7.2": no number
 	}
 	return end

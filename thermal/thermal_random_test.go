@@ -48,7 +48,7 @@ capacitance = "%g J/K"`, 500*scale("capacitance"))
 		case 0:
 			put("radiation = { emissivity = 0.8, area = \"%g m²\" }", 0.5*scale("area"))
 		case 1:
-			put("value = \"%g K/W\"\nat_rise = \"30 K\"\nexponent = %g", scale("R"), rapid.Float64Range(0, 1).Draw(t, "exponent"))
+			put("value = \"%g K/W\"\nat_rise = \"30 K\"\nexponent = %g", scale("R"), float64(rapid.IntRange(0, 1000).Draw(t, "exponent"))/1000)
 		case 2:
 			put("points = [[\"5 K\", \"%g K/W\"], [\"30 K\", \"%g K/W\"]]", scale("R"), scale("R"))
 		case 3:

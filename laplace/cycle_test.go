@@ -349,7 +349,10 @@ func TestCycleIsTheLimit(t *testing.T) {
 			rt.Fatal(err)
 		}
 		m, ok, err := approach.Cycles(0, 0.02)
-		if err != nil || !ok {
+		if err != nil {
+			rt.Fatal(err)
+		}
+		if !ok {
 			rt.Skip("no swing")
 		}
 		off := func(from, to float64) float64 { return farthest(r, cycle, 0, from, to, 1000) }
